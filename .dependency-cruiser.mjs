@@ -60,12 +60,12 @@ export default {
     {
       name: 'assessment-packages',
       comment:
-        'Assessment runs in Node, workers and browsers alike. Only the schema package and the canonical-JSON package are allowed.',
+        'Assessment runs in Node, workers and browsers alike. Only the schema packages and the canonical-JSON package are allowed.',
       severity: 'error',
       from: { path: '^src/assessment/' },
       to: {
         dependencyTypes: ['core', 'npm', 'npm-dev', 'npm-no-pkg', 'npm-unknown'],
-        pathNot: 'node_modules/(typebox|json-canonicalize)/',
+        pathNot: 'node_modules/(typebox|ajv|ajv-formats|json-canonicalize)/',
       },
     },
     {

@@ -1,0 +1,343 @@
+import type { Origin } from './plan-file.js';
+
+/**
+ * The shape of one assessment: the single value that the page, the JSON answer and every sheet read.
+ * Nothing downstream computes a number; it only formats Figures.
+ */
+
+/** The decision words, best first. */
+export const decisionOrder = ['go', 'goWithConditions', 'notEnoughKnown', 'noGo'] as const;
+export type DecisionWord = (typeof decisionOrder)[number];
+
+export interface FigureInput {
+  readonly name: string;
+  readonly value: number | string;
+  readonly unit: string;
+  readonly origin?: Origin;
+}
+
+/** A number that explains itself. */
+export interface Figure {
+  readonly value: number;
+  readonly low?: number;
+  readonly high?: number;
+  /** SI or the dimensionless unit of `figureUnits`. */
+  readonly unit: FigureUnit;
+  /** Key of the method text; the formula in plain text. */
+  readonly method: string;
+  readonly formula: string;
+  readonly inputs: readonly FigureInput[];
+  /** Key of the bibliography in science/sources. */
+  readonly source: string;
+  /** Where the method holds, in words; a value outside it says so here. */
+  readonly range: string;
+}
+
+/** Units a Figure may carry; the formatter knows digits and rounding for each. */
+export type FigureUnit =
+  | 'oxygenFraction' // dry basis, printed in percent, rounded down
+  | 'gasFraction' // printed in ppm or percent, rounded up
+  | 'Pa'
+  | 'Hz'
+  | 'cents'
+  | 'ratio'
+  | 's' // printed as min and s, rounded up
+  | 'kg'
+  | 'mol'
+  | 'm3'
+  | 'm'
+  | 'm2'
+  | 'm3PerS'
+  | 'perHour'
+  | 'K'
+  | 'mPerS'
+  | 'people'
+  | 'kgCO2e';
+
+export type Answer = 'mixed' | 'layered' | 'layeredP50' | 'bound';
+export type CaseName = 'planned' | 'worstCredible' | 'fansOff';
+
+export interface DecisionPair {
+  readonly asFiled: DecisionWord;
+  readonly withControls: DecisionWord;
+}
+
+export interface Governing {
+  readonly zone: string;
+  readonly zoneTitle: string;
+  readonly quantity: string;
+  readonly answer: Answer;
+  readonly caseName: CaseName;
+  readonly figure: Figure;
+  readonly limit: Figure;
+  /** Row of the decision table, 1 to 12. */
+  readonly row: number;
+  readonly reason: string;
+}
+
+export interface Condition {
+  readonly number: number;
+  readonly row: number;
+  readonly act: string | null;
+  readonly zone: string | null;
+  readonly text: string;
+  readonly checklistLine: string;
+  readonly blocksStart: boolean;
+}
+
+export type FindingKind = 'danger' | 'caution' | 'plausibility' | 'note';
+
+export interface Finding {
+  readonly code: string;
+  readonly kind: FindingKind;
+  readonly text: string;
+  /** JSON Pointer into the plan file, '' when it concerns the whole. */
+  readonly path: string;
+}
+
+export interface Refusal {
+  readonly act: string;
+  readonly reason: string;
+  readonly alternative: string;
+}
+
+export interface Crossing {
+  readonly level: 'aim' | 'limit' | 'never';
+  readonly answer: Answer;
+  readonly at: Figure;
+}
+
+/** A quantity in one zone in one case: the answers beside each other and how they stand. */
+export interface ZoneQuantity {
+  readonly quantity: string;
+  readonly quantityTitle: string;
+  readonly caseName: CaseName;
+  readonly answers: Partial<Record<Answer, Figure>>;
+  /** Oxygen also as partial pressure, wet, at the site. */
+  readonly partialPressure?: Figure;
+  readonly levels: {
+    readonly aim: Figure | null;
+    readonly limit: Figure | null;
+    readonly never: Figure | null;
+  };
+  readonly standing: 'meets aim' | 'meets limit' | 'below limit' | 'past never';
+  readonly crossings: readonly Crossing[];
+}
+
+/** One series for the curve; times in seconds after midnight of the event day. */
+export interface ZoneSeries {
+  readonly caseName: CaseName;
+  readonly quantity: string;
+  readonly answer: Answer | 'layeredP05' | 'layeredP95';
+  readonly timesS: readonly number[];
+  readonly values: readonly number[];
+}
+
+export interface ZoneResult {
+  readonly id: string;
+  readonly title: string;
+  readonly space: string;
+  readonly spaceTitle: string;
+  readonly heightM: number;
+  readonly floorLevelM: number;
+  readonly kind: 'public' | 'crew' | 'floorLevelCheck';
+  readonly count: Figure | null;
+  readonly quantities: readonly ZoneQuantity[];
+  readonly series: readonly ZoneSeries[];
+  /** Printed instead of a number where the models do not apply. */
+  readonly notComputed: string | null;
+}
+
+export interface SoundResult {
+  readonly act: string;
+  readonly title: string;
+  readonly instrument: string;
+  readonly follows: boolean;
+  readonly words: string;
+  readonly frequencyInAir: Figure | null;
+  readonly frequency: Figure | null;
+  readonly cents: Figure | null;
+  readonly note: { readonly name: string; readonly centsOff: number } | null;
+  readonly noteInAir: { readonly name: string; readonly centsOff: number } | null;
+  readonly smallestAudible: readonly {
+    readonly words: string;
+    readonly cents: number;
+    readonly gasFraction: Figure;
+    readonly amount: Figure | null;
+  }[];
+  readonly saferWay: string;
+}
+
+export interface LargestAmount {
+  readonly act: string;
+  readonly gas: string;
+  readonly zone: string;
+  readonly limitedBy: string;
+  readonly mass: Figure;
+  readonly volume: Figure;
+  readonly planned: Figure;
+}
+
+export interface HoldTime {
+  readonly space: string;
+  readonly spaceTitle: string;
+  readonly quantity: string;
+  readonly toLevel: Figure;
+  readonly time: Figure | null;
+  readonly words: string;
+}
+
+export interface DecidingQuestion {
+  readonly path: string;
+  readonly question: string;
+  readonly wordAtBest: DecisionWord;
+  readonly wordAtWorst: DecisionWord;
+  /** The value that would suffice, when one does. */
+  readonly suffices: Figure | null;
+}
+
+export interface ControlResult {
+  readonly id: string;
+  readonly title: string;
+  readonly level: 'eliminate' | 'substitute' | 'engineer' | 'organise' | 'protect';
+  readonly act: string | null;
+  readonly chosen: boolean;
+  readonly credited: boolean;
+  readonly words: string;
+  readonly before: Figure | null;
+  readonly after: Figure | null;
+}
+
+export interface CitedRule {
+  readonly id: string;
+  readonly instrument: string;
+  readonly section: string;
+  readonly edition: string;
+  readonly duty: string;
+  readonly why: string;
+  readonly checked: string;
+  readonly confirm: boolean;
+}
+
+export interface StatedAssumption {
+  readonly path: string;
+  readonly text: string;
+  readonly figure: Figure | null;
+  readonly origin: Origin;
+  readonly source: string;
+}
+
+/** One cue or state change on the time axis, for curves and run sheets. */
+export interface DayEvent {
+  readonly atS: number;
+  readonly untilS: number;
+  readonly title: string;
+  readonly act: string | null;
+}
+
+export interface ActResult {
+  readonly id: string;
+  readonly title: string;
+  readonly space: string;
+  readonly spaceTitle: string;
+  readonly decision: DecisionPair;
+  readonly planned: readonly ReleaseLine[];
+  readonly worstCredible: readonly ReleaseLine[];
+  readonly cautions: readonly string[];
+}
+
+export interface ReleaseLine {
+  readonly title: string;
+  readonly gas: string;
+  readonly mass: Figure;
+  readonly volume: Figure;
+  readonly durationS: number;
+}
+
+/** What the section drawing needs, in metres and fractions; no computing left to do. */
+export interface SectionView {
+  readonly spaces: readonly {
+    readonly id: string;
+    readonly title: string;
+    readonly floorLevelM: number;
+    readonly floorRiseM: number;
+    readonly heightM: number;
+    readonly lengthM: number;
+  }[];
+  readonly openings: readonly {
+    readonly from: string;
+    readonly to: string;
+    readonly kind: string;
+    readonly sillLevelM: number;
+    readonly heightM: number;
+  }[];
+  readonly zones: readonly {
+    readonly id: string;
+    readonly title: string;
+    readonly space: string;
+    readonly levelM: number;
+    readonly lowestOxygen: Figure | null;
+    readonly highestGas: Figure | null;
+  }[];
+  /** Gas drawn at the moment of the governing number. */
+  readonly layers: readonly {
+    readonly space: string;
+    readonly at: 'floor' | 'ceiling' | 'whole';
+    readonly depthM: number;
+    readonly gasFraction: Figure;
+  }[];
+  readonly moment: string;
+}
+
+export interface Assessment {
+  readonly title: string;
+  readonly date: string | null;
+  readonly venueTitle: string;
+  readonly revision: string;
+  readonly preparedBy: string;
+  readonly decision: DecisionPair;
+  readonly governing: Governing | null;
+  readonly acts: readonly ActResult[];
+  readonly spaces: readonly {
+    readonly id: string;
+    readonly title: string;
+    readonly decision: DecisionPair;
+    readonly volume: Figure;
+    readonly freshAir: Figure;
+  }[];
+  readonly conditions: readonly Condition[];
+  readonly findings: readonly Finding[];
+  readonly refusals: readonly Refusal[];
+  readonly zones: readonly ZoneResult[];
+  readonly sound: readonly SoundResult[];
+  readonly largestAmounts: readonly LargestAmount[];
+  readonly holdTimes: readonly HoldTime[];
+  readonly questionsThatDecide: readonly DecidingQuestion[];
+  readonly controls: readonly ControlResult[];
+  readonly rulesCited: readonly CitedRule[];
+  readonly cautions: readonly { readonly id: string; readonly text: string }[];
+  readonly assumptions: readonly StatedAssumption[];
+  readonly events: readonly DayEvent[];
+  readonly section: SectionView;
+  readonly site: {
+    readonly pressure: Figure;
+    readonly temperature: Figure;
+    readonly altitude: Figure;
+    readonly freshAirOxygenPressure: Figure;
+  };
+  readonly carriage: null;
+  readonly climate: {
+    readonly instrument: string;
+    readonly planned: Figure;
+    readonly worstCredible: Figure;
+  } | null;
+  readonly decisionTable: readonly {
+    readonly row: number;
+    readonly test: string;
+    readonly word: DecisionWord | null;
+    readonly fired: boolean;
+    readonly where: string;
+  }[];
+  readonly engineVersion: string;
+  readonly inputHash: string;
+}
