@@ -65,7 +65,7 @@ export default {
       from: { path: '^src/assessment/' },
       to: {
         dependencyTypes: ['core', 'npm', 'npm-dev', 'npm-no-pkg', 'npm-unknown'],
-        pathNot: 'node_modules/(typebox|ajv|ajv-formats|json-canonicalize)/',
+        pathNot: 'node_modules/(typebox|ajv|ajv-formats|json-canonicalize|@noble/hashes)/',
       },
     },
     {
