@@ -10,7 +10,7 @@ export interface VenueRow {
   readonly data: JsonRecord;
 }
 
-const kinds = ['spaces', 'openings', 'airSystems', 'infiltrations'] as const;
+const kinds = ['spaces', 'openings', 'airSystems', 'infiltrations', 'transfers'] as const;
 type Kind = (typeof kinds)[number];
 
 export interface VenueContent extends Readonly<Record<Kind, readonly VenueRow[]>> {
@@ -40,6 +40,7 @@ const whole = {
   openings: inOrder,
   airSystems: inOrder,
   infiltrations: inOrder,
+  transfers: inOrder,
 } as const;
 
 function refuseRepeatedKeys(content: VenueContent): void {
@@ -65,7 +66,7 @@ const columns = (row: VenueRow, position: number) => ({
   data: storedJson(row.data),
 });
 
-/** What all four row tables have in common, so that one routine saves any of them. */
+/** What all row tables have in common, so that one routine saves any of them. */
 interface RowTable {
   deleteMany(args: {
     where: { venueId: string; key: { notIn: string[] } };
@@ -94,6 +95,7 @@ async function saveAllRows(db: Writing, venueId: string, content: VenueContent):
   await saveRows(db.opening, venueId, content.openings);
   await saveRows(db.airSystem, venueId, content.airSystems);
   await saveRows(db.infiltration, venueId, content.infiltrations);
+  await saveRows(db.transfer, venueId, content.transfers);
 }
 
 async function stored(db: Reading, id: string): Promise<StoredVenue | undefined> {
@@ -112,6 +114,7 @@ async function stored(db: Reading, id: string): Promise<StoredVenue | undefined>
     openings: rows(venue.openings),
     airSystems: rows(venue.airSystems),
     infiltrations: rows(venue.infiltrations),
+    transfers: rows(venue.transfers),
   };
 }
 

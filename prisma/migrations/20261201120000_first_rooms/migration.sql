@@ -81,6 +81,17 @@ CREATE TABLE "Infiltration" (
 );
 
 -- CreateTable
+CREATE TABLE "Transfer" (
+    "id" TEXT NOT NULL PRIMARY KEY,
+    "venueId" TEXT NOT NULL,
+    "key" TEXT NOT NULL,
+    "title" TEXT NOT NULL,
+    "position" INTEGER NOT NULL,
+    "data" JSONB NOT NULL,
+    CONSTRAINT "Transfer_venueId_fkey" FOREIGN KEY ("venueId") REFERENCES "Venue" ("id") ON DELETE CASCADE ON UPDATE CASCADE
+);
+
+-- CreateTable
 CREATE TABLE "Plan" (
     "id" TEXT NOT NULL PRIMARY KEY,
     "venueId" TEXT,
@@ -118,6 +129,9 @@ CREATE UNIQUE INDEX "AirSystem_venueId_key_key" ON "AirSystem"("venueId", "key")
 
 -- CreateIndex
 CREATE UNIQUE INDEX "Infiltration_venueId_key_key" ON "Infiltration"("venueId", "key");
+
+-- CreateIndex
+CREATE UNIQUE INDEX "Transfer_venueId_key_key" ON "Transfer"("venueId", "key");
 
 -- CreateIndex
 CREATE INDEX "Plan_venueId_idx" ON "Plan"("venueId");
