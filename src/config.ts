@@ -18,7 +18,7 @@ export class Settings {
   readonly publicUrl: string | undefined;
   readonly sessionHours: number;
 
-  constructor(values: Settings) {
+  constructor(values: { readonly [K in keyof Settings]: Settings[K] }) {
     this.host = values.host;
     this.port = values.port;
     this.databaseFile = values.databaseFile;
