@@ -1,0 +1,132 @@
+import { inRange } from '../range.js';
+import type { Composition, GasId, GasLibrary } from './gas-library.js';
+import { waterFractionOfAir } from './humid-air.js';
+import { mixtureTerms } from './mixture-terms.js';
+import { roomPressure, roomTemperature } from './ranges.js';
+
+export interface MixtureInput {
+  readonly composition: Composition;
+  readonly temperatureK: number;
+  readonly pressurePa: number;
+  /** Of the air share, over liquid water; 0 when left out. */
+  readonly relativeHumidity?: number;
+}
+
+export interface MixtureState {
+  readonly molarMassKgPerMol: number;
+  readonly densityKgPerM3: number;
+  /** At frequencies where vibration keeps up, as in all audible sound. */
+  readonly speedOfSoundMPerS: number;
+  /** Ideal cp/cv, the gamma of the acoustic formulas. */
+  readonly heatCapacityRatio: number;
+  readonly compressibilityFactor: number;
+  /** On the dry basis. */
+  readonly oxygenFraction: number;
+  readonly waterFraction: number;
+  /** Against dry air at the same temperature and pressure. */
+  readonly densityRelativeToAir: number;
+  readonly amountDensityMolPerM3: number;
+  readonly secondVirialM3PerMol: number;
+  /** sqrt(gamma R T/M): the limit at no pressure. */
+  readonly idealSpeedOfSoundMPerS: number;
+}
+
+const pureAir: Composition = { air: 1 };
+
+/** rho of p = rho R T (1 + B rho), in the form that stays stable for B near 0 [mol/m^3]. */
+function amountDensity(b: number, RT: number, p: number): number {
+  const ideal = p / RT;
+  return (2 * ideal) / (1 + Math.sqrt(1 + 4 * b * ideal));
+}
+
+interface AirDensityMemo {
+  temperatureK: number;
+  pressurePa: number;
+  densityKgPerM3: number;
+}
+
+/** Last dry-air density per library: most runs stay at one temperature and pressure. */
+const airDensities = new WeakMap<GasLibrary, AirDensityMemo>();
+
+function dryAirDensity(library: GasLibrary, T: number, p: number): number {
+  const last = airDensities.get(library);
+  if (last?.temperatureK === T && last.pressurePa === p) return last.densityKgPerM3;
+  const terms = mixtureTerms(library, pureAir, T, 0);
+  const RT = library.gasConstant.jPerMolK * T;
+  const densityKgPerM3 = amountDensity(terms.b, RT, p) * terms.molarMassKgPerMol;
+  airDensities.set(library, { temperatureK: T, pressurePa: p, densityKgPerM3 });
+  return densityKgPerM3;
+}
+
+/**
+ * Density, speed of sound and their companions of any gas mixture in a room [kg/m^3, m/s, ...].
+ *
+ *   rho = 2 p/(R T)/(1 + sqrt(1 + 4 B p/(R T)));  Z = 1 + B rho
+ *   cv/R = cp/R - 1 - rho (2 T B' + T^2 B'')
+ *   w^2 = (R T/M)[1 + 2 B rho + (1 + (B + T B') rho)^2/(cv/R)]
+ *
+ * @param library  gas data [data]
+ * @param input  composition [1], temperature [K] 263.15 to 318.15, absolute pressure [Pa] 60 000
+ *   to 110 000, relative humidity of the air share [1] 0 to 1
+ * @returns  the state; every key carries its unit [SI]
+ * @throws {OutOfRange} outside the ranges above
+ * @throws {InvalidInput} for an unknown gas, or fractions that do not sum to one
+ * Source: virial-sound-speed. Assumes: equilibrium of vibration; no condensation.
+ * Accuracy: 0.03 % in both against the reference equations, 0.01 % for the common gases.
+ * @example mixtureState(library, { composition: { He: 1 }, temperatureK: 300, pressurePa: 100000 }).speedOfSoundMPerS // 1019.580
+ */
+export function mixtureState(library: GasLibrary, input: MixtureInput): MixtureState {
+  const T = inRange(input.temperatureK, roomTemperature, '/temperatureK');
+  const p = inRange(input.pressurePa, roomPressure, '/pressurePa');
+  const waterOfAir = waterFractionOfAir(library, T, p, input.relativeHumidity ?? 0);
+  const airKgPerM3 = dryAirDensity(library, T, p);
+  const terms = mixtureTerms(library, input.composition, T, waterOfAir);
+  const { b, tb1, t2b2, heatCapacity: cp, molarMassKgPerMol: M } = terms;
+  const RT = library.gasConstant.jPerMolK * T;
+  const rho = amountDensity(b, RT, p);
+  const cv = cp - 1 - rho * (2 * tb1 + t2b2);
+  const slope = 1 + (b + tb1) * rho;
+  const gamma = cp / (cp - 1);
+  return {
+    molarMassKgPerMol: M,
+    densityKgPerM3: rho * M,
+    speedOfSoundMPerS: Math.sqrt((RT / M) * (1 + 2 * b * rho + (slope * slope) / cv)),
+    heatCapacityRatio: gamma,
+    compressibilityFactor: 1 + b * rho,
+    oxygenFraction:
+      terms.oxygenFraction === 0 ? 0 : terms.oxygenFraction / (1 - terms.waterFraction),
+    waterFraction: terms.waterFraction,
+    densityRelativeToAir: (rho * M) / airKgPerM3,
+    amountDensityMolPerM3: rho,
+    secondVirialM3PerMol: b,
+    idealSpeedOfSoundMPerS: Math.sqrt((gamma * RT) / M),
+  };
+}
+
+/**
+ * Molar mass of one gas or of air [kg/mol].
+ *
+ * @param library  gas data [data]
+ * @param gas  a gas id, or `air` for dry air [id]
+ * @returns  molar mass [kg/mol]
+ * @throws {InvalidInput} for an unknown gas
+ * Source: iupac-atomic-weights. Assumes: natural isotopes. Accuracy: that of the table.
+ * @example molarMassOf(library, 'He') // 0.004002602
+ */
+export function molarMassOf(library: GasLibrary, gas: GasId): number {
+  return mixtureTerms(library, { [gas]: 1 }, 293.15, 0).molarMassKgPerMol;
+}
+
+/**
+ * Molar mass of a mixture [kg/mol].
+ *
+ * @param library  gas data [data]
+ * @param composition  mole fractions by gas id or `air` [1], sum 1 within 1e-6
+ * @returns  molar mass [kg/mol]
+ * @throws {InvalidInput} for an unknown gas, or fractions that do not sum to one
+ * Source: iupac-atomic-weights. Assumes: the air share is dry. Accuracy: that of the table.
+ * @example molarMassOfMixture(library, { He: 0.5, air: 0.5 }) // 0.01648
+ */
+export function molarMassOfMixture(library: GasLibrary, composition: Composition): number {
+  return mixtureTerms(library, composition, 293.15, 0).molarMassKgPerMol;
+}
