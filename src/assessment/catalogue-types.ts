@@ -639,7 +639,8 @@ export const policySchema = Type.Object(
         leave: optional(positive('fraction')),
         acceptedCells: list(words('cell type of the plan file', 30), 8),
         refusedCells: list(words('cell type of the plan file', 30), 8),
-        refusedWhen: optional(conditionSchema),
+        /** The row holds when this is true; every row that holds must accept the cell. */
+        when: conditionSchema,
         text: words('as printed', 400),
       }),
     ),
