@@ -1,0 +1,211 @@
+import {
+  demonstrationSchema,
+  type Demonstration,
+  type Spread,
+} from '../assessment/catalogue-types.js';
+import { checked, readDataFile, refuseFaults, type DataFile, type Fault } from './data-file.js';
+import { slotFaults } from './policy.js';
+import { unknownFaults } from './references.js';
+
+/** Ids a demonstration may refer to. */
+export interface DemonstrationKnowledge {
+  readonly gases: ReadonlySet<string>;
+  readonly controls: ReadonlySet<string>;
+  readonly cautions: ReadonlySet<string>;
+  readonly slots: ReadonlySet<string>;
+  readonly breathingHeights: ReadonlySet<string>;
+}
+
+type Release =
+  Demonstration['releases']['planned'][number] | Demonstration['releases']['worstCredible'][number];
+
+function spreadFaults(spread: Spread | undefined, path: string): readonly Fault[] {
+  if (!spread || (spread.low <= spread.typical && spread.typical <= spread.high)) return [];
+  const hint = 'Order the three figures; write the same one three times if there is only one.';
+  return [{ path, problem: 'low, typical and high are not in order', hint }];
+}
+
+function compositionFaults(
+  composition: Readonly<Record<string, number>> | undefined,
+  gases: ReadonlySet<string>,
+  path: string,
+): readonly Fault[] {
+  if (!composition) return [];
+  const sum = Object.values(composition).reduce((total, share) => total + share, 0);
+  return [
+    ...Object.keys(composition).flatMap((gas) =>
+      unknownFaults(gas, gases, 'gas', `${path}/${gas}`),
+    ),
+    ...(Math.abs(sum - 1) > 1e-6
+      ? [{ path, problem: 'the shares do not add up to 1', hint: 'Correct the mole fractions.' }]
+      : []),
+  ];
+}
+
+function releaseFaults(
+  release: Release,
+  gases: ReadonlySet<string>,
+  path: string,
+): readonly Fault[] {
+  const amounts = [release.massKg, release.volumeM3].filter((amount) => amount !== undefined);
+  const kinds = [release.gas, release.composition].filter((kind) => kind !== undefined);
+  return [
+    ...unknownFaults(release.gas, gases, 'gas', `${path}/gas`),
+    ...compositionFaults(release.composition, gases, `${path}/composition`),
+    ...spreadFaults(release.massKg, `${path}/massKg`),
+    ...spreadFaults(release.volumeM3, `${path}/volumeM3`),
+    ...spreadFaults(release.durationS, `${path}/durationS`),
+    ...spreadFaults(release.heightM, `${path}/heightM`),
+    ...(amounts.length === 1
+      ? []
+      : [{ path, problem: 'needs either massKg or volumeM3', hint: 'State the amount once.' }]),
+    ...(kinds.length === 1
+      ? []
+      : [{ path, problem: 'needs either gas or composition', hint: 'Name what is let out once.' }]),
+    ...(release.profile === 'decaying' && release.timeConstantS === undefined
+      ? [
+          {
+            path,
+            problem: 'a decaying release needs timeConstantS',
+            hint: 'A third of the duration if nothing better is known.',
+          },
+        ]
+      : []),
+  ];
+}
+
+function demonstrationFaults(
+  demonstration: Demonstration,
+  known: DemonstrationKnowledge,
+): readonly Fault[] {
+  const { releases } = demonstration;
+  const noGas = demonstration.noGas ?? false;
+  const count = releases.planned.length + releases.worstCredible.length;
+  const named = new Set(demonstration.gases);
+  const all = [
+    ...releases.planned.map((release, i) => [release, `/releases/planned/${String(i)}`] as const),
+    ...releases.worstCredible.map(
+      (release, i) => [release, `/releases/worstCredible/${String(i)}`] as const,
+    ),
+  ];
+  return [
+    ...demonstration.gases.flatMap((gas, i) =>
+      unknownFaults(gas, known.gases, 'gas', `/gases/${String(i)}`),
+    ),
+    ...all.flatMap(([release, path]) => releaseFaults(release, known.gases, path)),
+    ...all.flatMap(([release, path]): readonly Fault[] =>
+      release.gas === undefined || named.has(release.gas)
+        ? []
+        : [
+            {
+              path: `${path}/gas`,
+              problem: `${release.gas} is not among the gases of this demonstration`,
+              hint: 'Add it to gases, or correct the release.',
+            },
+          ],
+    ),
+    ...(noGas === (count === 0) && (noGas || releases.worstCredible.length > 0)
+      ? []
+      : [
+          {
+            path: '/releases',
+            problem: noGas
+              ? 'a demonstration without gas lists releases'
+              : 'both a planned and a worst credible release are needed',
+            hint: 'State what goes out as rehearsed, and what goes out when the container is lost.',
+          },
+        ]),
+    ...demonstration.sound.flatMap((sound, i) => [
+      ...unknownFaults(sound.gas, known.gases, 'gas', `/sound/${String(i)}/gas`),
+      ...compositionFaults(sound.composition, known.gases, `/sound/${String(i)}/composition`),
+    ]),
+    ...demonstration.people.flatMap((person, i) =>
+      unknownFaults(
+        person.breathingHeight,
+        known.breathingHeights,
+        'breathing height',
+        `/people/${String(i)}/breathingHeight`,
+      ),
+    ),
+    ...demonstration.controls.flatMap((control, i) => [
+      ...unknownFaults(
+        control.control,
+        known.controls,
+        'control',
+        `/controls/${String(i)}/control`,
+      ),
+      ...slotFaults([control], `/controls/${String(i)}`, known.slots),
+    ]),
+    ...demonstration.cautions.flatMap((caution, i) =>
+      unknownFaults(caution, known.cautions, 'caution', `/cautions/${String(i)}`),
+    ),
+    ...slotFaults(demonstration.checklist, '/checklist', known.slots),
+    ...slotFaults(
+      demonstration.setUp.map((text) => ({ text })),
+      '/setUp',
+      known.slots,
+    ),
+    ...slotFaults(
+      demonstration.clearDown.map((text) => ({ text })),
+      '/clearDown',
+      known.slots,
+    ),
+  ];
+}
+
+/** One demonstration from its file, and the file for complaints that need its neighbours. */
+function demonstrationOf(
+  path: string,
+  known: DemonstrationKnowledge,
+): { readonly file: DataFile; readonly demonstration: Demonstration } {
+  const file = readDataFile(path);
+  const demonstration = checked(file, demonstrationSchema, 'demonstration');
+  refuseFaults(file, 'demonstration', demonstrationFaults(demonstration, known));
+  return { file, demonstration };
+}
+
+/**
+ * All demonstrations of the given files; each substitute must be one of them.
+ *
+ * @throws {InvalidInput} naming file, line and place of everything that cannot be used
+ */
+export function demonstrationsOf(
+  paths: readonly string[],
+  known: DemonstrationKnowledge,
+): readonly Demonstration[] {
+  const read = paths.map((path) => demonstrationOf(path, known));
+  const ids = new Set(read.map(({ demonstration }) => demonstration.id));
+  const seen = new Set<string>();
+  for (const { file, demonstration } of read) {
+    refuseFaults(file, 'demonstration', [
+      ...(seen.has(demonstration.id)
+        ? [
+            {
+              path: '/id',
+              problem: `the id "${demonstration.id}" stands in another file`,
+              hint: 'Give each demonstration its own id.',
+            },
+          ]
+        : []),
+      ...demonstration.substitutes.flatMap((substitute, i) => [
+        ...unknownFaults(
+          substitute.demonstration,
+          ids,
+          'demonstration',
+          `/substitutes/${String(i)}/demonstration`,
+        ),
+        ...(substitute.demonstration === demonstration.id
+          ? [
+              {
+                path: `/substitutes/${String(i)}/demonstration`,
+                problem: 'a demonstration cannot stand in for itself',
+                hint: 'Name another one, or only describe the substitute.',
+              },
+            ]
+          : []),
+      ]),
+    ]);
+    seen.add(demonstration.id);
+  }
+  return read.map(({ demonstration }) => demonstration);
+}
