@@ -1,0 +1,62 @@
+import type { Size } from '../document-tree.js';
+import type { Weight } from '../text-runs.js';
+
+/** Paper and ink: every length (points) and colour of a sheet in one place. */
+
+export const ink = '#1a1a17';
+export const softInk = '#55534c';
+export const hairline = '#b9b5a8';
+export const accent = '#1f4a5f';
+export const markGrey = '#e4e2dc';
+
+export interface Paper {
+  readonly width: number;
+  readonly height: number;
+  readonly left: number;
+  readonly right: number;
+  readonly top: number;
+  readonly bottom: number;
+}
+
+const margins = { left: 51, right: 51, top: 66, bottom: 62 };
+export const papers: Record<Size, Paper> = {
+  a4: { width: 595.28, height: 841.89, ...margins },
+  letter: { width: 612, height: 792, ...margins },
+};
+
+export const bodyWidth = (paper: Paper): number => paper.width - paper.left - paper.right;
+export const bodyHeight = (paper: Paper): number => paper.height - paper.top - paper.bottom;
+
+export interface TextLook {
+  readonly size: number;
+  /** Distance from baseline to baseline. */
+  readonly leading: number;
+  readonly weight: Weight;
+  readonly colour: string;
+}
+
+export const looks = {
+  title: { size: 21, leading: 25, weight: 'strong', colour: ink },
+  over: { size: 9.5, leading: 14, weight: 'strong', colour: accent },
+  heading2: { size: 13, leading: 17, weight: 'strong', colour: accent },
+  heading3: { size: 10, leading: 13.5, weight: 'strong', colour: ink },
+  body: { size: 9.6, leading: 13.4, weight: 'regular', colour: ink },
+  small: { size: 8.6, leading: 11.6, weight: 'regular', colour: softInk },
+  note: { size: 8.6, leading: 11.6, weight: 'regular', colour: ink },
+  label: { size: 8.2, leading: 11.4, weight: 'strong', colour: softInk },
+  caption: { size: 8.8, leading: 12.4, weight: 'strong', colour: ink },
+  cell: { size: 8.8, leading: 11.6, weight: 'regular', colour: ink },
+  cellStrong: { size: 8.8, leading: 11.6, weight: 'strong', colour: ink },
+  tableHead: { size: 8.2, leading: 10.8, weight: 'strong', colour: softInk },
+  decision: { size: 20, leading: 25, weight: 'strong', colour: ink },
+  number: { size: 26, leading: 31, weight: 'strong', colour: ink },
+  running: { size: 8.2, leading: 11, weight: 'regular', colour: softInk },
+} as const satisfies Record<string, TextLook>;
+
+/** Height of the letters above the baseline and below it, as shares of the size. */
+const ascent = 0.95;
+const descent = 0.29;
+
+/** Distance from the top of a line to its baseline. */
+export const baselineIn = (look: TextLook): number =>
+  (look.leading - (ascent + descent) * look.size) / 2 + ascent * look.size;
