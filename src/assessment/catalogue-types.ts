@@ -230,7 +230,7 @@ export const facts = Object.keys(factKinds) as readonly Fact[];
 
 /**
  * A test on one fact (`fact` with `is`, `anyOf`, `above`, `atLeast` or `below`), or `all`, `any`,
- * `not` of further tests, three deep at most; `always: true` applies without a test.
+ * `not` of further tests, two groups deep at most; `always: true` applies without a test.
  */
 export interface Condition {
   always?: true;
@@ -263,9 +263,7 @@ const groupOf = (member: TSchema) =>
     },
     closed,
   );
-export const conditionSchema = Type.Unsafe<Condition>(
-  groupOf(groupOf(groupOf(Type.Object(test, closed)))),
-);
+export const conditionSchema = Type.Unsafe<Condition>(groupOf(groupOf(Type.Object(test, closed))));
 
 // ---------------------------------------------------------------- rule packs
 
@@ -681,6 +679,7 @@ export const controlEffectSchema = Type.Enum([
   'condition',
   'sourceRemoved', // the release of that act is zero
   'gasSwapped', // another gas or form takes its place
+  'releaseScaled', // the planned release shrinks
   'inventoryCapped', // worst credible = the cap, not the stock on site
   'containerSmaller', // worst credible = content of the smaller container
   'openingOpened', // a doorway or shutter is held open
