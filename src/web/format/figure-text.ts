@@ -1,0 +1,146 @@
+import type { Figure, FigureUnit } from '../../assessment/assessment.js';
+
+/** Which way the last printed digit may move: never towards the comfortable side. */
+export type Rounding = 'nearest' | 'down' | 'up';
+
+const noBreak = '\u00a0';
+const minus = '\u2212';
+
+// Stored results carry nine significant digits; what lies beyond is the noise of binary fractions,
+// and rounding down must not turn a true 19.5 % into 19.4 %.
+const settled = (value: number): number => Number(value.toPrecision(9));
+
+function whole(value: number, rounding: Rounding): number {
+  const near = settled(value);
+  if (rounding === 'down') return Math.floor(near);
+  return rounding === 'up' ? Math.ceil(near) : Math.round(near);
+}
+
+/** Digits in groups of three from five digits on, with a real minus sign. */
+function grouped(digits: string): string {
+  const [left = '', right] = digits.replace('-', '').split('.');
+  const groups = left.length < 5 ? left : left.replaceAll(/\B(?=(\d{3})+$)/g, noBreak);
+  const negative = digits.startsWith('-') && Number(digits) !== 0;
+  return `${negative ? minus : ''}${groups}${right === undefined ? '' : `.${right}`}`;
+}
+
+function fixed(value: number, decimals: number, rounding: Rounding): string {
+  const scale = 10 ** decimals;
+  return grouped((whole(value * scale, rounding) / scale).toFixed(decimals));
+}
+
+function threeDigits(value: number, rounding: Rounding): string {
+  if (value === 0) return '0';
+  const decimals = Math.min(12, 2 - Math.floor(Math.log10(Math.abs(settled(value)))));
+  if (decimals >= 0) return fixed(value, decimals, rounding);
+  const scale = 10 ** -decimals;
+  return grouped(String(whole(value / scale, rounding) * scale));
+}
+
+function fractionText(value: number, rounding: Rounding): string {
+  const ppm = whole(value * 1e5, rounding) * 10;
+  if (Math.abs(ppm) < 10_000) return `${grouped(String(ppm))}${noBreak}ppm`;
+  return `${fixed(value * 100, 1, rounding)}${noBreak}%`;
+}
+
+function timeText(seconds: number, rounding: Rounding): string {
+  if (seconds < 0) return `${minus}${timeText(-seconds, rounding)}`;
+  const s = whole(seconds, rounding);
+  if (s < 60) return `${String(s)}${noBreak}s`;
+  if (s < 3600) {
+    const rest = s % 60;
+    const minutes = `${String(Math.floor(s / 60))}${noBreak}min`;
+    return rest === 0 ? minutes : `${minutes} ${String(rest)}${noBreak}s`;
+  }
+  const minutes = whole(s / 60, rounding);
+  const rest = minutes % 60;
+  const hours = `${String(Math.floor(minutes / 60))}${noBreak}h`;
+  return rest === 0 ? hours : `${hours} ${String(rest)}${noBreak}min`;
+}
+
+interface UnitStyle {
+  readonly rounding: Rounding;
+  text(value: number, rounding: Rounding): string;
+}
+
+const plain = (symbol: string): UnitStyle => ({
+  rounding: 'nearest',
+  text: (value, rounding) => `${threeDigits(value, rounding)}${symbol && noBreak}${symbol}`,
+});
+
+const unitStyles = {
+  oxygenFraction: {
+    rounding: 'down',
+    text: (value, rounding) => `${fixed(value * 100, 1, rounding)}${noBreak}%`,
+  },
+  gasFraction: { rounding: 'up', text: fractionText },
+  s: { rounding: 'up', text: timeText },
+  Pa: {
+    rounding: 'nearest',
+    text: (value, rounding) => `${fixed(value / 1000, 1, rounding)}${noBreak}kPa`,
+  },
+  Hz: {
+    rounding: 'nearest',
+    text: (value, rounding) => `${fixed(value, value < 1000 ? 1 : 0, rounding)}${noBreak}Hz`,
+  },
+  cents: {
+    rounding: 'nearest',
+    text: (value, rounding) => {
+      const digits = fixed(value, 0, rounding);
+      const sign = value > 0 && digits !== '0' ? '+' : '';
+      return `${sign}${digits}${noBreak}cents`;
+    },
+  },
+  ratio: plain(''),
+  K: {
+    rounding: 'nearest',
+    text: (value, rounding) => `${fixed(value - 273.15, 1, rounding)}${noBreak}°C`,
+  },
+  people: {
+    rounding: 'nearest',
+    text: (value, rounding) => grouped(String(whole(value, rounding))),
+  },
+  kg: plain('kg'),
+  mol: plain('mol'),
+  m3: plain('m³'),
+  m: plain('m'),
+  m2: plain('m²'),
+  m3PerS: plain('m³/s'),
+  perHour: plain('per hour'),
+  mPerS: plain('m/s'),
+  kgCO2e: plain('kg CO2e'),
+} as const satisfies Record<FigureUnit, UnitStyle>;
+
+/**
+ * A number with its unit, as page, sheet and JSON-derived text all print it.
+ *
+ * Oxygen is rounded down, gas and times up; the rest to the nearest, unless told otherwise (a largest
+ * permissible amount is rounded down).
+ *
+ * @param value in the SI unit of `unit`
+ * @example quantityText(0.19496, 'oxygenFraction') // '19.4 %'
+ */
+export function quantityText(value: number, unit: FigureUnit, rounding?: Rounding): string {
+  const style: UnitStyle = unitStyles[unit];
+  return style.text(value, rounding ?? style.rounding);
+}
+
+/** The span of a figure as text, when it has one. */
+export function spanText(figure: Pick<Figure, 'low' | 'high' | 'unit'>): string | undefined {
+  const { low, high, unit } = figure;
+  if (low !== undefined && high !== undefined) {
+    return `${quantityText(low, unit)} to ${quantityText(high, unit)}`;
+  }
+  if (low !== undefined) return `at least ${quantityText(low, unit)}`;
+  return high === undefined ? undefined : `at most ${quantityText(high, unit)}`;
+}
+
+/** The figure as text: its value, and its span in brackets when it has one. */
+export function figureText(
+  figure: Pick<Figure, 'value' | 'low' | 'high' | 'unit'>,
+  rounding?: Rounding,
+): string {
+  const span = spanText(figure);
+  const value = quantityText(figure.value, figure.unit, rounding);
+  return span === undefined ? value : `${value} (${span})`;
+}

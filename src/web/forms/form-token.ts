@@ -1,0 +1,2 @@
+/** Name of the hidden field that shows a form to come from our own page. */
+export const formTokenField = 'formToken';
