@@ -50,6 +50,230 @@ export const sources = {
     title: 'Speed of sound of the virial equation Z = 1 + B rho, exact thermodynamics',
     seen: 'own derivation',
   },
+  'own-derivation': {
+    title: 'Derived here from first principles; the derivation stands in the docstring',
+    seen: 'own derivation',
+  },
+  'a-weighting-iec-61672': {
+    title: 'IEC 61672, frequency weighting A, closed form',
+    seen: 'second-hand',
+  },
+  'density-series': {
+    title:
+      'Own fits of the compressibility factor to the reference equations of state named in each species file',
+    seen: 'own derivation',
+  },
+  'driven-source-level': {
+    title:
+      'Radiated power of a small source of fixed velocity; plane-wave impedance; Stokes 1868 for bells in light gas',
+    seen: 'own derivation',
+  },
+  'equal-temperament-iso-16': {
+    title: 'ISO 16:1975 standard pitch; equal temperament',
+    seen: 'from memory',
+  },
+  'flanged-end': {
+    title: 'Radiation impedance of a flanged pipe by mode matching',
+    seen: 'own derivation',
+  },
+  'flue-pipe-proportions': {
+    title:
+      'Common practice, no source: mouth a quarter of the circumference wide, cut up to a quarter of its width',
+    seen: 'from memory',
+  },
+  geometry: {
+    title: 'Geometry and the definition of the quantity',
+    seen: 'own derivation',
+  },
+  'helmholtz-resonator': {
+    title: 'Kinsler et al., Fundamentals of Acoustics: Helmholtz resonator with end corrections',
+    seen: 'from memory',
+  },
+  'ising-1971': {
+    title: 'Ising 1971: mouth and top correction of flue pipes, intonation number and jet drive',
+    seen: 'second-hand',
+  },
+  'kewley-port-watson-1994': {
+    title: 'Kewley-Port & Watson 1994: just noticeable formant changes',
+    seen: 'second-hand',
+  },
+  'kirchhoff-1868': {
+    title: 'Kirchhoff 1868, wide-tube form of the wall effect (Rayleigh, Theory of Sound)',
+    seen: 'second-hand',
+  },
+  'klatt-1980': {
+    title: 'Klatt, J. Acoust. Soc. Am. 67 (1980): software for a cascade formant synthesiser',
+    seen: 'second-hand',
+  },
+  'levine-schwinger-1948': {
+    title: 'Levine & Schwinger, Phys. Rev. 73 (1948): end correction of an unflanged pipe',
+    seen: 'second-hand',
+  },
+  'outside-gas-mass': {
+    title: 'Radiation mass of the outside gas acting on the inside column',
+    seen: 'own derivation',
+  },
+  'peterson-barney-1952': {
+    title: 'Peterson & Barney, J. Acoust. Soc. Am. 24 (1952): formants of vowels',
+    seen: 'second-hand',
+  },
+  'pitch-inversion': {
+    title: 'Inversion of the sound-speed ratio for the gas fraction, uncertainty by quadrature',
+    seen: 'own derivation',
+  },
+  'preview-choices': {
+    title: 'Project choices for previews: tone spectrum, bandwidths, level and fades',
+    seen: 'own derivation',
+  },
+  'saturation-states': {
+    title:
+      'Saturation states solved from the reference equations of state named in each species file',
+    seen: 'own derivation',
+  },
+  'stevens-1998': {
+    title:
+      'Stevens, Acoustic Phonetics (1998) eq. 3.59, after Fant 1972: yielding walls of the vocal tract; scaling of the wall term derived',
+    seen: 'second-hand',
+  },
+  'vapour-pressure-fits': {
+    title:
+      'Own fits in Wagner form to the saturation lines of the reference equations of state named in each species file',
+    seen: 'own derivation',
+  },
+  'well-mixed-dilution': {
+    title: 'Dilution of a well-mixed enclosure',
+    seen: 'own derivation',
+  },
+  'wilke-1950': {
+    title: 'Wilke, J. Chem. Phys. 18 (1950) 517: viscosity of gas mixtures',
+    seen: 'from memory',
+  },
+  'mackay-1993': {
+    title: 'Mackay 1993: lip whistling in helium and sulfur hexafluoride',
+    seen: 'second-hand',
+  },
+  'breathing-supply-limits': {
+    title:
+      'Project choice: strictest of the published supply criteria for breathing gas, 20.5 % to 23.5 % oxygen; EN 12021 for carbon dioxide',
+    seen: 'second-hand',
+  },
+  'reed-practice': {
+    title: 'Wind instruments with reeds and lips: common knowledge, no source',
+    seen: 'from memory',
+  },
+  'akhter-kaye-2020': {
+    title: 'Akhter and Kaye 2020: line-plume filling boxes, entrainment 0.16',
+    seen: 'first-hand',
+  },
+  'astm-e741': {
+    title: 'ASTM E741 and ISO 12569: air change from tracer-gas decay',
+    seen: 'second-hand',
+  },
+  'baines-turner-1969': {
+    title:
+      'Baines and Turner, J. Fluid Mech. 37 (1969) 51: turbulent buoyant convection from a source in a confined region',
+    seen: 'second-hand',
+  },
+  'brown-solvason-1962': {
+    title:
+      'Brown and Solvason, Int. J. Heat Mass Transfer 5 (1962) 859: natural convection through rectangular openings',
+    seen: 'second-hand',
+  },
+  'cleaver-marshall-linden-1994': {
+    title:
+      'Cleaver, Marshall and Linden, J. Hazard. Mater. 36 (1994) 209: volume Richardson number',
+    seen: 'first-hand',
+  },
+  'dahlquist-bjorck-1974': {
+    title: 'Dahlquist and Bjorck, Numerical Methods (1974), section 6.4',
+    seen: 'from memory',
+  },
+  'dormand-prince-1980': {
+    title: 'Dormand and Prince, J. Comput. Appl. Math. 6 (1980) 19, table 2',
+    seen: 'from memory',
+  },
+  'engineering-judgement': {
+    title: 'Engineering judgement without a published source; shown to the user as an assumption',
+    seen: 'own derivation',
+  },
+  'epstein-1988': {
+    title:
+      'Epstein, J. Heat Transfer 110 (1988) 885: buoyancy-driven exchange flow through small openings in horizontal partitions',
+    seen: 'from memory',
+  },
+  'golub-van-loan-2013': {
+    title: 'Golub and Van Loan, Matrix Computations, 4th edition (2013)',
+    seen: 'from memory',
+  },
+  'hairer-norsett-wanner-1993': {
+    title:
+      'Hairer, Norsett and Wanner, Solving Ordinary Differential Equations I, 2nd edition (1993)',
+    seen: 'from memory',
+  },
+  'hairer-wanner-1996': {
+    title: 'Hairer and Wanner, Solving Ordinary Differential Equations II, 2nd edition (1996)',
+    seen: 'from memory',
+  },
+  'higham-2008': {
+    title: 'Higham, Functions of Matrices (2008), chapter 10: scaling and squaring',
+    seen: 'from memory',
+  },
+  'huppert-simpson-1980': {
+    title: 'Huppert and Simpson, J. Fluid Mech. 99 (1980) 785: the slumping of gravity currents',
+    seen: 'second-hand',
+  },
+  'iso-2533': {
+    title:
+      'ISO 2533 standard atmosphere: dry air, oxygen rounded to 20.95 %, molar mass to 28.96 g/mol',
+    seen: 'second-hand',
+  },
+  'kaye-hunt-2004': {
+    title:
+      'Kaye and Hunt, J. Fluid Mech. 520 (2004) 135: time-dependent flows in an emptying filling box',
+    seen: 'second-hand',
+  },
+  'linden-lane-serff-smeed-1990': {
+    title: 'Linden, Lane-Serff and Smeed, J. Fluid Mech. 212 (1990) 309: emptying filling boxes',
+    seen: 'second-hand',
+  },
+  'marrero-mason-1972': {
+    title: 'Marrero and Mason, J. Phys. Chem. Ref. Data 1 (1972) 3: gaseous diffusion coefficients',
+    seen: 'second-hand',
+  },
+  'morton-taylor-turner-1956': {
+    title:
+      'Morton, Taylor and Turner, Proc. R. Soc. A 234 (1956) 1: turbulent gravitational convection',
+    seen: 'second-hand',
+  },
+  'own-room-air': {
+    title:
+      'Own derivation for the room-air models: volume balances, hydrostatic orifice theory, critical flow, inventory bound',
+    seen: 'own derivation',
+  },
+  'persily-de-jonge-2017': {
+    title:
+      'Persily and de Jonge, Indoor Air 27 (2017) 868: carbon dioxide generation rates of building occupants',
+    seen: 'second-hand',
+  },
+  'robins-2001': {
+    title:
+      'Robins and others, Atmos. Environ. 35 (2001): mixing at the top of dense layers, fitted below Ri* 15',
+    seen: 'first-hand',
+  },
+  'shin-dalziel-linden-2004': {
+    title:
+      'Shin, Dalziel and Linden, J. Fluid Mech. 521 (2004) 1: gravity currents produced by lock exchange',
+    seen: 'first-hand',
+  },
+  'van-ulden-1984': {
+    title: 'van Ulden 1984: edge entrainment of spreading dense gas',
+    seen: 'from memory',
+  },
+  'wmo-8': {
+    title: 'WMO Guide to Instruments No. 8 (2008): saturation vapour pressure over water',
+    seen: 'from memory',
+  },
+  'ideal-gas': { title: 'Ideal gas law with the exact molar gas constant', seen: 'own derivation' },
 } as const satisfies Record<string, Source>;
 
 export type SourceKey = keyof typeof sources;

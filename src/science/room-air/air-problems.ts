@@ -1,0 +1,215 @@
+import type { ErrorDetail } from '../../errors.js';
+import type { AirGasTable } from './air-gases.js';
+import type { AirInput, AirRelease, AirSpace } from './air-input.js';
+import { volumeCurve } from './volume-curve.js';
+
+/** Measured volume against the shape: more than this apart is a contradiction [-]. */
+const VOLUME_TOLERANCE = 0.15;
+const SUM_TOLERANCE = 1e-6;
+
+/** Everything in an input that cannot be meant, each with its place. */
+export function airInputProblems(input: AirInput): readonly ErrorDetail[] {
+  const ids = new Set(input.spaces.map((space) => space.id));
+  const found: ErrorDetail[] = [];
+  const note = (path: string, problem: string): void => {
+    found.push({ path, problem });
+  };
+  if (input.spaces.length === 0) note('/spaces', 'holds no space');
+  noteTwice(input.spaces, '/spaces', note);
+  noteTwice(input.zones ?? [], '/zones', note);
+  for (const [i, space] of input.spaces.entries())
+    spaceProblems(space, `/spaces/${String(i)}`, note);
+  const mustBeSpace = (id: string, path: string): void => {
+    if (!ids.has(id)) note(path, `names no space of this input: ${id}`);
+  };
+  for (const [i, opening] of (input.openings ?? []).entries()) {
+    const path = `/openings/${String(i)}`;
+    for (const side of ['from', 'to'] as const) {
+      if (opening[side] !== 'outside') mustBeSpace(opening[side], `${path}/${side}`);
+    }
+    if (opening.from === opening.to) note(`${path}/to`, 'joins a space to itself');
+    if (opening.kind === 'floorOpening') continue;
+    for (const side of [opening.from, opening.to]) {
+      const space = input.spaces.find((one) => one.id === side);
+      if (!space || opening.sillLevelM === undefined) continue;
+      const ceiling = lowestFloor(space) + space.heightM;
+      if (opening.sillLevelM + opening.heightM > ceiling + 0.05) {
+        note(`${path}/sillLevelM`, `reaches above the ceiling of ${side}`);
+      }
+    }
+  }
+  for (const [i, system] of (input.airSystems ?? []).entries()) {
+    const path = `/airSystems/${String(i)}`;
+    if (system.space !== undefined) mustBeSpace(system.space, `${path}/space`);
+    if ((system.space === undefined) === (system.serves === undefined)) {
+      note(path, 'needs either space or serves');
+    }
+    let sum = 0;
+    for (const [j, served] of (system.serves ?? []).entries()) {
+      mustBeSpace(served.space, `${path}/serves/${String(j)}/space`);
+      sum += served.share;
+    }
+    if (system.serves && Math.abs(sum - 1) > SUM_TOLERANCE) {
+      note(`${path}/serves`, `shares add up to ${String(sum)}, not 1`);
+    }
+    const balanced = system.supplyM3PerS !== undefined || system.extractM3PerS !== undefined;
+    if (system.drive === 'balanced' ? !balanced && system.freshAirM3PerS === undefined : balanced) {
+      note(
+        path,
+        system.drive === 'balanced'
+          ? 'a balanced system needs supplyM3PerS and extractM3PerS'
+          : `supplyM3PerS and extractM3PerS belong to a balanced system, not to ${system.drive}`,
+      );
+    }
+  }
+  for (const [i, one] of (input.infiltration ?? []).entries()) {
+    mustBeSpace(one.space, `/infiltration/${String(i)}/space`);
+    const overlap = (input.infiltration ?? [])
+      .slice(0, i)
+      .some(
+        (other) =>
+          other.space === one.space &&
+          (other.fromS ?? 0) < (one.toS ?? Infinity) &&
+          (one.fromS ?? 0) < (other.toS ?? Infinity),
+      );
+    if (overlap) note(`/infiltration/${String(i)}`, 'overlaps another entry for the same space');
+  }
+  for (const [i, one] of (input.transfers ?? []).entries()) {
+    for (const side of ['from', 'to'] as const) {
+      if (one[side] !== 'outside') mustBeSpace(one[side], `/transfers/${String(i)}/${side}`);
+    }
+  }
+  for (const [i, one] of (input.occupants ?? []).entries()) {
+    mustBeSpace(one.space, `/occupants/${String(i)}/space`);
+  }
+  for (const [i, one] of (input.zones ?? []).entries()) {
+    mustBeSpace(one.space, `/zones/${String(i)}/space`);
+    const space = input.spaces.find((candidate) => candidate.id === one.space);
+    if (!space) continue;
+    const mouth = (one.floorLevelM ?? lowestFloor(space)) + one.heightM;
+    const pockets = (space.pockets ?? []).filter((pocket) => pocket.at === 'high');
+    const top = lowestFloor(space) + space.heightM + Math.max(0, ...pockets.map((p) => p.depthM));
+    if (mouth > top + 1e-9) note(`/zones/${String(i)}/heightM`, 'lies above the ceiling');
+  }
+  for (const [i, one] of (input.releases ?? []).entries()) {
+    const path = `/releases/${String(i)}`;
+    mustBeSpace(one.space, `${path}/space`);
+    releaseProblems(one, path, note);
+  }
+  const timed = ['openings', 'airSystems', 'infiltration', 'transfers', 'occupants'] as const;
+  for (const list of timed) {
+    for (const [i, one] of (input[list] ?? []).entries()) {
+      if (one.toS !== undefined && one.toS <= (one.fromS ?? 0)) {
+        note(`/${list}/${String(i)}/toS`, 'is not after fromS');
+      }
+    }
+  }
+  return found;
+}
+
+type Note = (path: string, problem: string) => void;
+
+function noteTwice(list: readonly { readonly id: string }[], path: string, note: Note): void {
+  const seen = new Set<string>();
+  for (const [i, { id }] of list.entries()) {
+    if (seen.has(id)) note(`${path}/${String(i)}/id`, `is used twice: ${id}`);
+    seen.add(id);
+    if (id === 'outside' && path === '/spaces') {
+      note(`${path}/${String(i)}/id`, 'outside is the name of the open air');
+    }
+  }
+}
+
+function lowestFloor(space: AirSpace): number {
+  const levels = (space.steps ?? []).map((step) => step.levelM);
+  return levels.length > 0 ? Math.min(...levels) : (space.floorLevelM ?? 0);
+}
+
+function spaceProblems(space: AirSpace, path: string, note: Note): void {
+  if (!(space.floorAreaM2 > 0)) {
+    note(`${path}/floorAreaM2`, 'must be above 0');
+    return;
+  }
+  if (!(space.heightM > 0)) {
+    note(`${path}/heightM`, 'must be above 0');
+    return;
+  }
+  if ((space.floorRiseM ?? 0) >= space.heightM) {
+    note(`${path}/floorRiseM`, 'reaches the ceiling');
+    return;
+  }
+  const steps = space.steps ?? [];
+  if (steps.length > 0) {
+    const area = steps.reduce((sum, step) => sum + step.areaM2, 0);
+    if (Math.abs(area / space.floorAreaM2 - 1) > 0.01) {
+      note(`${path}/steps`, `areas add up to ${String(area)} m2, not to floorAreaM2`);
+    }
+    if (space.floorRiseM !== undefined) note(`${path}/floorRiseM`, 'cannot stand beside steps');
+    if (
+      space.floorLevelM !== undefined &&
+      Math.abs(space.floorLevelM - lowestFloor(space)) > 0.01
+    ) {
+      note(`${path}/floorLevelM`, 'is not the level of the lowest step');
+    }
+    if (steps.some((step) => step.levelM - lowestFloor(space) >= space.heightM)) {
+      note(`${path}/steps`, 'a step reaches the ceiling');
+    }
+  }
+  if (space.volumeM3 !== undefined) {
+    const shape = volumeCurve({ ...space, volumeM3: 1 });
+    const gross = 1 / shape.freeShare;
+    if (Math.abs(space.volumeM3 / gross - 1) > VOLUME_TOLERANCE) {
+      note(
+        `${path}/volumeM3`,
+        `is more than 15 % away from the shape (${String(Number(gross.toPrecision(6)))} m3)`,
+      );
+    }
+  }
+  const named = Object.entries(space.initial ?? {});
+  const sum = named.reduce((total, [gas, value]) => (gas === 'air' ? total : total + value), 0);
+  if (sum > 1 + SUM_TOLERANCE) note(`${path}/initial`, 'fractions add up to more than 1');
+}
+
+function releaseProblems(release: AirRelease, path: string, note: Note): void {
+  const amounts = [release.amountMol, release.massKg, release.volumeM3].filter(
+    (one) => one !== undefined,
+  );
+  if (amounts.length !== 1) note(path, 'needs exactly one of amountMol, massKg, volumeM3');
+  if ((release.gas === undefined) === (release.composition === undefined)) {
+    note(path, 'needs either gas or composition');
+  }
+  if (release.composition) {
+    const sum = Object.values(release.composition).reduce((total, share) => total + share, 0);
+    if (Math.abs(sum - 1) > SUM_TOLERANCE) {
+      note(`${path}/composition`, `adds up to ${String(sum)}, not 1`);
+    }
+  }
+  if (release.profile === 'decaying' && !((release.timeConstantS ?? 0) > 0)) {
+    note(`${path}/timeConstantS`, 'is needed above 0 for a decaying release');
+  }
+}
+
+/** Gas ids that the gas data do not have. */
+export function airGasProblems(input: AirInput, gases: AirGasTable): readonly ErrorDetail[] {
+  const found: ErrorDetail[] = [];
+  const check = (gas: string, path: string): void => {
+    if (gas !== 'air' && gases[gas] === undefined) {
+      found.push({ path, problem: `is no gas of the data: ${gas}` });
+    }
+  };
+  for (const [i, release] of (input.releases ?? []).entries()) {
+    if (release.gas !== undefined) check(release.gas, `/releases/${String(i)}/gas`);
+    for (const gas of Object.keys(release.composition ?? {})) {
+      check(gas, `/releases/${String(i)}/composition/${gas}`);
+    }
+  }
+  for (const [i, space] of input.spaces.entries()) {
+    for (const gas of Object.keys(space.initial ?? {})) {
+      check(gas, `/spaces/${String(i)}/initial/${gas}`);
+    }
+  }
+  for (const [i, { quantity }] of (input.thresholds ?? []).entries()) {
+    if (quantity !== 'oxygenFraction') check(quantity, `/thresholds/${String(i)}/quantity`);
+  }
+  return found;
+}
