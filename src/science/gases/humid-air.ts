@@ -50,7 +50,7 @@ export function iceSaturationPressure(library: GasLibrary, T: number): number {
   const { coefficients, temperatureMinK, temperatureMaxK } = library.humidAir.saturationPressureIce;
   inRange(
     T,
-    { min: temperatureMinK, max: temperatureMaxK, unit: 'K', name: 'The temperature of ice' },
+    { min: temperatureMinK, max: temperatureMaxK, unit: 'K', name: 'temperature of ice' },
     '/temperatureK',
   );
   return Math.exp(exponentSum(coefficients, T, -1));

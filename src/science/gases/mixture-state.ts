@@ -1,5 +1,5 @@
 import { inRange } from '../range.js';
-import type { Composition, GasId, GasLibrary } from './gas-library.js';
+import type { Composition, GasLibrary } from './gas-library.js';
 import { waterFractionOfAir } from './humid-air.js';
 import { mixtureTerms } from './mixture-terms.js';
 import { roomPressure, roomTemperature } from './ranges.js';
@@ -101,32 +101,4 @@ export function mixtureState(library: GasLibrary, input: MixtureInput): MixtureS
     secondVirialM3PerMol: b,
     idealSpeedOfSoundMPerS: Math.sqrt((gamma * RT) / M),
   };
-}
-
-/**
- * Molar mass of one gas or of air [kg/mol].
- *
- * @param library  gas data [data]
- * @param gas  a gas id, or `air` for dry air [id]
- * @returns  molar mass [kg/mol]
- * @throws {InvalidInput} for an unknown gas
- * Source: iupac-atomic-weights. Assumes: natural isotopes. Accuracy: that of the table.
- * @example molarMassOf(library, 'He') // 0.004002602
- */
-export function molarMassOf(library: GasLibrary, gas: GasId): number {
-  return mixtureTerms(library, { [gas]: 1 }, 293.15, 0).molarMassKgPerMol;
-}
-
-/**
- * Molar mass of a mixture [kg/mol].
- *
- * @param library  gas data [data]
- * @param composition  mole fractions by gas id or `air` [1], sum 1 within 1e-6
- * @returns  molar mass [kg/mol]
- * @throws {InvalidInput} for an unknown gas, or fractions that do not sum to one
- * Source: iupac-atomic-weights. Assumes: the air share is dry. Accuracy: that of the table.
- * @example molarMassOfMixture(library, { He: 0.5, air: 0.5 }) // 0.01648
- */
-export function molarMassOfMixture(library: GasLibrary, composition: Composition): number {
-  return mixtureTerms(library, composition, 293.15, 0).molarMassKgPerMol;
 }

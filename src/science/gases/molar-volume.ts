@@ -1,7 +1,7 @@
 import { inRange, type Range } from '../range.js';
 
-const positiveTemperature: Range = { min: 1, max: 5000, unit: 'K', name: 'The temperature' };
-const positivePressure: Range = { min: 1, max: 1e8, unit: 'Pa', name: 'The absolute pressure' };
+const positiveTemperature: Range = { min: 1, max: 5000, unit: 'K', name: 'temperature' };
+const positivePressure: Range = { min: 1, max: 1e8, unit: 'Pa', name: 'absolute pressure' };
 
 /** R of the SI of 2019, for the places that have no gas library at hand. */
 const gasConstant = 8.314462618;
