@@ -51,18 +51,16 @@ export type Spread = Static<typeof spreadSchema>;
 const composition = Type.Record(Type.String(), fraction('mole fraction'));
 
 /** What holds the gas: a fault empties it, so the planner works out its content at the site. */
-const containerSchema = Type.Object(
-  {
-    title: words('in words a presenter uses', 120),
-    form: Type.Enum(['compressed', 'liquefied', 'dryIce', 'cryogen', 'balloon', 'bag', 'made']),
-    waterVolumeM3: optional(positive('water capacity')),
-    pressurePa: optional(positive('absolute filling pressure')),
-    temperatureK: optional(positive('gas temperature at that pressure')),
-    massKg: optional(positive('net content by mass')),
-    idleLossPerHour: optional(fraction('share lost per hour with the vented lid on')),
-  },
-  closed,
-);
+const containerProperties = {
+  title: words('in words a presenter uses', 120),
+  form: Type.Enum(['compressed', 'liquefied', 'dryIce', 'cryogen', 'balloon', 'bag', 'made']),
+  waterVolumeM3: optional(positive('water capacity')),
+  pressurePa: optional(positive('absolute filling pressure')),
+  temperatureK: optional(positive('gas temperature at that pressure')),
+  massKg: optional(positive('net content by mass')),
+  idleLossPerHour: optional(fraction('share lost per hour with the vented lid on')),
+};
+const containerSchema = Type.Object(containerProperties, closed);
 
 const releaseProperties = {
   id,
@@ -361,8 +359,10 @@ export const ruleSchema = sourced({
   when: conditionSchema,
   appliesWhen: words('the same in prose', 300),
   duty: words('what has to be done, in our own words', 600),
-  /** The release is not lawful without written authority. */
+  /** Letting the gas out is not lawful, or not allowed, without written authority. */
   needsAuthority: optional(Type.Boolean()),
+  /** The authority covers only what cannot be recovered; the rest has to be. */
+  needsRecovery: optional(Type.Boolean()),
 });
 export type Rule = Static<typeof ruleSchema>;
 
@@ -540,7 +540,11 @@ const defaultNames = [
   'breathableOxygenLowFraction',
   'breathableOxygenHighFraction',
   'ventilationLeadVolumeChanges',
+  'holdOxygenFraction',
+  'holdCarbonDioxideFraction',
 ] as const;
+/** Every default must stand in the policy once. */
+export const policyDefaultNames: readonly string[] = defaultNames;
 export type PolicyDefaultName = (typeof defaultNames)[number];
 
 export const policySchema = Type.Object(
@@ -650,6 +654,40 @@ export const policySchema = Type.Object(
         low: positive('EUR or USD'),
         high: positive('EUR or USD'),
       }),
+    ),
+    /** Gases that are not planned without written authority, whatever the pack says. */
+    authorities: Type.Array(
+      sourced({
+        gas,
+        needsRecovery: Type.Boolean(),
+        reason: words('one line', 240),
+        alternative: words('what to do instead', 240),
+      }),
+    ),
+    /** Usual containers, to pick from; their content is worked out, not listed. */
+    containers: Type.Array(sourced({ id, gases: list(gas, 12), ...containerProperties })),
+    /** The published oxygen-deficiency-hazard rate method: a second view for reviewers. */
+    deficiencyMethod: Type.Object(
+      {
+        classes: Type.Array(
+          sourced({
+            class: Type.Integer({ minimum: 0, maximum: 4 }),
+            belowPerHour: Type.Union([positive('upper end of the class'), Type.Null()]),
+            acceptable: Type.Boolean(),
+          }),
+        ),
+        certainPressurePa: positive('oxygen pressure at and below which the factor is 1'),
+        noEffectPressurePa: positive('oxygen pressure above which the factor is 0'),
+        rates: Type.Array(
+          sourced({
+            id,
+            title: words('what fails', 120),
+            value: positive('in the unit below'),
+            unit: Type.Enum(['perHour', 'perDemand', 'perAction']),
+          }),
+        ),
+      },
+      closed,
     ),
     refusals: Type.Array(
       sourced({

@@ -3,6 +3,7 @@ import {
   checklistsFileSchema,
   controlLevels,
   controlsFileSchema,
+  policyDefaultNames,
   policySchema,
   questionsFileSchema,
   type Checklists,
@@ -39,6 +40,17 @@ function twiceFaults(rows: readonly { readonly name: string }[], path: string): 
   );
 }
 
+function missingDefaultFaults(policy: Policy): readonly Fault[] {
+  const present = new Set<string>(policy.defaults.map(({ name }) => name));
+  return policyDefaultNames
+    .filter((name) => !present.has(name))
+    .map((name) => ({
+      path: '/defaults',
+      problem: `the default ${name} is missing`,
+      hint: 'Add the row, with value, unit, title and source.',
+    }));
+}
+
 /** The levels and defaults of `policy/default.yaml`. */
 export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
   const file = readDataFile(path);
@@ -46,6 +58,9 @@ export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
   refuseFaults(file, 'policy', [
     ...levelFaults(policy),
     ...twiceFaults(policy.defaults, '/defaults'),
+    ...missingDefaultFaults(policy),
+    ...repeatedIdFaults(policy.containers, '/containers'),
+    ...repeatedIdFaults(policy.refusals, '/refusals'),
     ...repeatedIdFaults(policy.roomTypes, '/roomTypes'),
     ...repeatedIdFaults(policy.breathingHeights, '/breathingHeights'),
     ...repeatedIdFaults(policy.carbonDioxidePerPerson, '/carbonDioxidePerPerson'),
@@ -53,6 +68,10 @@ export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
     ...[
       ...policy.freshAir.map((row, i) => [row.gas, `/freshAir/${String(i)}/gas`] as const),
       ...policy.meters.map((row, i) => [row.gas, `/meters/${String(i)}/gas`] as const),
+      ...policy.authorities.map((row, i) => [row.gas, `/authorities/${String(i)}/gas`] as const),
+      ...policy.containers.flatMap((row, i) =>
+        row.gases.map((gas, j) => [gas, `/containers/${String(i)}/gases/${String(j)}`] as const),
+      ),
       ...policy.costBands.map((row, i) => [row.gas, `/costBands/${String(i)}/gas`] as const),
     ].flatMap(([gas, place]) => unknownFaults(gas, gases, 'gas', place)),
   ]);
