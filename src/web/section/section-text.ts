@@ -1,0 +1,38 @@
+import type { SectionView } from '../../assessment/assessment.js';
+import { figureText, quantityText } from '../format/figure-text.js';
+import { lengthText, levelText } from './level-text.js';
+import { roofLevel } from './placement.js';
+import { sectionWords, type SectionWords } from './section-words.js';
+
+/** What the section drawing shows, in sentences, for those who cannot see it. */
+export function sectionText(view: SectionView, words: SectionWords = sectionWords): string {
+  if (view.spaces.length === 0) return words.empty;
+  const titles = new Map(view.spaces.map((space) => [space.id, space.title]));
+  const titleOf = (id: string): string => titles.get(id) ?? words.outside;
+  const sentences = [`${words.title}. ${view.moment}`.trim().replace(/[^.]$/, '$&.')];
+  for (const space of view.spaces) {
+    const rake =
+      space.floorRiseM > 0 ? `, rising to ${levelText(space.floorLevelM + space.floorRiseM)}` : '';
+    sentences.push(
+      `${space.title}: ${lengthText(space.lengthM)} long, floor at ${levelText(space.floorLevelM)}${rake}, ceiling at ${levelText(roofLevel(space))}.`,
+    );
+    for (const zone of view.zones.filter((entry) => entry.space === space.id)) {
+      const oxygen =
+        zone.lowestOxygen === null
+          ? words.noNumber
+          : `lowest oxygen ${quantityText(zone.lowestOxygen.value, zone.lowestOxygen.unit)}`;
+      const gas = zone.highestGas === null ? '' : `, highest gas ${figureText(zone.highestGas)}`;
+      sentences.push(`${zone.title}, breathing at ${levelText(zone.levelM)}: ${oxygen}${gas}.`);
+    }
+    for (const layer of view.layers.filter((entry) => entry.space === space.id)) {
+      const depth = layer.at === 'whole' ? '' : `, ${lengthText(layer.depthM)} deep`;
+      sentences.push(`${words.layers[layer.at]}${depth}: ${figureText(layer.gasFraction)}.`);
+    }
+  }
+  for (const opening of view.openings) {
+    sentences.push(
+      `Opening from ${titleOf(opening.from)} to ${titleOf(opening.to)}, ${lengthText(opening.heightM)} high or long, sill at ${levelText(opening.sillLevelM)}.`,
+    );
+  }
+  return sentences.map((text) => text.charAt(0).toUpperCase() + text.slice(1)).join(' ');
+}
