@@ -1,0 +1,84 @@
+import type {
+  CaseName,
+  DayEvent,
+  Figure,
+  FigureUnit,
+  ZoneResult,
+  ZoneSeries,
+} from '../../assessment/assessment.js';
+import { quantityText } from '../format/figure-text.js';
+import { curveWords, type CurveWords } from './curve-words.js';
+
+/** What one curve shows: a quantity of a zone over the day, its levels and the cues. */
+export interface ZoneCurve {
+  readonly title: string;
+  readonly quantityTitle: string;
+  readonly unit: FigureUnit;
+  readonly series: readonly ZoneSeries[];
+  readonly levels: readonly { readonly name: 'aim' | 'limit' | 'never'; readonly figure: Figure }[];
+  readonly events: readonly DayEvent[];
+}
+
+/** The curve of one quantity and case of a zone, or null when no series was computed. */
+export function zoneCurve(
+  zone: ZoneResult,
+  quantity: string,
+  caseName: CaseName,
+  events: readonly DayEvent[],
+): ZoneCurve | null {
+  const series = zone.series.filter(
+    (entry) =>
+      entry.quantity === quantity && entry.caseName === caseName && entry.timesS.length > 1,
+  );
+  const judged = zone.quantities.find(
+    (entry) => entry.quantity === quantity && entry.caseName === caseName,
+  );
+  const answer = judged === undefined ? undefined : Object.values(judged.answers)[0];
+  if (series.length === 0 || judged === undefined || answer === undefined) return null;
+  const from = Math.min(...series.map((entry) => entry.timesS[0] ?? 0));
+  const to = Math.max(...series.map((entry) => entry.timesS.at(-1) ?? 0));
+  return {
+    title: zone.title,
+    quantityTitle: judged.quantityTitle,
+    unit: answer.unit,
+    series,
+    levels: (['aim', 'limit', 'never'] as const).flatMap((name) => {
+      const figure = judged.levels[name];
+      return figure === null ? [] : [{ name, figure }];
+    }),
+    events: events.filter((event) => event.untilS >= from && event.atS <= to),
+  };
+}
+
+/** Time of day as hh:mm, past midnight counted on from 00:00. */
+export function clockText(secondsOfDay: number): string {
+  const minutes = Math.floor(secondsOfDay / 60);
+  const two = (value: number): string => String(value).padStart(2, '0');
+  return `${two(Math.floor(minutes / 60) % 24)}:${two(minutes % 60)}`;
+}
+
+/** What the curve shows, in sentences: the worst of each answer and when, against each level. */
+export function zoneCurveText(curve: ZoneCurve, words: CurveWords = curveWords): string {
+  const worstIsLow = curve.unit === 'oxygenFraction';
+  const answers = curve.series.map((series) => {
+    let worst = 0;
+    series.values.forEach((value, index) => {
+      const known = series.values[worst] ?? value;
+      if (worstIsLow ? value < known : value > known) worst = index;
+    });
+    const value = quantityText(series.values[worst] ?? 0, curve.unit);
+    const at = clockText(series.timesS[worst] ?? 0);
+    return `${words.answers[series.answer]} ${worstIsLow ? 'lowest' : 'highest'} ${value} at ${at}`;
+  });
+  const levels = curve.levels.map(
+    (level) =>
+      `${words.levels[level.name]} ${quantityText(level.figure.value, level.figure.unit, 'nearest')}`,
+  );
+  const events = curve.events.map((event) => `${event.title} from ${clockText(event.atS)}`);
+  const parts = [
+    `${curve.quantityTitle}, ${curve.title}: ${answers.join('; ')}`,
+    ...(levels.length === 0 ? [] : [`Lines at ${levels.join(', ')}`]),
+    ...(events.length === 0 ? [] : [`Marked: ${events.join('; ')}`]),
+  ];
+  return `${parts.join('. ')}.`;
+}
