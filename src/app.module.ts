@@ -2,10 +2,12 @@ import 'reflect-metadata';
 import { Module, type DynamicModule, type LogLevel } from '@nestjs/common';
 import { NestFactory } from '@nestjs/core';
 import { FastifyAdapter, type NestFastifyApplication } from '@nestjs/platform-fastify';
+import { CatalogueModule } from './catalogue/catalogue.module.js';
 import { Settings } from './config.js';
 import { PeopleModule } from './people/people.module.js';
 import type { Database } from './storage/database.js';
 import { StorageModule } from './storage/storage.module.js';
+import { VenuesModule } from './venues/venues.module.js';
 import { bodyLimitBytes, installWeb } from './web/http/install.js';
 import { WebModule } from './web/web.module.js';
 
@@ -28,7 +30,14 @@ export class AppModule {
   static of(settings: Settings, database: Database): DynamicModule {
     return {
       module: AppModule,
-      imports: [SettingsModule.of(settings), StorageModule.of(database), WebModule, PeopleModule],
+      imports: [
+        SettingsModule.of(settings),
+        StorageModule.of(database),
+        CatalogueModule,
+        WebModule,
+        PeopleModule,
+        VenuesModule,
+      ],
     };
   }
 }

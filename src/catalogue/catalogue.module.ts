@@ -1,0 +1,26 @@
+import { Global, Module } from '@nestjs/common';
+import type { Catalogue } from '../assessment/catalogue-types.js';
+import type { GasLibrary } from '../science/gases/gas-library.js';
+import { loadCatalogue } from './catalogue.js';
+import { loadGasLibrary } from './gas-library.js';
+
+/** The data and words of `templates/`, read once. Also the token under which Nest hands them out. */
+export class CatalogueData {
+  constructor(
+    readonly catalogue: Catalogue,
+    readonly gases: GasLibrary,
+  ) {}
+}
+
+/** Reads and checks the data at start-up: a broken file stops the start, not a request. */
+@Global()
+@Module({
+  providers: [
+    {
+      provide: CatalogueData,
+      useFactory: () => new CatalogueData(loadCatalogue(), loadGasLibrary()),
+    },
+  ],
+  exports: [CatalogueData],
+})
+export class CatalogueModule {}
