@@ -134,21 +134,18 @@ function demonstrationFaults(
         'control',
         `/controls/${String(i)}/control`,
       ),
-      ...slotFaults([control], `/controls/${String(i)}`, known.slots),
+      ...slotFaults(control.text, `/controls/${String(i)}/text`, known.slots),
     ]),
     ...demonstration.cautions.flatMap((caution, i) =>
       unknownFaults(caution, known.cautions, 'caution', `/cautions/${String(i)}`),
     ),
-    ...slotFaults(demonstration.checklist, '/checklist', known.slots),
-    ...slotFaults(
-      demonstration.setUp.map((text) => ({ text })),
-      '/setUp',
-      known.slots,
+    ...demonstration.checklist.flatMap(({ text }, i) =>
+      slotFaults(text, `/checklist/${String(i)}/text`, known.slots),
     ),
-    ...slotFaults(
-      demonstration.clearDown.map((text) => ({ text })),
-      '/clearDown',
-      known.slots,
+    ...(['setUp', 'clearDown'] as const).flatMap((part) =>
+      demonstration[part].flatMap((text, i) =>
+        slotFaults(text, `/${part}/${String(i)}`, known.slots),
+      ),
     ),
   ];
 }

@@ -81,21 +81,17 @@ export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
 const slotPattern = /\{([^{}]*)\}/g;
 
 /** Names of the slots in a checklist line, in order. */
-export function slotsOf(text: string): readonly string[] {
+function slotsOf(text: string): readonly string[] {
   return [...text.matchAll(slotPattern)].map(([, name = '']) => name);
 }
 
-/** Slots of the lines that nobody defined. */
+/** Slots of a text that nobody defined. */
 export function slotFaults(
-  lines: readonly { readonly text: string }[],
+  text: string,
   path: string,
   slots: ReadonlySet<string>,
 ): readonly Fault[] {
-  return lines.flatMap(({ text }, i) =>
-    slotsOf(text).flatMap((slot) =>
-      unknownFaults(slot, slots, 'slot', `${path}/${String(i)}/text`),
-    ),
-  );
+  return slotsOf(text).flatMap((slot) => unknownFaults(slot, slots, 'slot', path));
 }
 
 /** The lines of `policy/checklists.yaml` and the slots they fill. */
@@ -106,7 +102,9 @@ export function checklistsOf(path: string, gases: ReadonlySet<string>): Checklis
   refuseFaults(file, 'checklist', [
     ...repeatedIdFaults(checklists.slots, '/slots'),
     ...repeatedIdFaults(checklists.lines, '/lines'),
-    ...slotFaults(checklists.lines, '/lines', slots),
+    ...checklists.lines.flatMap(({ text }, i) =>
+      slotFaults(text, `/lines/${String(i)}/text`, slots),
+    ),
     ...whenFaults(checklists.lines, '/lines', gases),
   ]);
   return checklists;
