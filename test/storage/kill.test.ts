@@ -28,11 +28,11 @@ interface Acknowledged {
   count: number;
 }
 
-/** Lets a process save, and kills it so long after its first acknowledged save. */
+/** Lets a process save, and kills it so long after it has acknowledged so many saves. */
 async function saveUntilKilled(
   file: string,
   accountId: string,
-  afterMs: number,
+  when: { readonly saves: number; readonly thenMs: number },
   acknowledged: Acknowledged,
 ): Promise<void> {
   const child = spawn(
@@ -46,9 +46,9 @@ async function saveUntilKilled(
   child.stderr.on('data', (chunk: Buffer) => (complaints += chunk.toString()));
   child.stdout.on('data', (chunk: Buffer) => {
     said += chunk.toString();
-    if (doomed) return;
+    if (doomed || said.split('\n').length <= when.saves) return;
     doomed = true;
-    setTimeout(() => child.kill('SIGKILL'), afterMs);
+    setTimeout(() => child.kill('SIGKILL'), when.thenMs);
   });
   const signal = await new Promise((resolve) => {
     child.on('close', (_, by) => {
@@ -82,7 +82,8 @@ it(
     const acknowledged: Acknowledged = { plans: new Map(), venues: new Map(), count: 0 };
 
     for (let kill = 0; kill < kills; kill += 1) {
-      await saveUntilKilled(file, account.id, random() * 1000, acknowledged);
+      const when = { saves: 1 + Math.floor(random() * 40), thenMs: random() * 60 };
+      await saveUntilKilled(file, account.id, when, acknowledged);
 
       const checked = new Sqlite(file);
       expect(checked.pragma('integrity_check', { simple: true })).toBe('ok');
