@@ -274,6 +274,36 @@ export const sources = {
     seen: 'from memory',
   },
   'ideal-gas': { title: 'Ideal gas law with the exact molar gas constant', seen: 'own derivation' },
+  'abramowitz-stegun-1964': {
+    title: 'Abramowitz and Stegun, Handbook of Mathematical Functions (1964), chapter 26',
+    seen: 'from memory',
+  },
+  'cryogen-standing-loss': {
+    title: 'Published cryogen safety guidance: double the maker figure for an aged vessel',
+    seen: 'second-hand',
+  },
+  'dry-ice-box-loss': {
+    title: 'Aviation medicine report AM-06/19 (2006) for small boxes; storage sheets of suppliers',
+    seen: 'second-hand',
+  },
+  'dry-ice-heat-balance': {
+    title: 'Heat balance with 571 kJ/kg of sublimation and 83 kJ/kg to warm the gas to 20 degC',
+    seen: 'own derivation',
+  },
+  'floor-heat-conduction': {
+    title:
+      'Heat conduction into a thick floor at constant surface temperature; concrete from memory',
+    seen: 'own derivation',
+  },
+  'isentropic-nozzle': {
+    title:
+      'Isentropic flow of an ideal gas through an opening; emptying of a vessel, isothermal and adiabatic',
+    seen: 'own derivation',
+  },
+  'release-courses': {
+    title: 'Project choices for the course of releases in time',
+    seen: 'own derivation',
+  },
 } as const satisfies Record<string, Source>;
 
 export type SourceKey = keyof typeof sources;

@@ -1,6 +1,7 @@
 import { bracketedRoot } from '../numerics/root.js';
 import { inRange } from '../range.js';
 import type { GasId, GasLibrary } from '../gases/gas-library.js';
+import { knownGas } from '../gases/known-gas.js';
 import { mixtureState, type MixtureState } from '../gases/mixture-state.js';
 import { relativeHumidityRange, roomPressure, roomTemperature } from '../gases/ranges.js';
 import { airAtEndsFactor, type Resonator } from './instrument.js';
@@ -48,6 +49,7 @@ function speedOf(state: MixtureState, model: SpeedModel): number {
  */
 export function noteRatio(library: GasLibrary, given: GasInAir): (share: number) => number {
   const { gas, temperatureK, pressurePa, relativeHumidity, radiusM } = given;
+  if (gas !== 'air') knownGas(library, gas, '/gas');
   inRange(temperatureK, roomTemperature, '/temperatureK');
   inRange(pressurePa, roomPressure, '/pressurePa');
   inRange(relativeHumidity, relativeHumidityRange, '/relativeHumidity');

@@ -1,7 +1,8 @@
 import { InvalidInput } from '../../errors.js';
 import { inRange, type Range } from '../range.js';
 import { volumeAtRoom, type RoomConditions } from './container-content.js';
-import type { GasId, GasLibrary, GasSpecies } from './gas-library.js';
+import type { GasId, GasLibrary } from './gas-library.js';
+import { knownGas } from './known-gas.js';
 
 export const balloonDiameterRange: Range = {
   min: 0.01,
@@ -10,16 +11,6 @@ export const balloonDiameterRange: Range = {
   name: 'inflated diameter',
 };
 export const liquidVolumeRange: Range = { min: 0, max: 100, unit: 'm3', name: 'liquid volume' };
-
-function speciesOf(library: GasLibrary, gas: GasId): GasSpecies {
-  const species = library.species[gas];
-  if (species) return species;
-  throw new InvalidInput(
-    `There is no gas "${gas}".`,
-    `Use one of ${Object.keys(library.species).join(', ')}.`,
-    [{ path: '/gas', problem: 'is not a known gas' }],
-  );
-}
 
 /**
  * Gas volume at room conditions of a cryogenic liquid at its boiling point [m^3].
@@ -44,7 +35,7 @@ export function liquidGasVolume(
   room: RoomConditions,
 ): number {
   inRange(liquidVolumeM3, liquidVolumeRange, '/liquidVolumeM3');
-  const species = speciesOf(library, gas);
+  const species = knownGas(library, gas, '/gas');
   const density = species.phase.liquidDensityAtBoilingKgPerM3;
   if (density === undefined) {
     throw new InvalidInput(
