@@ -29,7 +29,6 @@ export const checkedSchema = Type.Enum([
   'judgement', // a choice of this project, with its reason
   'calculated', // worked out from stated inputs
 ]);
-export type Checked = Static<typeof checkedSchema>;
 
 const provenance = {
   source: Type.String({ minLength: 2, maxLength: 300, description: 'where the row comes from' }),
@@ -183,6 +182,7 @@ export type Demonstration = Static<typeof demonstrationSchema>;
 export const factKinds = {
   gasesReleased: 'list', // let out in any planned or worst credible release
   gasesPresent: 'list', // anywhere in the stock or the acts
+  demonstrations: 'list', // catalogue ids of the acts
   region: 'list', // country or country-part of the venue, for instance DE, FR, US-CA, CA-ON
   occupied: 'truth', // people are in the space
   publicPresent: 'truth',
@@ -246,7 +246,7 @@ const test = {
   always: optional(Type.Literal(true)),
   fact: optional(Type.Enum([...facts])),
   is: optional(Type.Boolean()),
-  anyOf: optional(Type.Array(Type.String({ minLength: 1, maxLength: 20 }), { minItems: 1 })),
+  anyOf: optional(Type.Array(Type.String({ minLength: 1, maxLength: 60 }), { minItems: 1 })),
   above: optional(Type.Number()),
   atLeast: optional(Type.Number()),
   below: optional(Type.Number()),
@@ -271,7 +271,6 @@ export const conditionSchema = Type.Unsafe<Condition>(groupOf(groupOf(Type.Objec
  * `note` explains. A row that fresh air or any gas plan at all would fail cannot judge.
  */
 export const roleSchema = Type.Enum(['judge', 'show', 'workersOnly', 'note']);
-export type LimitRole = Static<typeof roleSchema>;
 
 const instrument = {
   instrument: words('instrument, with section', 300),
@@ -364,7 +363,6 @@ export const ruleSchema = sourced({
   /** The authority covers only what cannot be recovered; the rest has to be. */
   needsRecovery: optional(Type.Boolean()),
 });
-export type Rule = Static<typeof ruleSchema>;
 
 export const warmingPotentialSchema = sourced({
   gas,
@@ -751,7 +749,6 @@ export const controlEffectSchema = Type.Enum([
   'readingGate', // no entry or start before a reading
   'noiseLowered',
 ]);
-export type ControlEffect = Static<typeof controlEffectSchema>;
 
 export const controlsFileSchema = Type.Object(
   {
@@ -825,8 +822,6 @@ export const checklistsFileSchema = Type.Object(
   closed,
 );
 export type Checklists = Static<typeof checklistsFileSchema>;
-export type ChecklistLine = Checklists['lines'][number];
-export type ChecklistSlot = Checklists['slots'][number];
 
 export const questionsFileSchema = Type.Object(
   {

@@ -19,9 +19,10 @@ export interface Range {
  * @throws {OutOfRange} when outside the range; the range stands in the details
  */
 export function inRange(value: number, range: Range, path: string): number {
+  const subject = range.name.charAt(0).toUpperCase() + range.name.slice(1);
   if (!Number.isFinite(value)) {
     throw new InvalidInput(
-      `${range.name} is not a finite number.`,
+      `${subject} is not a finite number.`,
       `Give ${range.name} as a plain number in ${range.unit}.`,
       [{ path, problem: `not a finite number: ${String(value)}` }],
     );
@@ -29,7 +30,7 @@ export function inRange(value: number, range: Range, path: string): number {
   if (value < range.min || value > range.max) {
     const limits = `${String(range.min)} to ${String(range.max)} ${range.unit}`.trim();
     throw new OutOfRange(
-      `${range.name} ${String(value)} ${range.unit} is outside the range of the model.`.replace(
+      `${subject} ${String(value)} ${range.unit} is outside the range of the model.`.replace(
         '  ',
         ' ',
       ),

@@ -1,0 +1,231 @@
+import type {
+  AirAmbient,
+  AirInput,
+  AirOccupants,
+  AirRelease,
+  AirSystem,
+} from '../science/room-air/air-input.js';
+import type { ResolvedGroup, ResolvedPlan, ResolvedRelease } from './resolved-plan.js';
+
+/** People are in their places this long before a performance begins. */
+const doorsBeforeS = 600;
+/** The day is followed this long after its last event. */
+const afterDayS = 1800;
+/** A worst credible release is followed this long. */
+const afterWorstS = 3600;
+
+/** One release placed in the day: absolute start, and the act or container it belongs to. */
+export interface PlacedRelease {
+  readonly release: ResolvedRelease;
+  readonly startS: number;
+  /** Gas of one episode adds up in the bound until a reading closes the episode. */
+  readonly episode: string;
+}
+
+/** The part of the day that is calculated, in seconds after midnight. */
+export interface DayWindow {
+  readonly startS: number;
+  readonly endS: number;
+}
+
+/** A run of the air model for a plan, and what is needed to read its answer. */
+export interface AirCase {
+  readonly input: AirInput;
+  readonly window: DayWindow;
+  readonly placed: readonly PlacedRelease[];
+}
+
+const optional = <K extends string, V>(key: K, value: V | null): Partial<Record<K, V>> =>
+  value === null ? {} : ({ [key]: value } as Partial<Record<K, V>>);
+
+/**
+ * The episode to which a moment of the day belongs. Where the plan has a gate reading before each
+ * house, an episode is one performance; where it has none, gas counts from the first act to the last.
+ */
+export function episodeAt(plan: ResolvedPlan, atS: number): string {
+  if (!plan.readingBetweenShows) return 'day';
+  const show = plan.performances.findIndex((performance) => atS <= performance.endS);
+  return show < 0 ? 'afterwards' : `show${String(show + 1)}`;
+}
+
+/** Every planned release of the day with its start. Gas that a flame consumes is left out. */
+export function plannedReleases(plan: ResolvedPlan): readonly PlacedRelease[] {
+  return plan.acts.flatMap((act) =>
+    act.startsS.flatMap((actStartS) =>
+      act.planned
+        .filter((release) => !release.burned && release.amountMol > 0)
+        .map((release) => {
+          const startS = actStartS + release.startS;
+          return { release, startS, episode: episodeAt(plan, startS) };
+        }),
+    ),
+  );
+}
+
+/** From the first doors or act of the day until the air has been followed after the last. */
+export function dayWindow(plan: ResolvedPlan): DayWindow {
+  const starts = [
+    ...plan.performances.map((performance) => performance.startS - doorsBeforeS),
+    ...plan.acts.flatMap((act) => act.startsS),
+  ];
+  const ends = [
+    ...plan.performances.map((performance) => performance.endS),
+    ...plan.acts.flatMap((act) => act.startsS.map((startS) => startS + act.durationS)),
+  ];
+  return {
+    startS: Math.max(0, Math.floor(Math.min(...starts) / 60) * 60),
+    endS: Math.ceil(Math.max(...ends) / 60) * 60 + afterDayS,
+  };
+}
+
+/** The window of a worst credible release that begins at a given time. */
+export function worstWindow(day: DayWindow, startS: number): DayWindow {
+  return { startS: day.startS, endS: startS + afterWorstS };
+}
+
+function ambientOf(plan: ResolvedPlan): AirAmbient {
+  const { temperatureK, pressurePa, relativeHumidity, carbonDioxideFraction } = plan.site;
+  return { temperatureK, pressurePa, relativeHumidity, carbonDioxideFraction };
+}
+
+function occupantsOf(
+  plan: ResolvedPlan,
+  window: DayWindow,
+  groups: readonly ResolvedGroup[],
+): readonly AirOccupants[] {
+  return groups
+    .filter((group) => group.count > 0)
+    .flatMap((group) =>
+      plan.performances
+        .map((performance) => ({
+          fromS: Math.max(0, performance.startS - doorsBeforeS - window.startS),
+          toS: Math.min(performance.endS, window.endS) - window.startS,
+        }))
+        .filter(({ fromS, toS }) => toS > fromS)
+        .map(({ fromS, toS }) => ({
+          space: group.space,
+          count: group.count,
+          carbonDioxideM3PerS: group.carbonDioxideM3PerS,
+          fromS,
+          toS,
+        })),
+    );
+}
+
+function timedWithin(
+  item: { readonly fromS: number | null; readonly toS: number | null },
+  window: DayWindow,
+): { fromS?: number; toS?: number } | null {
+  const fromS = item.fromS === null ? null : Math.max(0, item.fromS - window.startS);
+  const toS = item.toS === null ? null : item.toS - window.startS;
+  if (toS !== null && toS <= (fromS ?? 0)) return null;
+  return { ...optional('fromS', fromS), ...optional('toS', toS) };
+}
+
+function systemsOf(plan: ResolvedPlan, window: DayWindow): readonly AirSystem[] {
+  return plan.airSystems.flatMap((system): AirSystem[] => {
+    const timed = timedWithin(system, window);
+    if (!timed) return [];
+    return [
+      {
+        serves: system.serves,
+        drive: system.drive,
+        ...(system.drive === 'balanced'
+          ? {
+              ...optional('supplyM3PerS', system.supplyM3PerS),
+              ...optional('extractM3PerS', system.extractM3PerS),
+            }
+          : { freshAirM3PerS: system.freshAirM3PerS }),
+        recirculatedM3PerS: system.recirculatedM3PerS,
+        effectiveness: system.effectiveness,
+        ...optional('supplyLevel', system.supplyLevel),
+        ...optional('extractLevel', system.extractLevel),
+        ...optional('extractTopM', system.extractTopM),
+        ...timed,
+      },
+    ];
+  });
+}
+
+function releaseOf({ release, startS, episode }: PlacedRelease, window: DayWindow): AirRelease {
+  return {
+    space: release.space,
+    composition: release.composition,
+    amountMol: release.amountMol,
+    startS: startS - window.startS,
+    durationS: release.durationS,
+    manner: release.manner,
+    episode,
+    ...(release.profile === 'decaying' && release.durationS > 0
+      ? { profile: release.profile, ...optional('timeConstantS', release.timeConstantS) }
+      : {}),
+    ...optional('heightM', release.heightM),
+    ...optional('temperatureK', release.temperatureK),
+  };
+}
+
+/** Seconds between results: fine enough for a one-minute mean, coarse enough for a long day. */
+export function outputInterval(window: DayWindow): number {
+  return window.endS - window.startS > 4 * 3600 ? 60 : 30;
+}
+
+/**
+ * The input of the air model for one case of a plan.
+ *
+ * @param placed  what is let out, and when
+ * @param fansOff true: no air system runs, only infiltration and openings remain
+ */
+export function airCase(
+  plan: ResolvedPlan,
+  placed: readonly PlacedRelease[],
+  window: DayWindow,
+  fansOff: boolean,
+): AirCase {
+  const within = placed.filter(({ startS }) => startS >= window.startS && startS <= window.endS);
+  const input: AirInput = {
+    ambient: ambientOf(plan),
+    durationS: window.endS - window.startS,
+    outputIntervalS: outputInterval(window),
+    spaces: plan.spaces.map((space) => ({
+      id: space.id,
+      floorAreaM2: space.floorAreaM2,
+      heightM: space.heightM,
+      floorLevelM: space.floorLevelM,
+      volumeM3: space.volumeM3,
+      ...(space.floorRiseM > 0 ? { floorRiseM: space.floorRiseM } : {}),
+      ...(space.steps.length > 0 ? { steps: space.steps } : {}),
+      ...(space.pockets.length > 0 ? { pockets: space.pockets } : {}),
+      ...optional('temperatureK', space.temperatureK),
+      ...optional('initial', space.initial),
+    })),
+    openings: plan.openings.flatMap((opening) => {
+      const timed = timedWithin(opening, window);
+      if (!timed || opening.openFraction === 0) return [];
+      return [
+        {
+          from: opening.from,
+          to: opening.to,
+          kind: opening.kind,
+          widthM: opening.widthM,
+          heightM: opening.heightM,
+          sillLevelM: opening.sillLevelM,
+          openFraction: opening.openFraction,
+          ...optional('dischargeCoefficient', opening.dischargeCoefficient),
+          ...timed,
+        },
+      ];
+    }),
+    airSystems: fansOff ? [] : systemsOf(plan, window),
+    infiltration: plan.infiltration,
+    transfers: plan.transfers,
+    releases: within.map((one) => releaseOf(one, window)),
+    occupants: occupantsOf(plan, window, plan.groups),
+    zones: plan.groups.map((group) => ({
+      id: group.id,
+      space: group.space,
+      heightM: group.heightM,
+      floorLevelM: group.floorLevelM,
+    })),
+  };
+  return { input, window, placed: within };
+}

@@ -1,0 +1,265 @@
+import type {
+  CommonRules,
+  ExposureLimit,
+  Policy,
+  PolicyLevel,
+  PolicyLevelValue,
+  RulePack,
+} from './catalogue-types.js';
+import type { PlanFile } from './plan-file.js';
+
+export type Statistic = PolicyLevelValue['statistic'];
+export type LevelName = 'aim' | 'limit' | 'never';
+
+/** A number that a result is held against, and where it comes from. */
+export interface LevelValue {
+  readonly value: number;
+  readonly statistic: Statistic;
+  readonly source: string;
+  readonly checked: string;
+}
+
+/** The three levels of one quantity for one kind of people. */
+export interface JudgedLevel {
+  /** `oxygenFraction`, `oxygenEnrichment`, a gas id, or `fuel:` and a gas id. */
+  readonly quantity: string;
+  readonly title: string;
+  readonly gas: string | null;
+  readonly failsWhen: 'below' | 'above';
+  /** What one unit of the level is as a mole fraction (flammable: the lower limit; else 1). */
+  readonly scale: number;
+  readonly aim: LevelValue;
+  readonly limit: LevelValue;
+  readonly never: LevelValue;
+}
+
+interface Context {
+  readonly policy: Policy;
+  readonly pack: RulePack;
+  readonly common: CommonRules;
+  readonly houseRules: PlanFile['venue']['site']['houseRules'];
+}
+
+const stricter = (
+  failsWhen: 'below' | 'above',
+  current: LevelValue,
+  other: LevelValue | null,
+): LevelValue => {
+  if (!other) return current;
+  const tighter = failsWhen === 'below' ? other.value > current.value : other.value < current.value;
+  return tighter ? { ...other, statistic: current.statistic } : current;
+};
+
+const ownValue = (row: PolicyLevelValue, value: number): LevelValue => ({
+  value,
+  statistic: row.statistic,
+  source: row.source,
+  checked: row.checked,
+});
+
+const judging = (pack: RulePack, gas: string, period: ExposureLimit['period']) =>
+  pack.exposureLimits
+    .filter((row) => row.role === 'judge' && row.gas === gas && row.period === period)
+    .sort((a, b) => a.value - b.value)[0] ?? null;
+
+const packValue = (row: ExposureLimit | null): LevelValue | null =>
+  row && {
+    value: row.value / 1e6,
+    statistic: 'peak',
+    source: `${row.instrument}, ${row.edition}`,
+    checked: row.checked,
+  };
+
+const periodOf = {
+  aim: 'eightHour',
+  limit: 'fifteenMinute',
+  never: 'ceiling',
+} as const satisfies Record<LevelName, ExposureLimit['period']>;
+
+function levelOf(policy: Policy, quantity: PolicyLevel['quantity']): PolicyLevel | null {
+  return policy.levels.find((level) => level.quantity === quantity) ?? null;
+}
+
+/** Policy row with every stricter judging row of the pack taken in. */
+function tightened(
+  level: PolicyLevel,
+  name: LevelName,
+  candidates: readonly (LevelValue | null)[],
+): LevelValue {
+  const row = level[name];
+  let value = ownValue(row, row.value ?? row.whenMissing ?? 0);
+  if (!row.stricterOfPack) return value;
+  for (const candidate of candidates) value = stricter(level.failsWhen, value, candidate);
+  return value;
+}
+
+function oxygenLevel(context: Context): JudgedLevel | null {
+  const level = levelOf(context.policy, 'oxygenFraction');
+  if (!level) return null;
+  const rows = (name: LevelName) =>
+    context.pack.oxygenThresholds
+      .filter(
+        (row) =>
+          row.role === 'judge' &&
+          row.sense === 'below' &&
+          row.unit === 'percent' &&
+          row.level === name,
+      )
+      .map((row) => ({
+        value: row.value / 100,
+        statistic: 'minimum' as const,
+        source: `${row.instrument}, ${row.edition}`,
+        checked: row.checked,
+      }));
+  return {
+    quantity: 'oxygenFraction',
+    title: level.title,
+    gas: null,
+    failsWhen: 'below',
+    scale: 1,
+    aim: tightened(level, 'aim', []),
+    limit: tightened(level, 'limit', rows('limit')),
+    never: tightened(level, 'never', rows('never')),
+  };
+}
+
+function enrichmentLevel(context: Context): JudgedLevel | null {
+  const level = levelOf(context.policy, 'oxygenEnrichmentFraction');
+  if (!level) return null;
+  const rows = context.pack.oxygenThresholds
+    .filter((row) => row.role === 'judge' && row.sense === 'above' && row.unit === 'percent')
+    .map((row) => ({
+      value: row.value / 100,
+      statistic: 'peak' as const,
+      source: `${row.instrument}, ${row.edition}`,
+      checked: row.checked,
+    }));
+  return {
+    quantity: 'oxygenEnrichment',
+    title: level.title,
+    gas: null,
+    failsWhen: 'above',
+    scale: 1,
+    aim: tightened(level, 'aim', []),
+    limit: tightened(level, 'limit', rows),
+    never: tightened(level, 'never', []),
+  };
+}
+
+function carbonDioxideLevel(context: Context): JudgedLevel | null {
+  const level = levelOf(context.policy, 'carbonDioxideFraction');
+  if (!level) return null;
+  const value = (name: LevelName) =>
+    tightened(level, name, [packValue(judging(context.pack, 'CO2', periodOf[name]))]);
+  return {
+    quantity: 'CO2',
+    title: level.title,
+    gas: 'CO2',
+    failsWhen: 'above',
+    scale: 1,
+    aim: value('aim'),
+    limit: value('limit'),
+    never: value('never'),
+  };
+}
+
+function limitedGasLevel(context: Context, gas: string): JudgedLevel | null {
+  const level = levelOf(context.policy, 'limitedGasFraction');
+  const eightHour = packValue(judging(context.pack, gas, 'eightHour'));
+  if (!level || !eightHour) return null;
+  const times = (name: LevelName): LevelValue => {
+    const row = level[name];
+    const multiple = row.timesEightHour ?? row.whenMissingTimesEightHour ?? 1;
+    const own: LevelValue = {
+      value: eightHour.value * multiple,
+      statistic: row.statistic,
+      source: multiple === 1 ? eightHour.source : `${row.source}; on ${eightHour.source}`,
+      checked: row.checked,
+    };
+    return stricter('above', own, packValue(judging(context.pack, gas, periodOf[name])));
+  };
+  return {
+    quantity: gas,
+    title: `${gas} where people breathe`,
+    gas,
+    failsWhen: 'above',
+    scale: 1,
+    aim: times('aim'),
+    limit: times('limit'),
+    never: times('never'),
+  };
+}
+
+function fuelLevel(context: Context, gas: string): JudgedLevel | null {
+  const level = levelOf(context.policy, 'flammableShareOfLowerLimit');
+  const limits = context.common.flammableLimits.find((row) => row.gas === gas);
+  if (!level || !limits) return null;
+  const rows = (name: LevelName) =>
+    context.pack.flammableThresholds
+      .filter((row) => row.role === 'judge' && row.level === name)
+      .map((row) => ({
+        value: row.value / 100,
+        statistic: 'peak' as const,
+        source: `${row.instrument}, ${row.edition}`,
+        checked: row.checked,
+      }));
+  const limit = tightened(level, 'limit', rows('limit'));
+  return {
+    quantity: `fuel:${gas}`,
+    title: `${gas}, share of its lower flammable limit`,
+    gas,
+    failsWhen: 'above',
+    scale: limits.lowerFraction,
+    // A limit below the aim lowers the aim too: nobody aims past a limit.
+    aim: stricter('above', tightened(level, 'aim', []), limit),
+    limit,
+    never: tightened(level, 'never', rows('never')),
+  };
+}
+
+/** A house rule takes the place of the limit, and of the aim behind it, only where it is stricter. */
+function withHouseRules(level: JudgedLevel, houseRules: Context['houseRules']): JudgedLevel {
+  return (houseRules ?? [])
+    .filter((rule) => rule.quantity === level.quantity)
+    .reduce((current, rule) => {
+      const value: LevelValue = {
+        value: rule.limit,
+        statistic: current.limit.statistic,
+        source: `house rule: ${rule.title}`,
+        checked: 'first-hand',
+      };
+      return {
+        ...current,
+        aim: stricter(current.failsWhen, current.aim, value),
+        limit: stricter(current.failsWhen, current.limit, value),
+      };
+    }, level);
+}
+
+/**
+ * The levels that judge a plan: the policy, tightened by the judging rows of the rule pack and by
+ * house rules, never loosened. For crew the aim is the limit.
+ *
+ * @param gases the gases that the plan can let out
+ */
+export function judgedLevels(
+  context: Context,
+  gases: readonly string[],
+  kind: 'public' | 'crew',
+): readonly JudgedLevel[] {
+  const found: (JudgedLevel | null)[] = [oxygenLevel(context), carbonDioxideLevel(context)];
+  for (const gas of gases) {
+    if (gas === 'O2') found.push(enrichmentLevel(context));
+    if (gas !== 'CO2' && gas !== 'O2') found.push(limitedGasLevel(context, gas));
+    found.push(fuelLevel(context, gas));
+  }
+  return found
+    .filter((level): level is JudgedLevel => level !== null)
+    .map((level) => withHouseRules(level, context.houseRules))
+    .map((level) => (kind === 'crew' ? { ...level, aim: { ...level.limit } } : level));
+}
+
+/** Whether a value is on the wrong side of a level. */
+export function fails(level: JudgedLevel, name: LevelName, value: number): boolean {
+  return level.failsWhen === 'below' ? value < level[name].value : value > level[name].value;
+}

@@ -1,0 +1,215 @@
+import { highestRollingMean } from '../science/exposure/rolling-mean.js';
+import type { AirResult, AirSeries, HeightAir } from '../science/room-air/air-result.js';
+import type { AirCase } from './air-case.js';
+import type { Answer, CaseName } from './assessment.js';
+import { fails, type JudgedLevel, type LevelName, type Statistic } from './levels.js';
+import type { ResolvedGroup } from './resolved-plan.js';
+
+/** One answer to one quantity in one zone: its worst value, and which levels it fails. */
+export interface AnswerOutcome {
+  readonly value: number;
+  /** Seconds after midnight. */
+  readonly atS: number;
+  readonly statistics: Readonly<Partial<Record<Statistic, number>>>;
+  readonly fails: Readonly<Record<LevelName, boolean>>;
+  /** Seconds after midnight at which the level is first passed by its momentary value. */
+  readonly firstPast: Readonly<Partial<Record<LevelName, number>>>;
+  readonly series: readonly number[];
+}
+
+export interface ZoneOutcome {
+  readonly zone: string;
+  readonly group: ResolvedGroup;
+  readonly heightM: number;
+  /** True for 0.2 m above the floor: fallen, picking something up. */
+  readonly floorCheck: boolean;
+  readonly caseName: CaseName;
+  readonly level: JudgedLevel;
+  readonly answers: Readonly<Partial<Record<Answer, AnswerOutcome>>>;
+  readonly timesS: readonly number[];
+  /** Lowest wet partial pressure of oxygen in the mixed and bound answers [Pa]. */
+  readonly oxygenPressurePa: Readonly<Partial<Record<Answer, number>>>;
+}
+
+const windowOf = {
+  minimum: 0,
+  peak: 0,
+  mean1Min: 60,
+  mean15Min: 900,
+  meanShow: 3600,
+} as const satisfies Record<Statistic, number>;
+
+interface Track {
+  readonly series: readonly number[];
+  /** The extreme between output times too, where the air model reports one. */
+  readonly extreme: { readonly value: number; readonly atS: number } | null;
+}
+
+function seriesOf(air: AirSeries, level: JudgedLevel): readonly number[] | null {
+  if (level.gas === null) return air.oxygenFraction;
+  const fraction = air.gasFraction[level.gas];
+  if (!fraction) return null;
+  return level.scale === 1 ? fraction : fraction.map((value) => value / level.scale);
+}
+
+function statisticOf(
+  statistic: Statistic,
+  timesS: readonly number[],
+  values: readonly number[],
+): { value: number; atS: number } {
+  if (windowOf[statistic] > 0) return highestRollingMean(timesS, values, windowOf[statistic]);
+  let best = { value: values[0] ?? 0, atS: timesS[0] ?? 0 };
+  values.forEach((value, i) => {
+    const better = statistic === 'minimum' ? value < best.value : value > best.value;
+    if (better) best = { value, atS: timesS[i] ?? 0 };
+  });
+  return best;
+}
+
+function extremeOf(height: HeightAir, answer: 'mixed' | 'bound' | 'layered', level: JudgedLevel) {
+  if (level.failsWhen === 'below') {
+    const lowest = height.minimum[answer];
+    return lowest ? { value: lowest.oxygenFraction, atS: lowest.atS } : null;
+  }
+  const gas = level.gas ?? 'O2';
+  const highest = height.maximum[answer]?.[gas];
+  return highest ? { value: highest.value / level.scale, atS: highest.atS } : null;
+}
+
+function answerOutcome(
+  timesS: readonly number[],
+  { series: values, extreme }: Track,
+  level: JudgedLevel,
+  originS: number,
+): AnswerOutcome {
+  const names: readonly LevelName[] = ['aim', 'limit', 'never'];
+  const statistics: Partial<Record<Statistic, number>> = {};
+  const failed = { aim: false, limit: false, never: false };
+  const firstPast: Partial<Record<LevelName, number>> = {};
+  for (const name of names) {
+    const { statistic } = level[name];
+    const sampled = statisticOf(statistic, timesS, values).value;
+    const momentary = windowOf[statistic] === 0 ? extreme?.value : undefined;
+    const value = momentary === undefined ? sampled : worseValue(sampled, momentary, level);
+    statistics[statistic] = value;
+    failed[name] = fails(level, name, value);
+    const at = values.findIndex((sample) => fails(level, name, sample));
+    // Somewhere between this sample and the one before: the earlier one is the cautious reading.
+    const time = timesS[Math.max(0, at - 1)];
+    if (at >= 0 && time !== undefined) firstPast[name] = time + originS;
+  }
+  const sampled = statisticOf(level.failsWhen === 'below' ? 'minimum' : 'peak', timesS, values);
+  const between = extreme ?? sampled;
+  const worst =
+    worseValue(between.value, sampled.value, level) === between.value ? between : sampled;
+  return {
+    value: worst.value,
+    atS: worst.atS + originS,
+    statistics,
+    fails: failed,
+    firstPast,
+    series: values,
+  };
+}
+
+const worseValue = (a: number, b: number, level: JudgedLevel): number =>
+  level.failsWhen === 'below' ? Math.min(a, b) : Math.max(a, b);
+
+function worseTrack(a: Track, b: Track, level: JudgedLevel): Track {
+  const extremes = [a.extreme, b.extreme].filter((one) => one !== null);
+  const [first, second] = extremes;
+  const extreme =
+    first && second
+      ? worseValue(first.value, second.value, level) === first.value
+        ? first
+        : second
+      : (first ?? null);
+  return {
+    series: a.series.map((value, i) => worseValue(value, b.series[i] ?? value, level)),
+    extreme,
+  };
+}
+
+/** The answers at one height, by name; the layered answer L is the worse of M and the layered P95. */
+function answersAt(
+  height: HeightAir,
+  straight: HeightAir,
+  level: JudgedLevel,
+): Partial<Record<Answer, Track>> {
+  const found: Partial<Record<Answer, Track>> = {};
+  const track = (series: readonly number[] | null, extreme: Track['extreme']): Track | null =>
+    series ? { series, extreme } : null;
+  const mixed = track(seriesOf(straight.mixed, level), extremeOf(straight, 'mixed', level));
+  if (!mixed) return found;
+  found.mixed = mixed;
+  const bound = track(seriesOf(height.bound, level), extremeOf(height, 'bound', level));
+  if (bound) found.bound = worseTrack(bound, mixed, level);
+  const { layered } = height;
+  if (layered) {
+    // Without samples the single layered run stands for both the median and the upper end.
+    const end = level.failsWhen === 'below' ? layered.p05 : layered.p95;
+    const upper = track(
+      seriesOf(end ?? layered, level),
+      end ? null : extremeOf(height, 'layered', level),
+    );
+    const median = track(seriesOf(layered.p50 ?? layered, level), null);
+    if (upper) found.layered = worseTrack(upper, mixed, level);
+    if (median) found.layeredP50 = median;
+  }
+  return found;
+}
+
+/**
+ * What every zone breathes in one case, quantity by quantity, at the declared height and at 0.2 m.
+ *
+ * @param result   the exact run: bound and layered are read from it
+ * @param straight the same input by straight displacement: the mixed answer is read from it
+ */
+export function zoneOutcomes(
+  air: AirCase,
+  result: AirResult,
+  straight: AirResult,
+  caseName: CaseName,
+  groups: readonly ResolvedGroup[],
+  levelsOf: (group: ResolvedGroup) => readonly JudgedLevel[],
+): readonly ZoneOutcome[] {
+  const originS = air.window.startS;
+  return groups.flatMap((group) => {
+    const exact = result.zones[group.id];
+    const plain = straight.zones[group.id];
+    if (!exact || !plain) return [];
+    const heights = [
+      { height: exact, straightHeight: plain, floorCheck: false },
+      { height: exact.at02M, straightHeight: plain.at02M, floorCheck: true },
+    ];
+    return heights.flatMap(({ height, straightHeight, floorCheck }) =>
+      levelsOf(group).flatMap((level): ZoneOutcome[] => {
+        const series = answersAt(height, straightHeight, level);
+        if (!series.mixed) return [];
+        const answers: Partial<Record<Answer, AnswerOutcome>> = {};
+        for (const [answer, one] of Object.entries(series) as [Answer, Track][]) {
+          answers[answer] = answerOutcome(result.timesS, one, level, originS);
+        }
+        return [
+          {
+            zone: group.id,
+            group,
+            heightM: height.heightM,
+            floorCheck,
+            caseName,
+            level,
+            answers,
+            timesS: result.timesS.map((t) => t + originS),
+            oxygenPressurePa:
+              level.quantity === 'oxygenFraction'
+                ? {
+                    mixed: Math.min(...straightHeight.mixed.oxygenPartialPressurePa),
+                    bound: Math.min(...height.bound.oxygenPartialPressurePa),
+                  }
+                : {},
+          },
+        ];
+      }),
+    );
+  });
+}
