@@ -1,19 +1,9 @@
-import { readdirSync } from 'node:fs';
-import { join } from 'node:path';
 import { cautionsFileSchema, type Caution } from '../assessment/catalogue-types.js';
-import { checked, readDataFile, refuseFaults } from './data-file.js';
-import { repeatedIdFaults, whenFaults } from './references.js';
-
-/** Data files of a folder in the order of their names. */
-export function dataFilesIn(folder: string): readonly string[] {
-  return readdirSync(folder)
-    .filter((name) => /\.(ya?ml|json)$/.test(name))
-    .sort()
-    .map((name) => join(folder, name));
-}
+import { checked, dataFilesIn, readDataFile, refuseFaults } from './data-file.js';
+import { repeatedIdFaults, whenFaults, type KnownNames } from './references.js';
 
 /** The cautions of every file in `cautions/`; an id may be used once only. */
-export function cautionsIn(folder: string, gases: ReadonlySet<string>): readonly Caution[] {
+export function cautionsIn(folder: string, names: KnownNames): readonly Caution[] {
   const all: Caution[] = [];
   for (const path of dataFilesIn(folder)) {
     const file = readDataFile(path);
@@ -21,7 +11,7 @@ export function cautionsIn(folder: string, gases: ReadonlySet<string>): readonly
     const known = new Set(all.map(({ id }) => id));
     refuseFaults(file, 'list of cautions', [
       ...repeatedIdFaults(cautions, '/cautions'),
-      ...whenFaults(cautions, '/cautions', gases),
+      ...whenFaults(cautions, '/cautions', names),
       ...cautions.flatMap(({ id }, i) =>
         known.has(id)
           ? [

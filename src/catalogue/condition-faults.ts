@@ -1,4 +1,9 @@
-import { factKinds, type Condition, type FactKind } from '../assessment/catalogue-types.js';
+import {
+  factKinds,
+  type Condition,
+  type Fact,
+  type FactKind,
+} from '../assessment/catalogue-types.js';
 import type { Fault } from './data-file.js';
 
 const forms = ['always', 'fact', 'all', 'any', 'not'] as const;
@@ -44,16 +49,21 @@ export function conditionFaults(condition: Condition, path: string): readonly Fa
   ];
 }
 
-/** Gases a condition asks about, with the place where each is named. */
-export function gasesAsked(condition: Condition, path: string): readonly [string, string][] {
+/** What a condition names under some facts, with the place where each is named. */
+export function namesAsked(
+  condition: Condition,
+  facts: readonly Fact[],
+  path: string,
+): readonly [string, string][] {
   const own: [string, string][] =
-    condition.fact === 'gasesReleased' || condition.fact === 'gasesPresent'
-      ? (condition.anyOf ?? []).map((gas, i) => [gas, `${path}/anyOf/${String(i)}`])
+    condition.fact !== undefined && facts.includes(condition.fact)
+      ? (condition.anyOf ?? []).map((name, i) => [name, `${path}/anyOf/${String(i)}`])
       : [];
+  const of = (part: Condition, step: string) => namesAsked(part, facts, `${path}/${step}`);
   return [
     ...own,
-    ...(condition.all ?? []).flatMap((part, i) => gasesAsked(part, `${path}/all/${String(i)}`)),
-    ...(condition.any ?? []).flatMap((part, i) => gasesAsked(part, `${path}/any/${String(i)}`)),
-    ...(condition.not ? gasesAsked(condition.not, `${path}/not`) : []),
+    ...(condition.all ?? []).flatMap((part, i) => of(part, `all/${String(i)}`)),
+    ...(condition.any ?? []).flatMap((part, i) => of(part, `any/${String(i)}`)),
+    ...(condition.not ? of(condition.not, 'not') : []),
   ];
 }

@@ -1,4 +1,4 @@
-import { readFileSync, statSync } from 'node:fs';
+import { readdirSync, readFileSync, statSync } from 'node:fs';
 import { basename, dirname, join } from 'node:path';
 import type { Static, TSchema } from 'typebox';
 import { isNode, LineCounter, parseDocument } from 'yaml';
@@ -130,6 +130,28 @@ function textOf(path: string, name: string): string {
     );
   }
   return readFileSync(path, 'utf8');
+}
+
+/**
+ * Data files of a folder in the order of their names.
+ *
+ * @throws {InvalidInput} when the folder cannot be opened
+ */
+export function dataFilesIn(folder: string): readonly string[] {
+  let names: string[];
+  try {
+    names = readdirSync(folder);
+  } catch {
+    throw new InvalidInput(
+      `The data folder ${basename(folder)} is missing or cannot be opened.`,
+      'Put the folder templates back beside the program.',
+      [{ path: '', problem: `${basename(folder)} cannot be opened` }],
+    );
+  }
+  return names
+    .filter((name) => /\.(ya?ml|json)$/.test(name))
+    .sort()
+    .map((name) => join(folder, name));
 }
 
 /**

@@ -1,15 +1,15 @@
+import { basename } from 'node:path';
 import {
   demonstrationSchema,
   type Demonstration,
   type Spread,
 } from '../assessment/catalogue-types.js';
-import { checked, readDataFile, refuseFaults, type DataFile, type Fault } from './data-file.js';
+import { checked, readDataFile, refuseFaults, type Fault } from './data-file.js';
 import { slotFaults } from './policy.js';
-import { unknownFaults } from './references.js';
+import { unknownFaults, type KnownNames } from './references.js';
 
 /** Ids a demonstration may refer to. */
-export interface DemonstrationKnowledge {
-  readonly gases: ReadonlySet<string>;
+export interface DemonstrationKnowledge extends KnownNames {
   readonly controls: ReadonlySet<string>;
   readonly cautions: ReadonlySet<string>;
   readonly slots: ReadonlySet<string>;
@@ -136,6 +136,14 @@ function demonstrationFaults(
       ),
       ...slotFaults(control.text, `/controls/${String(i)}/text`, known.slots),
     ]),
+    ...demonstration.substitutes.flatMap((substitute, i) =>
+      unknownFaults(
+        substitute.demonstration,
+        new Set([...known.demonstrations].filter((id) => id !== demonstration.id)),
+        'demonstration',
+        `/substitutes/${String(i)}/demonstration`,
+      ),
+    ),
     ...demonstration.cautions.flatMap((caution, i) =>
       unknownFaults(caution, known.cautions, 'caution', `/cautions/${String(i)}`),
     ),
@@ -150,19 +158,8 @@ function demonstrationFaults(
   ];
 }
 
-/** One demonstration from its file, and the file for complaints that need its neighbours. */
-function demonstrationOf(
-  path: string,
-  known: DemonstrationKnowledge,
-): { readonly file: DataFile; readonly demonstration: Demonstration } {
-  const file = readDataFile(path);
-  const demonstration = checked(file, demonstrationSchema, 'demonstration');
-  refuseFaults(file, 'demonstration', demonstrationFaults(demonstration, known));
-  return { file, demonstration };
-}
-
 /**
- * All demonstrations of the given files; each substitute must be one of them.
+ * The demonstrations of the given files; each file is named by the id it holds.
  *
  * @throws {InvalidInput} naming file, line and place of everything that cannot be used
  */
@@ -170,39 +167,22 @@ export function demonstrationsOf(
   paths: readonly string[],
   known: DemonstrationKnowledge,
 ): readonly Demonstration[] {
-  const read = paths.map((path) => demonstrationOf(path, known));
-  const ids = new Set(read.map(({ demonstration }) => demonstration.id));
-  const seen = new Set<string>();
-  for (const { file, demonstration } of read) {
+  return paths.map((path) => {
+    const file = readDataFile(path);
+    const demonstration = checked(file, demonstrationSchema, 'demonstration');
+    const name = basename(path).replace(/\.[a-z]+$/, '');
     refuseFaults(file, 'demonstration', [
-      ...(seen.has(demonstration.id)
-        ? [
+      ...(demonstration.id === name
+        ? []
+        : [
             {
               path: '/id',
-              problem: `the id "${demonstration.id}" stands in another file`,
-              hint: 'Give each demonstration its own id.',
+              problem: `the id "${demonstration.id}" is not the name of the file`,
+              hint: 'Give file and demonstration the same name; others refer to it.',
             },
-          ]
-        : []),
-      ...demonstration.substitutes.flatMap((substitute, i) => [
-        ...unknownFaults(
-          substitute.demonstration,
-          ids,
-          'demonstration',
-          `/substitutes/${String(i)}/demonstration`,
-        ),
-        ...(substitute.demonstration === demonstration.id
-          ? [
-              {
-                path: `/substitutes/${String(i)}/demonstration`,
-                problem: 'a demonstration cannot stand in for itself',
-                hint: 'Name another one, or only describe the substitute.',
-              },
-            ]
-          : []),
-      ]),
+          ]),
+      ...demonstrationFaults(demonstration, known),
     ]);
-    seen.add(demonstration.id);
-  }
-  return read.map(({ demonstration }) => demonstration);
+    return demonstration;
+  });
 }

@@ -1,4 +1,3 @@
-import { join } from 'node:path';
 import {
   checklistsFileSchema,
   controlLevels,
@@ -12,7 +11,7 @@ import {
   type ReviewQuestion,
 } from '../assessment/catalogue-types.js';
 import { checked, readDataFile, refuseFaults, type Fault } from './data-file.js';
-import { repeatedIdFaults, unknownFaults, whenFaults } from './references.js';
+import { repeatedIdFaults, unknownFaults, whenFaults, type KnownNames } from './references.js';
 
 /** A level must become worse from aim to limit to never. */
 function levelFaults(policy: Policy): readonly Fault[] {
@@ -52,7 +51,7 @@ function missingDefaultFaults(policy: Policy): readonly Fault[] {
 }
 
 /** The levels and defaults of `policy/default.yaml`. */
-export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
+export function policyOf(path: string, names: KnownNames): Policy {
   const file = readDataFile(path);
   const policy = checked(file, policySchema, 'policy');
   refuseFaults(file, 'policy', [
@@ -64,7 +63,7 @@ export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
     ...repeatedIdFaults(policy.roomTypes, '/roomTypes'),
     ...repeatedIdFaults(policy.breathingHeights, '/breathingHeights'),
     ...repeatedIdFaults(policy.carbonDioxidePerPerson, '/carbonDioxidePerPerson'),
-    ...whenFaults(policy.meters, '/meters', gases),
+    ...whenFaults(policy.meters, '/meters', names),
     ...[
       ...policy.freshAir.map((row, i) => [row.gas, `/freshAir/${String(i)}/gas`] as const),
       ...policy.meters.map((row, i) => [row.gas, `/meters/${String(i)}/gas`] as const),
@@ -73,7 +72,7 @@ export function policyOf(path: string, gases: ReadonlySet<string>): Policy {
         row.gases.map((gas, j) => [gas, `/containers/${String(i)}/gases/${String(j)}`] as const),
       ),
       ...policy.costBands.map((row, i) => [row.gas, `/costBands/${String(i)}/gas`] as const),
-    ].flatMap(([gas, place]) => unknownFaults(gas, gases, 'gas', place)),
+    ].flatMap(([gas, place]) => unknownFaults(gas, names.gases, 'gas', place)),
   ]);
   return policy;
 }
@@ -95,7 +94,7 @@ export function slotFaults(
 }
 
 /** The lines of `policy/checklists.yaml` and the slots they fill. */
-export function checklistsOf(path: string, gases: ReadonlySet<string>): Checklists {
+export function checklistsOf(path: string, names: KnownNames): Checklists {
   const file = readDataFile(path);
   const checklists = checked(file, checklistsFileSchema, 'checklist');
   const slots = new Set(checklists.slots.map(({ id }) => id));
@@ -105,7 +104,7 @@ export function checklistsOf(path: string, gases: ReadonlySet<string>): Checklis
     ...checklists.lines.flatMap(({ text }, i) =>
       slotFaults(text, `/lines/${String(i)}/text`, slots),
     ),
-    ...whenFaults(checklists.lines, '/lines', gases),
+    ...whenFaults(checklists.lines, '/lines', names),
   ]);
   return checklists;
 }
@@ -156,15 +155,4 @@ export function questionsOf(path: string): readonly ReviewQuestion[] {
   const { questions } = checked(file, questionsFileSchema, 'list of review questions');
   refuseFaults(file, 'list of review questions', repeatedIdFaults(questions, '/questions'));
   return questions;
-}
-
-/** Paths of the policy room below a templates folder. */
-export function policyPaths(templatesDir: string) {
-  const at = (name: string) => join(templatesDir, 'policy', name);
-  return {
-    policy: at('default.yaml'),
-    controls: at('controls.yaml'),
-    checklists: at('checklists.yaml'),
-    questions: at('review-questions.yaml'),
-  };
 }

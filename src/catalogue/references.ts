@@ -1,6 +1,12 @@
 import type { Condition } from '../assessment/catalogue-types.js';
-import { conditionFaults, gasesAsked } from './condition-faults.js';
+import { conditionFaults, namesAsked } from './condition-faults.js';
 import type { Fault } from './data-file.js';
+
+/** Names that conditions and rows anywhere may use. */
+export interface KnownNames {
+  readonly gases: ReadonlySet<string>;
+  readonly demonstrations: ReadonlySet<string>;
+}
 
 /** A reference to something that must exist: an empty list when it does. */
 export function unknownFaults(
@@ -44,13 +50,18 @@ export function repeatedIdFaults(
 export function whenFaults(
   rows: readonly { readonly when: Condition }[],
   path: string,
-  gases: ReadonlySet<string>,
+  names: KnownNames,
 ): readonly Fault[] {
   return rows.flatMap(({ when }, i) => {
     const place = `${path}/${String(i)}/when`;
     return [
       ...conditionFaults(when, place),
-      ...gasesAsked(when, place).flatMap(([gas, at]) => unknownFaults(gas, gases, 'gas', at)),
+      ...namesAsked(when, ['gasesReleased', 'gasesPresent'], place).flatMap(([gas, at]) =>
+        unknownFaults(gas, names.gases, 'gas', at),
+      ),
+      ...namesAsked(when, ['demonstrations'], place).flatMap(([id, at]) =>
+        unknownFaults(id, names.demonstrations, 'demonstration', at),
+      ),
     ];
   });
 }

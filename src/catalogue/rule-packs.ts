@@ -7,11 +7,10 @@ import {
 } from '../assessment/catalogue-types.js';
 import { checked, readDataFile, refuseFaults, type Fault } from './data-file.js';
 import { exposureFaults, flammableFaults, oxygenFaults } from './judging-rows.js';
-import { repeatedIdFaults, unknownFaults, whenFaults } from './references.js';
+import { repeatedIdFaults, unknownFaults, whenFaults, type KnownNames } from './references.js';
 
 /** What the loader must know to check a pack. */
-export interface PackKnowledge {
-  readonly gases: ReadonlySet<string>;
+export interface PackKnowledge extends KnownNames {
   readonly policy: Policy;
 }
 
@@ -52,7 +51,8 @@ function readFaults(pack: RulePack): readonly Fault[] {
  *
  * @throws {InvalidInput} naming file, line and place of everything that cannot be used
  */
-export function rulePackOf(path: string, { gases, policy }: PackKnowledge): RulePack {
+export function rulePackOf(path: string, known: PackKnowledge): RulePack {
+  const { gases, policy } = known;
   const file = readDataFile(path);
   const pack = checked(file, rulePackSchema, 'rule pack');
   const gasRows = [
@@ -70,7 +70,7 @@ export function rulePackOf(path: string, { gases, policy }: PackKnowledge): Rule
     ...repeatedIdFaults(pack.exposureLimits, '/exposureLimits'),
     ...repeatedIdFaults(pack.oxygenThresholds, '/oxygenThresholds'),
     ...repeatedIdFaults(pack.flammableThresholds, '/flammableThresholds'),
-    ...whenFaults(pack.rules, '/rules', gases),
+    ...whenFaults(pack.rules, '/rules', known),
     ...gasRows.flatMap(([gas, place]) => unknownFaults(gas, gases, 'gas', place)),
     ...pack.exposureLimits.flatMap((row, i) =>
       exposureFaults(row, pack, policy, `/exposureLimits/${String(i)}`),
@@ -99,17 +99,17 @@ export function rulePackOf(path: string, { gases, policy }: PackKnowledge): Rule
 }
 
 /** What all packs share, from `rules/common.yaml`. */
-export function commonRulesOf(path: string, gases: ReadonlySet<string>): CommonRules {
+export function commonRulesOf(path: string, names: KnownNames): CommonRules {
   const file = readDataFile(path);
   const common = checked(file, commonRulesSchema, 'list of shared rules');
   refuseFaults(file, 'list of shared rules', [
     ...repeatedIdFaults(common.signs, '/signs'),
-    ...whenFaults(common.signs, '/signs', gases),
+    ...whenFaults(common.signs, '/signs', names),
     ...common.unNumbers.flatMap((row, i) =>
-      unknownFaults(row.gas, gases, 'gas', `/unNumbers/${String(i)}/gas`),
+      unknownFaults(row.gas, names.gases, 'gas', `/unNumbers/${String(i)}/gas`),
     ),
     ...common.flammableLimits.flatMap((row, i) =>
-      unknownFaults(row.gas, gases, 'gas', `/flammableLimits/${String(i)}/gas`),
+      unknownFaults(row.gas, names.gases, 'gas', `/flammableLimits/${String(i)}/gas`),
     ),
   ]);
   return common;

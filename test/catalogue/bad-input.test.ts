@@ -21,8 +21,9 @@ const catalogue = loadCatalogue();
 const gases = new Set(['He', 'N2', 'Ar', 'CO2', 'SF6', 'N2O', 'H2', 'CH4', 'C3H8', 'O2', 'Ne']);
 for (const gas of ['Kr', 'Xe', 'R134a', 'R152a', 'R1234yf', 'R1234zeE']) gases.add(gas);
 const ids = (rows: readonly { readonly id: string }[]) => new Set(rows.map(({ id }) => id));
+const names = { gases, demonstrations: ids(catalogue.demonstrations) };
 const known = {
-  gases,
+  ...names,
   controls: ids(catalogue.controls),
   cautions: ids(catalogue.cautions),
   slots: ids(catalogue.checklists.slots),
@@ -59,7 +60,7 @@ function expectPlace(refusal: InvalidInput, file: string, line: number, problem:
   expect(refusal.details[0]?.problem).toContain(`${file} line ${String(line)}`);
 }
 
-const pack = (path: string) => () => rulePackOf(path, { gases, policy: catalogue.policy });
+const pack = (path: string) => () => rulePackOf(path, { ...names, policy: catalogue.policy });
 const demonstration = (path: string) => () => demonstrationsOf([path], known);
 
 describe('a rule pack is refused with file, line and hint', () => {
@@ -213,6 +214,16 @@ describe('a demonstration is refused with file, line and hint', () => {
     );
   });
 
+  test('when its id is not the name of its file', () => {
+    const { path, line } = spoiled('demonstrations/bench-fog.yaml', 'id: bench-fog', 'id: fog');
+    expectPlace(
+      refusalOf(demonstration(path)),
+      'demonstrations/bench-fog.yaml',
+      line,
+      /not the name of the file/,
+    );
+  });
+
   test('when it has no worst credible release', () => {
     const { path } = spoiled(
       'demonstrations/bench-fog.yaml',
@@ -243,14 +254,14 @@ describe('a demonstration is refused with file, line and hint', () => {
 describe('a policy file is refused with file, line and hint', () => {
   test('when a default has no source', () => {
     const { path } = spoiled('policy/default.yaml', '    source: common practice, no source\n', '');
-    expect(refusalOf(() => policyOf(path, gases)).message).toMatch(
+    expect(refusalOf(() => policyOf(path, names)).message).toMatch(
       /policy\/default\.yaml line \d+: .*source is missing/,
     );
   });
 
   test('when a default is left out', () => {
     const { path } = spoiled('policy/default.yaml', 'name: balloonM3', 'name: balloonOverfilledM3');
-    const refusal = refusalOf(() => policyOf(path, gases));
+    const refusal = refusalOf(() => policyOf(path, names));
     expect(refusal.details.map(({ problem }) => problem).join('\n')).toMatch(
       /balloonM3 is missing/,
     );
@@ -258,7 +269,7 @@ describe('a policy file is refused with file, line and hint', () => {
 
   test('when never is looser than the limit', () => {
     const { path } = spoiled('policy/default.yaml', 'value: 0.180', 'value: 0.199');
-    expect(refusalOf(() => policyOf(path, gases)).message).toMatch(/aim, limit and never/);
+    expect(refusalOf(() => policyOf(path, names)).message).toMatch(/aim, limit and never/);
   });
 
   test('when a control is out of hierarchy order or a condition claims credit', () => {
@@ -279,7 +290,7 @@ describe('a policy file is refused with file, line and hint', () => {
   test('when a checklist line fills a slot nobody defined', () => {
     const { path, line } = spoiled('policy/checklists.yaml', '{validUntil}.', '{validTill}.');
     expectPlace(
-      refusalOf(() => checklistsOf(path, gases)),
+      refusalOf(() => checklistsOf(path, names)),
       'policy/checklists.yaml',
       line,
       /unknown slot "validTill"/,
@@ -351,11 +362,17 @@ describe('a broken data file is refused with file, line and hint', () => {
     );
   });
 
+  test('when a whole folder is missing', () => {
+    const refusal = refusalOf(() => loadCatalogue(join(folder, 'nowhere')));
+    expect(refusal.message).toContain('gases is missing');
+    expect(refusal.hint).toContain('templates');
+  });
+
   test('when the same caution stands in two files', () => {
     rmSync(join(folder, 'cautions'), { recursive: true, force: true });
     cpSync(join(templates, 'cautions'), join(folder, 'cautions'), { recursive: true });
     cpSync(join(templates, 'cautions', 'gases.yaml'), join(folder, 'cautions', 'more.yaml'));
-    expect(refusalOf(() => cautionsIn(join(folder, 'cautions'), gases)).message).toMatch(
+    expect(refusalOf(() => cautionsIn(join(folder, 'cautions'), names)).message).toMatch(
       /cautions\/more\.yaml line 3: .*stands in another file/,
     );
   });

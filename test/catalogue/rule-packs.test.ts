@@ -168,9 +168,9 @@ describe('carriage against published rules', () => {
 
   test('US materials of trade admit 95, 60 and 40 kg, not 105 kg nor five of 45 kg (49 CFR 173.6)', () => {
     const fits = check('materials-of-trade-ok');
-    expect(
-      withinMass('us', 'us-materials-of-trade', numbers(fits.inputs.cylinderGross_kg)),
-    ).toBe(fits.expected.within);
+    expect(withinMass('us', 'us-materials-of-trade', numbers(fits.inputs.cylinderGross_kg))).toBe(
+      fits.expected.within,
+    );
     const { inputs, expected } = check('materials-of-trade-not-ok');
     expect(
       (inputs.loads_kg as number[][]).map((load) =>
@@ -189,9 +189,7 @@ describe('carriage against published rules', () => {
   test('an airline passenger may carry 2.4 kg of dry ice but not 2.6 kg (record dry-ice-passenger-limit)', () => {
     const { inputs, expected } = check('dry-ice-passenger-limit');
     const { maxTotalKg = 0 } = row(pack('us').carriageLimits, 'us-passenger-dry-ice');
-    expect(numbers(inputs.dryIce_kg).map((mass) => mass <= maxTotalKg)).toEqual(
-      expected.within,
-    );
+    expect(numbers(inputs.dryIce_kg).map((mass) => mass <= maxTotalKg)).toEqual(expected.within);
   });
 });
 
@@ -241,9 +239,9 @@ describe('policy against published values', () => {
 
   test('10 kg of dry ice gives 5.4 m3 within 2 % (record dry-ice-ten-kilogram)', () => {
     const gas = 10 * value('dryIceGasM3PerKg');
-    expect(
-      Math.abs(gas / Number(check('dry-ice-ten-kilogram').expected.gas_m3) - 1),
-    ).toBeLessThan(0.02);
+    expect(Math.abs(gas / Number(check('dry-ice-ten-kilogram').expected.gas_m3) - 1)).toBeLessThan(
+      0.02,
+    );
   });
 
   test('25 L of liquid nitrogen gives 17.4 m3 within 1 % (record cryogen-gas-volume-ln2)', () => {
