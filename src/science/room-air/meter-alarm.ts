@@ -1,0 +1,79 @@
+/** What the display of a gas meter does with the true value. */
+export interface MeterTraits {
+  /** Time to 90 % of a step [s]. */
+  readonly responseTimeS: number;
+  readonly alarmLevel: number;
+  readonly side: 'below' | 'above';
+}
+
+/**
+ * Time at which a meter gives its alarm [s], or undefined when it does not within the series.
+ *
+ *   dr/dt = (x - r)/tau, tau = t90/ln 10
+ *
+ * @param timesS rising times [s]
+ * @param values true reading at the place of the meter [-]
+ * @param meter  response time [s], alarm level [-] and side
+ * @returns time of the alarm [s]
+ * Source: own-room-air (first-order lag from the stated t90). Assumes: straight between points, the
+ * meter starts settled. Accuracy: that of t90.
+ */
+export function alarmTime(
+  timesS: readonly number[],
+  values: readonly number[],
+  meter: MeterTraits,
+): number | undefined {
+  const tau = Math.max(meter.responseTimeS, 1e-3) / Math.LN10;
+  const sign = meter.side === 'below' ? -1 : 1;
+  let shown = values[0] ?? 0;
+  const past = (value: number): boolean => sign * (value - meter.alarmLevel) > 0;
+  if (past(shown)) return timesS[0];
+  for (let i = 1; i < timesS.length; i++) {
+    const start = timesS[i - 1] ?? 0;
+    const span = (timesS[i] ?? 0) - start;
+    const from = values[i - 1] ?? 0;
+    const slope = ((values[i] ?? 0) - from) / span;
+    const begin = shown;
+    // Exact answer of the lag to a straight line.
+    const display = (s: number): number =>
+      from + slope * (s - tau) + (begin - from + slope * tau) * Math.exp(-s / tau);
+    shown = display(span);
+    if (past(shown)) {
+      let low = 0;
+      let high = span;
+      while (high - low > 1e-3) {
+        const middle = 0.5 * (low + high);
+        if (past(display(middle))) high = middle;
+        else low = middle;
+      }
+      return start + high;
+    }
+  }
+  return undefined;
+}
+
+/**
+ * Number at which to act on a reading [-].
+ *
+ *   limit - (accuracy + drift + cross effect + t90 x expected rate of change), towards safety
+ *
+ * @param limit    limit of the decision [-]
+ * @param side     below for oxygen (act above the limit), above for a gas (act below it)
+ * @param doubts   accuracy, drift and cross effect of the meter [-]
+ * @param responseTimeS t90 [s]
+ * @param ratePerS expected rate of change [1/s], its size
+ * @returns reading at which to act [-]
+ * Source: engineering-judgement (rule on meters). Assumes: doubts add up. Accuracy: judgement.
+ * @example actionReading(0.195, 'below', [0.003, 0.002], 20, 1e-5) // 0.2002
+ */
+export function actionReading(
+  limit: number,
+  side: 'below' | 'above',
+  doubts: readonly number[],
+  responseTimeS: number,
+  ratePerS: number,
+): number {
+  const margin =
+    doubts.reduce((sum, one) => sum + Math.abs(one), 0) + responseTimeS * Math.abs(ratePerS);
+  return side === 'below' ? limit + margin : limit - margin;
+}
