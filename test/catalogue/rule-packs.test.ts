@@ -213,6 +213,14 @@ describe('roles of limit rows', () => {
     expect(judgingOxygen.filter(({ unit }) => unit !== 'percent')).toEqual([]);
   });
 
+  test('18.0 kPa of oxygen is 17.8 % at sea level, not the 18 % one source prints', () => {
+    const { value, unit, meaning } = row(pack('international').oxygenThresholds, 'int-o2-pp-lab');
+    expect(unit).toBe('kPa');
+    // 1 atm = 101.325 kPa; one digit as printed.
+    expect(((value / 101.325) * 100).toFixed(1)).toBe('17.8');
+    expect(meaning).toContain('17.8 %');
+  });
+
   test('the German "any drop" row and the ship-entry row of 21 % are notes, not judges', () => {
     expect(row(pack('eu').oxygenThresholds, 'de-o2-any-drop').role).toBe('note');
     expect(row(pack('eu').oxygenThresholds, 'de-o2-excess').role).toBe('show');
