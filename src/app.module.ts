@@ -5,6 +5,8 @@ import { FastifyAdapter, type NestFastifyApplication } from '@nestjs/platform-fa
 import { CatalogueModule } from './catalogue/catalogue.module.js';
 import { Settings } from './config.js';
 import { PeopleModule } from './people/people.module.js';
+import { PlansModule } from './plans/plans.module.js';
+import { SheetsModule } from './sheets/sheets.module.js';
 import type { Database } from './storage/database.js';
 import { StorageModule } from './storage/storage.module.js';
 import { VenuesModule } from './venues/venues.module.js';
@@ -37,6 +39,8 @@ export class AppModule {
         WebModule,
         PeopleModule,
         VenuesModule,
+        PlansModule,
+        SheetsModule,
       ],
     };
   }
@@ -57,10 +61,12 @@ export async function createApp(
       forceCloseConnections: 'idle',
       routerOptions: { maxParamLength: 200 },
     }),
+    // A refused start is told by whoever asked for it, in words; the framework would print a trace.
     // The options are a class by declaration and a plain object by documentation.
     // eslint-disable-next-line @typescript-eslint/no-unsafe-class-instance-assignment
-    { logger, abortOnError: false },
+    { logger: false, abortOnError: false },
   );
+  app.useLogger(logger);
   await installWeb(app, settings);
   return app;
 }

@@ -51,7 +51,7 @@ async function start(): Promise<void> {
   }
 
   const app = await createApp(settings, database);
-  app.enableShutdownHooks(['SIGTERM', 'SIGINT']);
+  app.enableShutdownHooks(['SIGTERM', 'SIGINT'], { useProcessExit: true });
   try {
     await app.listen({ host: settings.host, port: settings.port });
   } catch (error) {
