@@ -83,6 +83,7 @@ export const plannedReleaseSchema = sourced({
   optionalPart: optional(Type.Boolean({ description: 'the act works without it' })),
   insteadOf: optional(id),
 });
+/** One fault each: the rows are alternatives and do not happen together. */
 export const worstReleaseSchema = sourced({
   ...releaseProperties,
   cause: words('what goes wrong', 240),
@@ -93,6 +94,8 @@ export const worstReleaseSchema = sourced({
     'flowTimesTime', // a fitted limiter, times the time nobody looks
   ]),
   container: optional(containerSchema),
+  /** The fault exists only where this planned release is chosen; missing: always. */
+  onlyWith: optional(id),
 });
 export type CataloguePlannedRelease = Static<typeof plannedReleaseSchema>;
 export type CatalogueWorstRelease = Static<typeof worstReleaseSchema>;

@@ -6,7 +6,7 @@ import {
 } from '../assessment/catalogue-types.js';
 import { checked, readDataFile, refuseFaults, type Fault } from './data-file.js';
 import { slotFaults } from './policy.js';
-import { unknownFaults, type KnownNames } from './references.js';
+import { repeatedIdFaults, unknownFaults, type KnownNames } from './references.js';
 
 /** Ids a demonstration may refer to. */
 export interface DemonstrationKnowledge extends KnownNames {
@@ -82,6 +82,7 @@ function demonstrationFaults(
   const noGas = demonstration.noGas ?? false;
   const count = releases.planned.length + releases.worstCredible.length;
   const named = new Set(demonstration.gases);
+  const plannedIds = new Set(releases.planned.map(({ id }) => id));
   const all = [
     ...releases.planned.map((release, i) => [release, `/releases/planned/${String(i)}`] as const),
     ...releases.worstCredible.map(
@@ -115,6 +116,24 @@ function demonstrationFaults(
             hint: 'State what goes out as rehearsed, and what goes out when the container is lost.',
           },
         ]),
+    ...releases.planned.flatMap(({ insteadOf }, i) =>
+      unknownFaults(
+        insteadOf,
+        plannedIds,
+        'planned release',
+        `/releases/planned/${String(i)}/insteadOf`,
+      ),
+    ),
+    ...releases.worstCredible.flatMap(({ onlyWith }, i) =>
+      unknownFaults(
+        onlyWith,
+        plannedIds,
+        'planned release',
+        `/releases/worstCredible/${String(i)}/onlyWith`,
+      ),
+    ),
+    ...repeatedIdFaults(releases.planned, '/releases/planned'),
+    ...repeatedIdFaults(releases.worstCredible, '/releases/worstCredible'),
     ...demonstration.sound.flatMap((sound, i) => [
       ...unknownFaults(sound.gas, known.gases, 'gas', `/sound/${String(i)}/gas`),
       ...compositionFaults(sound.composition, known.gases, `/sound/${String(i)}/composition`),

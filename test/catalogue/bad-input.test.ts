@@ -236,6 +236,20 @@ describe('a demonstration is refused with file, line and hint', () => {
     );
   });
 
+  test('when a fault belongs to a planned release that is not there', () => {
+    const { path, line } = spoiled(
+      'demonstrations/stage-fog.yaml',
+      'onlyWith: liquid-nitrogen-cue',
+      'onlyWith: liquid-argon-cue',
+    );
+    expectPlace(
+      refusalOf(demonstration(path)),
+      'demonstrations/stage-fog.yaml',
+      line,
+      /unknown planned release "liquid-argon-cue"/,
+    );
+  });
+
   test('when low, typical and high are not in order', () => {
     const { path, line } = spoiled(
       'demonstrations/bench-fog.yaml',
