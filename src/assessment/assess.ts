@@ -27,7 +27,7 @@ import type { Evaluation } from './evaluation.js';
 import { freshAirOf, levelFigure, outcomeFigure, plainFigure } from './figures.js';
 import { planFindings } from './findings.js';
 import { holdTimes } from './hold-times.js';
-import { canonicalHash } from './input-hash.js';
+import { atNineDigits, canonicalHash } from './input-hash.js';
 import { knowledge, type Knowledge } from './knowledge.js';
 import { largestAmounts } from './largest-amounts.js';
 import { planFacts } from './plan-facts.js';
@@ -404,7 +404,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
         }))
       : [];
 
-  return {
+  const assessment: Assessment = {
     title: plan.event.title,
     date: plan.event.date ?? null,
     venueTitle: plan.venue.title,
@@ -468,6 +468,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
       engineVersion: data.engineVersion,
     }),
   };
+  return atNineDigits(assessment);
 }
 
 const hitsIn = (hits: readonly Hit[], space: string): readonly Hit[] =>

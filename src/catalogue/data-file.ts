@@ -58,15 +58,24 @@ function broken(name: string, line: number, problem: string, hint: string): Inva
 }
 
 /**
- * A YAML or JSON file as plain values.
- *
- * Anchors and aliases are not followed: a small file must not be able to unfold into a large one.
+ * A YAML or JSON file of templates/ as plain values.
  *
  * @throws {InvalidInput} with file, line and hint when it is missing, too large or broken
  */
 export function readDataFile(path: string): DataFile {
   const name = join(basename(dirname(path)), basename(path));
-  const text = textOf(path, name);
+  return parsedDataText(textOf(path, name), name);
+}
+
+/**
+ * YAML or JSON text as plain values, with the line of every place.
+ *
+ * Anchors and aliases are not followed: a small file must not be able to unfold into a large one.
+ *
+ * @param name what the text is called when something is wrong with it
+ * @throws {InvalidInput} with name, line and hint when it is broken
+ */
+export function parsedDataText(text: string, name: string): DataFile {
   const lines = new LineCounter();
   const document = parseDocument(text, { lineCounter: lines, uniqueKeys: true });
   const [error] = document.errors;
@@ -76,7 +85,7 @@ export function readDataFile(path: string): DataFile {
       name,
       lines.linePos(error.pos[0]).line,
       `the file cannot be read: ${summary.replace(/ at line .*$/, '')}.`,
-      'Check indentation, colons and quotes around that line; the last good version stays in use.',
+      'Check indentation, colons and quotes around that line; nothing was taken from it.',
     );
   }
   let value: unknown;

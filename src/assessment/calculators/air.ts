@@ -126,6 +126,7 @@ const occupants = Type.Object(
     metabolicRateMet: Type.Optional(Type.Number({ minimum: 0.5, maximum: 10 })),
     carbonDioxideM3PerS: Type.Optional(notNegative),
     respiratoryQuotient: Type.Optional(Type.Number({ minimum: 0.6, maximum: 1.3 })),
+    heightM: Type.Optional(notNegative),
     ...timed,
   },
   closed,

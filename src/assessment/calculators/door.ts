@@ -50,6 +50,11 @@ export function doorError(thrown: unknown): DoorError {
   };
 }
 
+/** Exit status of an error object. */
+export function statusOf(failure: DoorError): 1 | 2 | 3 {
+  return exitStatus[failure.error.code];
+}
+
 /**
  * Runs one calculator on a document, or on each of an array of documents in order.
  * Never throws: what goes wrong is an error object in the place of the result.
@@ -67,7 +72,7 @@ export function answer(
     } catch (thrown) {
       const failure = doorError(thrown);
       if (failure.error.code === 'internal') faults.push(thrown);
-      const own = exitStatus[failure.error.code];
+      const own = statusOf(failure);
       if (gravity[own] > gravity[status]) status = own;
       return failure;
     }
