@@ -28,7 +28,7 @@ export interface Bottle {
  * Source: levine-schwinger-1948. Assumes: k a below about 0.3, no wall friction.
  * Accuracy: that of the end corrections.
  * @example columnResonance({ lengthM: 0.5, endCorrectionsM: [0.0091995, 0.0091995] }, 343.871, 1) // 331.666
- * @example columnResonance({ lengthM: 0.25, endCorrectionsM: [0.0091995] }, 135.177, 2) // 391.137
+ * @example columnResonance({ lengthM: 0.25, endCorrectionsM: [0.0091995] }, 135.177, 2) // 391.138
  */
 export function columnResonance(column: Column, c: number, n: number): number {
   const ends = column.endCorrectionsM;

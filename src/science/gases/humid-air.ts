@@ -26,7 +26,7 @@ function exponentSum(coefficients: readonly number[], T: number, first: number):
  * @throws {OutOfRange} outside the range above
  * Source: hardy-1998. Assumes: ITS-90, pure water.
  * Accuracy: 0.006 % at 0 to 45 degC and 0.03 % at -10 degC against IAPWS-95.
- * @example waterSaturationPressure(library, 293.15) // 2339.2
+ * @example waterSaturationPressure(library, 293.15) // 2339.3
  */
 export function waterSaturationPressure(library: GasLibrary, T: number): number {
   inRange(T, roomTemperature, '/temperatureK');
