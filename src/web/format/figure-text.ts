@@ -32,9 +32,11 @@ function fixed(value: number, decimals: number, rounding: Rounding): string {
 function threeDigits(value: number, rounding: Rounding): string {
   if (value === 0) return '0';
   const decimals = Math.min(12, 2 - Math.floor(Math.log10(Math.abs(settled(value)))));
-  if (decimals >= 0) return fixed(value, decimals, rounding);
-  const scale = 10 ** -decimals;
-  return grouped(String(whole(value / scale, rounding) * scale));
+  const steps = whole(decimals < 0 ? value / 10 ** -decimals : value * 10 ** decimals, rounding);
+  // 9.999 rounds to 10.0, which needs one decimal less than 9.99 did.
+  const shown = Math.abs(steps) >= 1000 ? decimals - 1 : decimals;
+  if (shown < 0) return grouped(String(steps * 10 ** -decimals));
+  return grouped((steps / 10 ** decimals).toFixed(shown));
 }
 
 function fractionText(value: number, rounding: Rounding): string {
