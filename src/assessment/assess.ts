@@ -30,11 +30,9 @@ import { holdTimes } from './hold-times.js';
 import { atNineDigits, canonicalHash } from './input-hash.js';
 import { knowledge, type Knowledge } from './knowledge.js';
 import { largestAmounts } from './largest-amounts.js';
-import { planFacts } from './plan-facts.js';
 import { planFileSchema, type PlanFile } from './plan-file.js';
 import { requireReferences } from './plan-references.js';
 import { quantityWords } from './quantity-words.js';
-import { planRefusals } from './refusals.js';
 import type { ResolvedRelease } from './resolved-plan.js';
 import { cautionsFor, rulesCited } from './rules-cited.js';
 import { fitting } from './schema-check.js';
@@ -370,7 +368,11 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
       .filter((outcome) => outcome.level.quantity === 'oxygenFraction' && !outcome.floorCheck)
       .map((outcome) => outcome.answers.mixed?.value ?? 1),
   );
-  const facts = planFacts(plan, resolved, lowest, decision.withControls === 'go');
+  const facts = {
+    ...shown.facts,
+    lowestOxygenFraction: lowest,
+    residualRisk: decision.withControls !== 'go',
+  };
   const sound = soundResults(plan, {
     gases: data.gases,
     policy: data.catalogue.policy,
@@ -433,7 +435,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     })),
     conditions: [...conditions, ...confirmations],
     findings: planFindings(plan, resolved, data.catalogue.policy),
-    refusals: planRefusals(plan, data.catalogue.policy, pack),
+    refusals: shown.refusals,
     zones: zoneResults(shown, nameOf),
     sound,
     largestAmounts: largestAmounts(shown, gases),

@@ -2,7 +2,7 @@ import type { Control } from './catalogue-types.js';
 import type { ChosenControl, PlanAct, PlanFile, PlanRelease, PlanStock } from './plan-file.js';
 
 /** Seat height where chairs take the place of the floor [m], when the plan names none. */
-const chairHeightM = 1.15;
+const chairHeightM = 1.1;
 
 type Change = (plan: PlanFile, chosen: ChosenControl) => PlanFile;
 

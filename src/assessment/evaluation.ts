@@ -3,7 +3,8 @@ import type { AirResult } from '../science/room-air/air-result.js';
 import { airRun } from '../science/room-air/air-run.js';
 import { actsBehind } from './act-attribution.js';
 import { airCase, dayWindow, plannedReleases, worstWindow, type AirCase } from './air-case.js';
-import type { DecisionWord } from './assessment.js';
+import type { DecisionWord, Refusal } from './assessment.js';
+import type { FactValues } from './condition-holds.js';
 import type { AssessmentData } from './assessment-data.js';
 import type { RulePack } from './catalogue-types.js';
 import {
@@ -17,7 +18,7 @@ import { judgedLevels, type JudgedLevel } from './levels.js';
 import { meterFits } from './meter-fits.js';
 import { placeFailures } from './place-failures.js';
 import type { PlanFile } from './plan-file.js';
-import { releasableGases } from './plan-facts.js';
+import { planFacts, releasableGases } from './plan-facts.js';
 import { planReader, type End, type PlanReader } from './plan-reader.js';
 import { policyDefault } from './policy-rows.js';
 import { planRefusals } from './refusals.js';
@@ -37,6 +38,8 @@ export interface Evaluation {
   readonly fansOff: readonly ZoneOutcome[];
   readonly worst: readonly (WorstRelease & { readonly outcomes: readonly ZoneOutcome[] })[];
   readonly places: readonly PlaceFailure[];
+  readonly facts: FactValues;
+  readonly refusals: readonly Refusal[];
   readonly hits: readonly Hit[];
   readonly word: DecisionWord;
   readonly levelsOf: (group: ResolvedGroup) => readonly JudgedLevel[];
@@ -85,7 +88,8 @@ export function evaluation(
     controls: data.catalogue.controls,
   });
   const released = releasableGases(plan);
-  const context = { policy, pack, common: commonRules, houseRules: plan.venue.site.houseRules };
+  const { houseRules, region } = plan.venue.site;
+  const context = { policy, pack, common: commonRules, houseRules, region };
   const levels = {
     public: judgedLevels(context, released, 'public'),
     crew: judgedLevels(context, released, 'crew'),
@@ -121,21 +125,22 @@ export function evaluation(
   });
 
   const places = placeFailures(plan, resolved, levels.crew);
-  const refusals = planRefusals(plan, policy, pack);
-  const facts: DecisionFacts = {
+  const facts = planFacts(plan, resolved);
+  const refusals = planRefusals(plan, policy, pack, facts);
+  const decisionFacts: DecisionFacts = {
     planned,
     fansOff,
     worst,
     refused: refusals.map(({ act, reason }) => ({ act, reason })),
     places,
     onlyAssumed: restsOnAssumptions(reader, resolved),
-    meterFits: (outcome) => meterFits(plan, outcome, policy),
+    meterFits: (outcome) => meterFits(plan, outcome, policy, facts),
     escapeTimeS: resolved.escapeTimeS,
     escapeTimeFactor: policyDefault(policy, 'escapeTimeFactor').value,
     culprits: (outcome, answer) =>
       actsBehind(outcome, outcome.answers[answer]?.atS ?? 0, dayReleases, resolved),
   };
-  const hits = decisionHits(facts);
+  const hits = decisionHits(decisionFacts);
   return {
     plan,
     reader,
@@ -146,6 +151,8 @@ export function evaluation(
     fansOff,
     worst,
     places,
+    facts,
+    refusals,
     hits,
     word: worstWord(hits.map((hit) => hit.word)),
     levelsOf,

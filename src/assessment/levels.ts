@@ -38,7 +38,14 @@ interface Context {
   readonly pack: RulePack;
   readonly common: CommonRules;
   readonly houseRules: PlanFile['venue']['site']['houseRules'];
+  readonly region: string | undefined;
 }
+
+/** Rows of a pack that hold where the venue is; where it is not said, every row is taken. */
+const holdsIn = (region: string | undefined) => (row: { regions?: readonly string[] }) =>
+  row.regions === undefined ||
+  region === undefined ||
+  row.regions.some((one) => one === region || region.startsWith(`${one}-`));
 
 const stricter = (
   failsWhen: 'below' | 'above',
@@ -57,8 +64,9 @@ const ownValue = (row: PolicyLevelValue, value: number): LevelValue => ({
   checked: row.checked,
 });
 
-const judging = (pack: RulePack, gas: string, period: ExposureLimit['period']) =>
+const judging = ({ pack, region }: Context, gas: string, period: ExposureLimit['period']) =>
   pack.exposureLimits
+    .filter(holdsIn(region))
     .filter((row) => row.role === 'judge' && row.gas === gas && row.period === period)
     .sort((a, b) => a.value - b.value)[0] ?? null;
 
@@ -98,6 +106,7 @@ function oxygenLevel(context: Context): JudgedLevel | null {
   if (!level) return null;
   const rows = (name: LevelName) =>
     context.pack.oxygenThresholds
+      .filter(holdsIn(context.region))
       .filter(
         (row) =>
           row.role === 'judge' &&
@@ -126,14 +135,22 @@ function oxygenLevel(context: Context): JudgedLevel | null {
 function enrichmentLevel(context: Context): JudgedLevel | null {
   const level = levelOf(context.policy, 'oxygenEnrichmentFraction');
   if (!level) return null;
-  const rows = context.pack.oxygenThresholds
-    .filter((row) => row.role === 'judge' && row.sense === 'above' && row.unit === 'percent')
-    .map((row) => ({
-      value: row.value / 100,
-      statistic: 'peak' as const,
-      source: `${row.instrument}, ${row.edition}`,
-      checked: row.checked,
-    }));
+  const rows = (name: LevelName) =>
+    context.pack.oxygenThresholds
+      .filter(holdsIn(context.region))
+      .filter(
+        (row) =>
+          row.role === 'judge' &&
+          row.sense === 'above' &&
+          row.unit === 'percent' &&
+          row.level === name,
+      )
+      .map((row) => ({
+        value: row.value / 100,
+        statistic: 'peak' as const,
+        source: `${row.instrument}, ${row.edition}`,
+        checked: row.checked,
+      }));
   return {
     quantity: 'oxygenEnrichment',
     title: level.title,
@@ -141,8 +158,8 @@ function enrichmentLevel(context: Context): JudgedLevel | null {
     failsWhen: 'above',
     scale: 1,
     aim: tightened(level, 'aim', []),
-    limit: tightened(level, 'limit', rows),
-    never: tightened(level, 'never', []),
+    limit: tightened(level, 'limit', rows('limit')),
+    never: tightened(level, 'never', rows('never')),
   };
 }
 
@@ -150,7 +167,7 @@ function carbonDioxideLevel(context: Context): JudgedLevel | null {
   const level = levelOf(context.policy, 'carbonDioxideFraction');
   if (!level) return null;
   const value = (name: LevelName) =>
-    tightened(level, name, [packValue(judging(context.pack, 'CO2', periodOf[name]))]);
+    tightened(level, name, [packValue(judging(context, 'CO2', periodOf[name]))]);
   return {
     quantity: 'CO2',
     title: level.title,
@@ -165,7 +182,7 @@ function carbonDioxideLevel(context: Context): JudgedLevel | null {
 
 function limitedGasLevel(context: Context, gas: string): JudgedLevel | null {
   const level = levelOf(context.policy, 'limitedGasFraction');
-  const eightHour = packValue(judging(context.pack, gas, 'eightHour'));
+  const eightHour = packValue(judging(context, gas, 'eightHour'));
   if (!level || !eightHour) return null;
   const times = (name: LevelName): LevelValue => {
     const row = level[name];
@@ -176,7 +193,7 @@ function limitedGasLevel(context: Context, gas: string): JudgedLevel | null {
       source: multiple === 1 ? eightHour.source : `${row.source}; on ${eightHour.source}`,
       checked: row.checked,
     };
-    return stricter('above', own, packValue(judging(context.pack, gas, periodOf[name])));
+    return stricter('above', own, packValue(judging(context, gas, periodOf[name])));
   };
   return {
     quantity: gas,
@@ -196,6 +213,7 @@ function fuelLevel(context: Context, gas: string): JudgedLevel | null {
   if (!level || !limits) return null;
   const rows = (name: LevelName) =>
     context.pack.flammableThresholds
+      .filter(holdsIn(context.region))
       .filter((row) => row.role === 'judge' && row.level === name)
       .map((row) => ({
         value: row.value / 100,

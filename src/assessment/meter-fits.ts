@@ -1,4 +1,5 @@
 import type { Policy } from './catalogue-types.js';
+import { conditionHolds, type FactValues } from './condition-holds.js';
 import type { PlanFile } from './plan-file.js';
 import type { ZoneOutcome } from './zone-outcomes.js';
 
@@ -9,14 +10,19 @@ const heightToleranceM = 0.4;
  * Whether the plan lists a meter that can see the quantity of an outcome, in its space, at its
  * height. A wrong or unstated cell type, or an uncompensated infrared head at altitude, is no meter.
  */
-export function meterFits(plan: PlanFile, outcome: ZoneOutcome, policy: Policy): boolean {
+export function meterFits(
+  plan: PlanFile,
+  outcome: ZoneOutcome,
+  policy: Policy,
+  facts: FactValues,
+): boolean {
   const gas =
     outcome.level.quantity === 'oxygenFraction' || outcome.level.quantity === 'oxygenEnrichment'
       ? 'O2'
       : (outcome.level.gas ?? 'O2');
-  const refused = new Set(
-    policy.meters.filter((row) => row.gas === gas).flatMap((row) => row.refusedCells),
-  );
+  const rows = policy.meters.filter((row) => row.gas === gas && conditionHolds(row.when, facts));
+  const refused = new Set(rows.flatMap((row) => row.refusedCells));
+  const isAccepted = (cell: string) => rows.every((row) => row.acceptedCells.includes(cell));
   return (plan.meters ?? []).some((meter) => {
     const height = meter.heightM;
     return (
@@ -26,6 +32,7 @@ export function meterFits(plan: PlanFile, outcome: ZoneOutcome, policy: Policy):
       Math.abs(height - outcome.heightM) <= heightToleranceM &&
       meter.cellType !== undefined &&
       meter.cellType !== 'unknown' &&
+      isAccepted(meter.cellType) &&
       !refused.has(meter.cellType)
     );
   });

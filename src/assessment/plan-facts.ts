@@ -21,13 +21,23 @@ export function releasableGases(plan: PlanFile): readonly string[] {
   return [...gases].sort();
 }
 
+/** The same facts narrowed to one act: what it lets out, and what that makes of it. */
+export function actFacts(facts: FactValues, act: PlanFile['acts'][number]): FactValues {
+  const gases = [...new Set(act.releases.planned.flatMap(gasesOfRelease))];
+  return {
+    ...facts,
+    gasesReleased: gases,
+    gasesPresent: gases,
+    demonstrations: act.catalogueId === undefined ? [] : [act.catalogueId],
+    fuelGas: gases.some((gas) => fuels.has(gas)),
+    oxidiser: gases.some((gas) => gas === 'O2' || gas === 'N2O'),
+    flame: act.releases.planned.some((release) => release.burned === true),
+    inhalation: (act.inhaled ?? []).length > 0,
+  };
+}
+
 /** The facts of a plan that its rule pack and cautions may ask for. */
-export function planFacts(
-  plan: PlanFile,
-  resolved: ResolvedPlan,
-  lowestOxygenFraction: number,
-  isGo: boolean,
-): FactValues {
+export function planFacts(plan: PlanFile, resolved: ResolvedPlan): FactValues {
   const stock = plan.stock ?? [];
   const released = new Set(
     plan.acts.flatMap((act) =>
@@ -53,6 +63,8 @@ export function planFacts(
     gasesPresent: present,
     occupied: true,
     publicPresent: groups.some((group) => group.kind === 'public'),
+    demonstrations: plan.acts.flatMap((act) => act.catalogueId ?? []),
+    ...(plan.venue.site.region === undefined ? {} : { region: [plan.venue.site.region] }),
     minorsPresent: groups.some((group) => group.ageGroup !== 'adult'),
     floorSeated: groups.some((group) => group.zone.heightM <= 0.7),
     indoors: true,
@@ -72,11 +84,9 @@ export function planFacts(
     mechanicalVentilation: resolved.airSystems.length > 0,
     recirculation: resolved.airSystems.some((system) => system.recirculatedM3PerS > 0),
     largeReleaseCredible: stock.some((item) => item.open !== false),
-    residualRisk: !isGo,
     altitudeM: resolved.site.altitudeM,
     carbonDioxideKg,
     fuelGasKg: fuelKg,
     pressureGaugePa: pressurised ? 2e7 - atmosphericPa : 0,
-    lowestOxygenFraction,
   };
 }

@@ -146,6 +146,12 @@ export const siteSchema = Type.Object(
     relativeHumidity: optional(figure('0 to 1; default 0.5')),
     carbonDioxideFraction: optional(figure('outdoor air; default 420e-6')),
     rulePack: optional(id),
+    region: optional(
+      Type.String({
+        pattern: '^[A-Z]{2}(-[A-Z]{2,3})?$',
+        description: 'ISO 3166, such as DE or US-CA',
+      }),
+    ),
     houseRules: optional(
       Type.Array(
         Type.Object(

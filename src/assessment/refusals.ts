@@ -1,5 +1,7 @@
 import type { Refusal } from './assessment.js';
 import type { Policy, RulePack } from './catalogue-types.js';
+import { conditionHolds, type FactValues } from './condition-holds.js';
+import { actFacts, gasesOfRelease } from './plan-facts.js';
 import type { PlanAct, PlanFile } from './plan-file.js';
 
 type Inhalation = NonNullable<PlanAct['inhaled']>[number];
@@ -58,46 +60,57 @@ function inhalationRefusals(act: PlanAct, policy: Policy): readonly Refusal[] {
   });
 }
 
-/** Gases whose release needs written authority under the pack. */
-export function gasesNeedingAuthority(pack: RulePack): ReadonlySet<string> {
-  const gases = new Set<string>();
-  for (const rule of pack.rules) {
-    if (rule.needsAuthority !== true) continue;
-    const { fact, anyOf } = rule.when;
-    if (fact === 'gasesReleased') for (const gas of anyOf ?? []) gases.add(gas);
-    for (const part of [...(rule.when.all ?? []), ...(rule.when.any ?? [])]) {
-      if (part.fact === 'gasesReleased') for (const gas of part.anyOf ?? []) gases.add(gas);
-    }
-  }
-  // The product's own rule, whatever the pack says.
-  gases.add('SF6');
-  return gases;
+interface Authority {
+  readonly needsRecovery: boolean;
+  readonly reason: string;
+  readonly alternative: string;
 }
 
-function authorityRefusals(act: PlanAct, needing: ReadonlySet<string>): readonly Refusal[] {
-  if (act.writtenAuthority === true && act.recovery === true) return [];
-  const released = act.releases.planned.flatMap((release) =>
-    Object.keys(release.composition ?? { [release.gas ?? '']: 1 }),
+/** What stands between an act and its release: the policy's own rows, and rules of the pack. */
+function authoritiesFor(
+  act: PlanAct,
+  policy: Policy,
+  pack: RulePack,
+  facts: FactValues,
+): readonly Authority[] {
+  const released = new Set(act.releases.planned.flatMap(gasesOfRelease));
+  if (released.size === 0) return [];
+  const own = policy.authorities.filter((row) => released.has(row.gas));
+  const ofAct = actFacts(facts, act);
+  const ruled = pack.rules
+    .filter((rule) => rule.needsAuthority === true && conditionHolds(rule.when, ofAct))
+    .map((rule) => ({
+      needsRecovery: rule.needsRecovery ?? false,
+      reason: `${rule.instrument}: ${rule.title.toLowerCase()} needs written authority.`,
+      alternative: 'Ask the authority named by the rule, or show the effect without this gas.',
+    }));
+  return [...own, ...ruled];
+}
+
+function authorityRefusals(act: PlanAct, authorities: readonly Authority[]): readonly Refusal[] {
+  const missing = authorities.find(
+    (one) => act.writtenAuthority !== true || (one.needsRecovery && act.recovery !== true),
   );
-  const gas = released.find((candidate) => needing.has(candidate));
-  if (gas === undefined) return [];
+  if (!missing) return [];
+  const lacks = act.writtenAuthority === true ? 'recovery of the gas' : 'written authority';
   return [
     {
       act: act.id,
-      reason: `Letting out ${gas} needs written authority and recovery of the gas; the plan shows ${
-        act.writtenAuthority === true ? 'no recovery' : 'no authority'
-      }.`,
-      alternative: 'Use a gas of lower impact first, or show a film of the effect.',
+      reason: `${missing.reason} The plan shows no ${lacks}.`,
+      alternative: missing.alternative,
     },
   ];
 }
 
 /** Everything in a plan that is refused whatever the numbers say. One line of reason each. */
-export function planRefusals(plan: PlanFile, policy: Policy, pack: RulePack): readonly Refusal[] {
-  const needing = gasesNeedingAuthority(pack);
-  const acts = plan.acts.flatMap((act) => [
+export function planRefusals(
+  plan: PlanFile,
+  policy: Policy,
+  pack: RulePack,
+  facts: FactValues,
+): readonly Refusal[] {
+  return plan.acts.flatMap((act) => [
     ...inhalationRefusals(act, policy),
-    ...authorityRefusals(act, needing),
+    ...authorityRefusals(act, authoritiesFor(act, policy, pack, facts)),
   ]);
-  return acts;
 }

@@ -328,6 +328,7 @@ function resolvedRelease(
     temperatureK: release.temperatureK ?? null,
     manner: release.manner ?? 'gentle',
     burned: release.burned ?? false,
+    episode: release.episode ?? null,
     stock: release.stock ?? null,
   };
 }

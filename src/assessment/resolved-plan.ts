@@ -92,6 +92,8 @@ export interface ResolvedRelease {
   readonly temperatureK: number | null;
   readonly manner: 'gentle' | 'pour' | 'fog' | 'spill' | 'jet' | 'burst';
   readonly burned: boolean;
+  /** Worst credible rows with the same episode happen together; others are alternatives. */
+  readonly episode: string | null;
   readonly stock: string | null;
 }
 

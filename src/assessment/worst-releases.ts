@@ -2,7 +2,7 @@ import type { Policy } from './catalogue-types.js';
 import type { PlacedRelease } from './air-case.js';
 import { episodeAt } from './air-case.js';
 import { policyDefault } from './policy-rows.js';
-import type { ResolvedPlan, ResolvedRelease, ResolvedStock } from './resolved-plan.js';
+import type { ResolvedAct, ResolvedPlan, ResolvedRelease, ResolvedStock } from './resolved-plan.js';
 
 /** One thing that can go wrong, when, and what it lets out. */
 export interface WorstRelease {
@@ -30,8 +30,21 @@ function containerRelease(item: ResolvedStock, policy: Policy): ResolvedRelease 
     temperatureK: null,
     manner: isDryIce ? 'fog' : item.form === 'cryogen' ? 'spill' : 'jet',
     burned: false,
+    episode: null,
     stock: item.id,
   };
+}
+
+/** Stated faults of an act: each row is one slip; rows that share an episode happen together. */
+function slipsOf(act: ResolvedAct): readonly (readonly ResolvedRelease[])[] {
+  const slips = new Map<string, ResolvedRelease[]>();
+  act.worstCredible
+    .filter((release) => release.amountMol > 0)
+    .forEach((release, index) => {
+      const key = release.episode ?? `row ${String(index)}`;
+      slips.set(key, [...(slips.get(key) ?? []), release]);
+    });
+  return [...slips.values()];
 }
 
 /**
@@ -43,21 +56,21 @@ export function worstReleases(plan: ResolvedPlan, policy: Policy): readonly Wors
   const lastShow = plan.performances.reduce((latest, one) =>
     one.startS > latest.startS ? one : latest,
   );
-  const ofActs = plan.acts
-    .filter((act) => act.worstCredible.some((release) => release.amountMol > 0))
-    .map((act): WorstRelease => {
+  const ofActs = plan.acts.flatMap((act) =>
+    slipsOf(act).map((slip): WorstRelease => {
       const startS = Math.max(...act.startsS);
       return {
         act: act.id,
-        title: act.worstCredible.map((release) => release.title).join('; '),
+        title: slip.map((release) => release.title).join('; '),
         startS,
-        placed: act.worstCredible.map((release) => ({
+        placed: slip.map((release) => ({
           release,
           startS: startS + release.startS,
           episode: episodeAt(plan, startS),
         })),
       };
-    });
+    }),
+  );
   const stated = new Set(
     plan.acts.flatMap((act) => act.worstCredible.map((release) => release.stock)),
   );
