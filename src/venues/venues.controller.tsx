@@ -12,7 +12,7 @@ import { venueTexts as words } from '../web/texts/en-venues.js';
 import { noticeNamed } from '../web/texts/en.js';
 import type { ChoiceLists } from '../web/views/field-spec.js';
 import { formDifferences } from '../web/views/form-differences.js';
-import { knownFieldNames, withRow } from '../web/views/form-rows.js';
+import { placesOnPage, withRow } from '../web/views/form-rows.js';
 import { formTexts } from '../web/views/form-texts.js';
 import { rowNumbersIn } from '../web/views/form-value.js';
 import { problemsOnPage } from '../web/views/pointer-names.js';
@@ -179,11 +179,9 @@ export class VenuesController {
 
   #problemsOf(sent: SentForm): readonly ErrorDetail[] {
     if (sent.problems.length > 0) return sent.problems;
-    const names = knownFieldNames(sent.fields, venueForm);
-    const lists = ['spaces', 'openings', 'airSystems', 'infiltration', 'transfers'];
     return problemsOnPage(
       this.venues.problemsOf(withoutEmptyLists(sent.value)),
-      new Set([...names, ...lists]),
+      placesOnPage(sent.fields, venueForm),
     );
   }
 

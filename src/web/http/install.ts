@@ -5,6 +5,7 @@ import type { NestFastifyApplication } from '@nestjs/platform-fastify';
 import type { Settings } from '../../config.js';
 import { staticFolders } from '../layout/static-files.js';
 import { existsSync } from 'node:fs';
+import { acceptFileForms } from './multipart.js';
 
 /** Largest body that is read, in bytes. */
 export const bodyLimitBytes = 1_000_000;
@@ -12,6 +13,7 @@ export const bodyLimitBytes = 1_000_000;
 /** Cookies, security headers and static files, on the server under the application. */
 export async function installWeb(app: NestFastifyApplication, settings: Settings): Promise<void> {
   const isEncrypted = settings.publicUrl?.startsWith('https:') ?? false;
+  acceptFileForms(app.getHttpAdapter().getInstance());
   await app.register(cookie);
   await app.register(helmet, {
     contentSecurityPolicy: {

@@ -96,6 +96,20 @@ function DescribedField(
         />
       );
     }
+    case 'yesNo':
+      return (
+        <SelectField
+          name={name}
+          label={spec.label}
+          hint={spec.hint}
+          state={state}
+          options={[
+            { value: '', label: spec.blank },
+            { value: 'yes', label: spec.yes },
+            { value: 'no', label: spec.no },
+          ]}
+        />
+      );
     case 'longText':
       return <TextArea name={name} label={spec.label} hint={spec.hint} state={state} />;
     case 'text':
@@ -161,10 +175,13 @@ function Row(
   });
   const [own = '', ...rest] = texts;
   const title = own === '' ? `${spec.noun} ${String(number)}` : own;
-  const isWrong = state.problems.some(({ path }) => path.startsWith(`/${row}.`));
+  const problem = problemOf(state, row);
+  const isWrong =
+    problem !== undefined || state.problems.some(({ path }) => path.startsWith(`/${row}.`));
   const isOpen = isWrong || opened === row || opened?.startsWith(`${row}.`) === true;
   const content = (
     <>
+      {problem !== undefined && <p class="problem">{problem}</p>}
       <input type="hidden" name={nameIn(row, rowMark)} value="on" />
       <Kept name={nameIn(row, 'id')} state={state} />
       <DescribedFields

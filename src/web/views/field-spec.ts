@@ -44,6 +44,13 @@ export type FieldSpec =
       readonly blank?: string;
     })
   | (Named & { readonly kind: 'check' })
+  /** True, false, or not stated: for questions where silence does not mean no. */
+  | (Named & {
+      readonly kind: 'yesNo';
+      readonly yes: string;
+      readonly no: string;
+      readonly blank: string;
+    })
   | { readonly kind: 'kept'; readonly key: string }
   | { readonly kind: 'rows'; readonly key: string; readonly rows: RowSpec };
 

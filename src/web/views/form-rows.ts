@@ -127,3 +127,24 @@ export function knownFieldNames(
   }
   return names;
 }
+
+/** Places on the page that a message can point at: its fields, its rows and its lists. */
+export function placesOnPage(
+  fields: FormFields,
+  specs: readonly FieldSpec[],
+  prefix = '',
+): ReadonlySet<string> {
+  const places = new Set<string>();
+  for (const spec of specs) {
+    if (spec.kind === 'kept') continue;
+    const name = nameIn(prefix, spec.key);
+    places.add(name);
+    if (spec.kind !== 'rows') continue;
+    for (const row of rowNumbersIn(fields, name)) {
+      const at = nameIn(name, String(row));
+      places.add(at);
+      for (const inner of placesOnPage(fields, spec.rows.fields, at)) places.add(inner);
+    }
+  }
+  return places;
+}

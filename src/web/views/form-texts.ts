@@ -53,6 +53,8 @@ function textsOfField(record: FormRecord, prefix: string, spec: FieldSpec): Text
       return isFigure(value) ? figureTexts(name, value, spec.unit) : {};
     case 'check':
       return value === true ? { [name]: 'on' } : {};
+    case 'yesNo':
+      return typeof value === 'boolean' ? { [name]: value ? 'yes' : 'no' } : {};
     case 'dayTime':
       return typeof value === 'number' ? { [name]: dayTimeText(value) } : {};
     case 'text':

@@ -119,6 +119,10 @@ function readOne(
     setAt(record, at, read.figure);
     return;
   }
+  if (spec.kind === 'yesNo') {
+    if (text === 'yes' || text === 'no') setAt(record, spec.key, text === 'yes');
+    return;
+  }
   if (text === undefined) {
     if (spec.required) {
       const ask = spec.kind === 'choice' ? 'choose one' : 'fill this in';

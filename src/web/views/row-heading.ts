@@ -36,6 +36,8 @@ export function fieldText(
       return text === undefined ? '' : `${text}\u00a0${spec.unit.symbol}`.trim();
     case 'choice':
       return optionsOf(spec, lists).find(({ value }) => value === text)?.label ?? '';
+    case 'yesNo':
+      return text === 'yes' ? spec.yes : text === 'no' ? spec.no : '';
     case 'check':
     case 'rows':
     case 'kept':

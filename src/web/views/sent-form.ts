@@ -33,13 +33,18 @@ function commandOf(text: string | undefined): Command {
  * The form that was sent: what was typed, the value it states, and everything wrong with either. A
  * field that is not of this form is refused, not dropped.
  *
- * @param beside names of fields that belong to the page but not to the value
+ * @param page names of fields that belong to the page but not to the value, and what is filled in
+ *   before the value is read
  */
 export function sentForm(
   body: unknown,
   specs: readonly FieldSpec[],
-  beside: readonly string[] = [],
+  page: {
+    readonly beside?: readonly string[];
+    readonly filled?: (fields: FormFields) => FormFields;
+  } = {},
 ): SentForm {
+  const { beside = [], filled = (fields: FormFields) => fields } = page;
   const sent = formFields(body);
   const head = checkedForm(
     SavingForm,
@@ -49,7 +54,7 @@ export function sentForm(
   const content = Object.fromEntries(
     Object.entries(sent).filter(([name]) => !apart.includes(name)),
   );
-  const fields = withRowsCounted(content, specs);
+  const fields = filled(withRowsCounted(content, specs));
   const known = knownFieldNames(fields, specs);
   const strangers: readonly ErrorDetail[] = Object.keys(fields)
     .filter((name) => !known.has(name) && !beside.includes(name))

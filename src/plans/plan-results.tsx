@@ -1,0 +1,193 @@
+import type { VNode } from 'preact';
+import type { Assessment, DecidingQuestion, Finding } from '../assessment/assessment.js';
+import type { ErrorDetail } from '../errors.js';
+import { quantityText } from '../web/format/figure-text.js';
+import { fieldId } from '../web/forms/fields.js';
+import { DecisionBox, OpenableFigure } from '../web/layout/parts.js';
+import { SectionDrawing } from '../web/section/section-drawing.js';
+import { en } from '../web/texts/en.js';
+import { planTexts } from '../web/texts/en-plans.js';
+import { resultTexts as words } from '../web/texts/en-results.js';
+import {
+  AmountsAndHolds,
+  ControlResults,
+  SoundResults,
+  WordsByPart,
+  Workings,
+} from './result-tables.js';
+import { ZoneResults } from './zone-results.js';
+
+/** Where the entry behind a place of the plan file stands: on this page or on that of the venue. */
+export type PlaceLink = (pointer: string) => string | undefined;
+
+function Decision({ assessment }: { readonly assessment: Assessment }): VNode {
+  const { decision, governing } = assessment;
+  const same = decision.asFiled === decision.withControls;
+  return (
+    <section aria-label={words.decision}>
+      <DecisionBox
+        word={decision.asFiled}
+        label={same ? words.decision : words.asFiled}
+        reason={governing?.reason}
+      />
+      {!same && <DecisionBox word={decision.withControls} label={words.withControls} />}
+      {governing && (
+        <dl class="facts governing">
+          <dt>{words.governing}</dt>
+          <dd>
+            {governing.zoneTitle}, {words.cases[governing.caseName]},{' '}
+            {words.answers[governing.answer].toLowerCase()}
+            <OpenableFigure figure={governing.figure} />
+            {words.governingLevel} <OpenableFigure figure={governing.limit} />
+          </dd>
+          <dt>{words.row}</dt>
+          <dd>{governing.row}</dd>
+        </dl>
+      )}
+    </section>
+  );
+}
+
+function Linked(props: { readonly href: string | undefined; readonly text: string }): VNode {
+  return props.href === undefined ? <>{props.text}</> : <a href={props.href}>{props.text}</a>;
+}
+
+function Questions(props: {
+  readonly questions: readonly DecidingQuestion[];
+  readonly linkTo: PlaceLink;
+}): VNode | null {
+  if (props.questions.length === 0) return null;
+  return (
+    <section aria-labelledby="questions-title">
+      <h2 id="questions-title">{words.questions}</h2>
+      <ul>
+        {props.questions.map(({ path, question, wordAtBest, wordAtWorst, suffices }) => (
+          <li key={path}>
+            <Linked href={props.linkTo(path)} text={question} /> ({words.questionAtBest}{' '}
+            {en.decisions[wordAtBest]}, {words.questionAtWorst} {en.decisions[wordAtWorst]})
+            {suffices && (
+              <>
+                {' '}
+                {words.suffices} {quantityText(suffices.value, suffices.unit)}
+              </>
+            )}
+          </li>
+        ))}
+      </ul>
+    </section>
+  );
+}
+
+function Findings(props: {
+  readonly findings: readonly Finding[];
+  readonly linkTo: PlaceLink;
+}): VNode | null {
+  if (props.findings.length === 0) return null;
+  return (
+    <section aria-labelledby="findings-title">
+      <h2 id="findings-title">{words.findings}</h2>
+      <ul class="findings">
+        {props.findings.map(({ code, kind, text, path }) => {
+          const href = path === '' ? undefined : props.linkTo(path);
+          return (
+            <li key={`${code} ${path}`} class={`finding ${kind}`}>
+              <strong>{words.findingKinds[kind]}:</strong> <Linked href={href} text={text} />
+            </li>
+          );
+        })}
+      </ul>
+    </section>
+  );
+}
+
+/** Everything that was worked out, the word first, the workings last. */
+export function PlanResults(props: {
+  readonly planId: string;
+  readonly assessment: Assessment;
+  readonly linkTo: PlaceLink;
+}): VNode {
+  const { planId, assessment, linkTo } = props;
+  const { conditions, refusals } = assessment;
+  return (
+    <>
+      <Decision assessment={assessment} />
+      {refusals.length > 0 && (
+        <section aria-labelledby="refusals-title">
+          <h2 id="refusals-title">{words.refusals}</h2>
+          <ul class="refusals">
+            {refusals.map(({ act, reason, alternative }) => (
+              <li key={`${act} ${reason}`}>
+                <strong>{assessment.acts.find(({ id }) => id === act)?.title ?? act}.</strong>{' '}
+                {reason} {words.instead} {alternative}
+              </li>
+            ))}
+          </ul>
+        </section>
+      )}
+      {conditions.length > 0 && (
+        <section aria-labelledby="conditions-title">
+          <h2 id="conditions-title">{words.conditions}</h2>
+          <ol class="conditions">
+            {conditions.map((condition) => (
+              <li key={condition.number} value={condition.number}>
+                {condition.text}
+                {condition.blocksStart && <strong> ({words.blocks})</strong>}
+              </li>
+            ))}
+          </ol>
+        </section>
+      )}
+      <Questions questions={assessment.questionsThatDecide} linkTo={linkTo} />
+      <Findings findings={assessment.findings} linkTo={linkTo} />
+      {assessment.section.spaces.length > 0 && (
+        <section aria-labelledby="section-title">
+          <h2 id="section-title">{words.section}</h2>
+          <figure class="drawn">
+            <SectionDrawing view={assessment.section} />
+            <figcaption>{assessment.section.moment}</figcaption>
+          </figure>
+        </section>
+      )}
+      <ZoneResults planId={planId} assessment={assessment} />
+      <SoundResults assessment={assessment} />
+      <WordsByPart assessment={assessment} />
+      <AmountsAndHolds assessment={assessment} />
+      <ControlResults assessment={assessment} />
+      <Workings assessment={assessment} />
+    </>
+  );
+}
+
+/** Why there is no result: each reason leads to its entry. */
+export function NoResults(props: {
+  readonly message: string;
+  readonly hint: string;
+  readonly problems: readonly ErrorDetail[];
+}): VNode {
+  const { message, hint, problems } = props;
+  return (
+    <section class="no-results" aria-labelledby="no-results-title">
+      <h2 id="no-results-title">{words.failed}</h2>
+      {problems.length === 0 ? (
+        <p>
+          {message} {hint}
+        </p>
+      ) : (
+        <>
+          <p>{words.failedIntro}</p>
+          <ul>
+            {problems.map(({ path, problem }) => (
+              <li key={`${path} ${problem}`}>
+                <Linked
+                  href={path.length > 1 ? `#${fieldId(path.slice(1))}` : undefined}
+                  text={problem}
+                />
+              </li>
+            ))}
+          </ul>
+        </>
+      )}
+      <p class="hint">{planTexts.asSaved}</p>
+    </section>
+  );
+}

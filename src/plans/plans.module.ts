@@ -1,0 +1,21 @@
+import { Module } from '@nestjs/common';
+import { APP_INTERCEPTOR } from '@nestjs/core';
+import { VenuesModule } from '../venues/venues.module.js';
+import { CalculateController } from './calculate.controller.js';
+import { ExamplesService } from './examples.service.js';
+import { AssessmentsService } from './assessments.service.js';
+import { PlansController } from './plans.controller.js';
+import { PlansService } from './plans.service.js';
+
+@Module({
+  imports: [VenuesModule],
+  controllers: [CalculateController, PlansController],
+  providers: [
+    AssessmentsService,
+    PlansService,
+    ExamplesService,
+    { provide: APP_INTERCEPTOR, useExisting: ExamplesService },
+  ],
+  exports: [PlansService],
+})
+export class PlansModule {}

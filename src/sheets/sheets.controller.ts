@@ -1,0 +1,19 @@
+import { Controller, Get, Param, Res } from '@nestjs/common';
+import type { PageReply } from '../web/http/exchange.js';
+import { SheetsService } from './sheets.service.js';
+
+@Controller('plans/:id/sheets')
+export class SheetsController {
+  constructor(private readonly sheets: SheetsService) {}
+
+  @Get('risk.pdf')
+  async risk(@Param('id') id: string, @Res() reply: PageReply): Promise<void> {
+    const today = new Date().toISOString().slice(0, 10);
+    const { name, bytes } = await this.sheets.riskSheet(id, today);
+    void reply
+      .header('content-type', 'application/pdf')
+      .header('content-disposition', `attachment; filename="${name}"`)
+      .header('cache-control', 'no-store')
+      .send(Buffer.from(bytes));
+  }
+}
