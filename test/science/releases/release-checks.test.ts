@@ -6,8 +6,20 @@ import {
   chokedTimes,
   isothermalBlowDown,
 } from '../../../src/science/releases/blow-down.js';
-import { dryIceByWaterHeat, dryIceRateInAir } from '../../../src/science/releases/dry-ice.js';
-import { boiledByFloor, concreteFloor } from '../../../src/science/releases/cryogen.js';
+import {
+  boxLossPerHour,
+  dryIceByWaterHeat,
+  dryIceLeftInBox,
+  dryIceRateInAir,
+  hotWaterRateKgPerS,
+  openHeatTransfer,
+} from '../../../src/science/releases/dry-ice.js';
+import {
+  boiledByFloor,
+  concreteFloor,
+  transferLoss,
+  vesselLoss,
+} from '../../../src/science/releases/cryogen.js';
 import {
   criticalPressureRatio,
   orificeMassFlow,
@@ -196,5 +208,37 @@ describe('other courses', () => {
 
   it('an open tank of sulfur hexafluoride half a metre deep lasts 3.5 h by diffusion', () => {
     expect(tankDiffusionTime(0.5, 1e-5) / 3600).toBeCloseTo(3.5, 1);
+  });
+
+  it('open dry ice goes at 3 to 6 kg/h per m2 in still air and 12 to 30 with a fan (dossier 5.3)', () => {
+    const perHour = (h: number) => dryIceRateInAir(1, h, 293.15, 194.65) * 3600;
+    expect(perHour(openHeatTransfer.stillAir.low)).toBeCloseTo(3.1, 1);
+    expect(perHour(openHeatTransfer.stillAir.high)).toBeCloseTo(6.2, 1);
+    expect(perHour(openHeatTransfer.fan.low)).toBeCloseTo(12.4, 1);
+    expect(perHour(openHeatTransfer.fan.high)).toBeCloseTo(31.0, 0);
+  });
+
+  it('a small box loses 2 % an hour, so 10 kg becomes 8.2 kg in ten hours', () => {
+    expect(dryIceLeftInBox(10, boxLossPerHour.smallBox.usual, 36_000)).toBeCloseTo(8.19, 2);
+    expect(boxLossPerHour.wellInsulated.high).toBeLessThan(boxLossPerHour.smallBox.low);
+  });
+
+  it('hot water takes 2.3 to 4.5 kg in a quarter of an hour at its low and usual rates', () => {
+    // Supplier figures, two digits.
+    expect(hotWaterRateKgPerS.low * 900).toBeCloseTo(2.3, 1);
+    expect(hotWaterRateKgPerS.usual * 900).toBeCloseTo(4.5, 1);
+  });
+
+  it('a ten-litre vessel of 0.15 L a day is planned at 0.30, transfers at a tenth or three', () => {
+    expect(vesselLoss(0.000_15) * 86_400).toBeCloseTo(0.0003, 9);
+    expect(transferLoss.warmVessel).toBeGreaterThan(transferLoss.coldVessel);
+  });
+
+  it('an open valve and a burst are at once; a hole decays with its time constant', () => {
+    expect(releaseAtOnce(12)).toEqual({ amountMol: 12, durationS: 0, profile: 'steady' });
+    const { durationS, timeConstantS, profile } = blowDownRelease(400, 15);
+    expect(profile).toBe('decaying');
+    // Five time constants leave 0.7 % of what was above room pressure.
+    expect(Math.exp(-durationS / (timeConstantS ?? 1))).toBeLessThan(0.01);
   });
 });
