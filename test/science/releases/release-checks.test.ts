@@ -26,7 +26,9 @@ import {
   type Orifice,
 } from '../../../src/science/releases/orifice-flow.js';
 import {
+  blowDownRelease,
   regulatedRelease,
+  releaseAtOnce,
   tankDiffusionTime,
 } from '../../../src/science/releases/release-course.js';
 import { recordsOf } from '../../support/gas-records.js';
