@@ -1,6 +1,6 @@
 import { applyDecorators, Header, type HttpServer } from '@nestjs/common';
 import type { NestFastifyApplication } from '@nestjs/platform-fastify';
-import type { Viewer } from '../session/viewer.js';
+import type { Viewer } from '../session/signed-in-person.js';
 
 type Server = ReturnType<NestFastifyApplication['getHttpAdapter']>;
 type Parts<S> =

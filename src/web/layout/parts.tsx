@@ -1,6 +1,5 @@
 import type { ComponentChildren, VNode } from 'preact';
 import type { DecisionWord, Figure } from '../../assessment/assessment.js';
-import { figureText } from '../format/figure-text.js';
 import type { Rounding } from '../format/figure-text.js';
 import { quantityText, spanText } from '../format/figure-text.js';
 import { en } from '../texts/en.js';
@@ -64,11 +63,6 @@ export function OpenableFigure(props: {
       </dl>
     </details>
   );
-}
-
-/** A figure as text where there is no room to open it. */
-export function PlainFigure(props: { readonly figure: Figure | null }): VNode {
-  return props.figure === null ? <span>{'\u2013'}</span> : <span>{figureText(props.figure)}</span>;
 }
 
 /** A table that scrolls in its own frame on a narrow screen, and can be scrolled by keyboard. */

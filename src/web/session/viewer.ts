@@ -1,13 +1,9 @@
 import { createParamDecorator, SetMetadata, type ExecutionContext } from '@nestjs/common';
 import { NotAllowed } from '../../errors.js';
-import type { Account } from '../../storage/people.repository.js';
 import type { PageRequest } from '../http/exchange.js';
+import type { Viewer } from './signed-in-person.js';
 
-/** The signed-in person, as far as a page needs to know. */
-export interface Viewer extends Account {
-  /** Goes into every form, and must come back with it. */
-  readonly formToken: string;
-}
+export type { Viewer };
 
 export const openToStrangersKey = 'stillair:open-to-strangers';
 

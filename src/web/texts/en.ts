@@ -110,7 +110,6 @@ export const en = {
 } as const;
 
 export type NoticeName = keyof typeof en.notices;
-export type Role = keyof typeof en.roles;
 
 /** The notice that a redirect named, if it is one of ours: an address cannot put words on a page. */
 export function noticeNamed(name: unknown): NoticeName | undefined {
