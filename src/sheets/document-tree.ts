@@ -100,7 +100,7 @@ export interface Column {
 
 export interface TableRow {
   readonly cells: readonly Words[];
-  /** A line that belongs to the row above: no rule between them. */
+  /** Belongs to the row above: its first cell is not read, the one above spans it. */
   readonly continues?: true;
 }
 
@@ -118,6 +118,8 @@ export interface BulletList {
   readonly kind: 'list';
   readonly items: readonly Words[];
   readonly empty: string;
+  /** Never divided between two pages. */
+  readonly together?: true;
 }
 
 export interface NumberedList {

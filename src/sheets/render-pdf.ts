@@ -28,6 +28,10 @@ interface Inner {
   endMetadata(): void;
 }
 
+interface InnerElement {
+  readonly dictionary: { readonly data: Record<string, unknown> };
+}
+
 const faulty = 'The sheet could not be drawn in time.';
 
 /** The sheet as a tagged PDF. */
@@ -258,6 +262,10 @@ function builtStructure(
     ...(bbox === undefined ? {} : { bbox, placement: 'Block' }),
   };
   const element = pdf.struct(node.type, options);
+  if (node.rowSpan !== undefined) {
+    const { data } = (element as unknown as InnerElement).dictionary;
+    data.A = { O: 'Table', Scope: node.scope, RowSpan: node.rowSpan };
+  }
   for (const content of contents.get(node) ?? []) element.add(content);
   for (const child of node.children) element.add(builtStructure(pdf, child, contents, boxes));
   return element;

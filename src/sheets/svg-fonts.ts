@@ -5,7 +5,11 @@ import { textRuns, type Glyphs } from './text-runs.js';
  * with lowered digits: an SVG renderer for print does not look for a second font by itself.
  */
 export function svgWithFonts(svg: string, glyphs: Glyphs): string {
-  return svg.replace(
+  // A size of its own would win over the place on the sheet; the view box keeps the proportions.
+  const unsized = svg.replace(/^<svg\b[^>]*>/, (open) =>
+    open.replace(/ (?:width|height)="[^"]*"/g, ''),
+  );
+  return unsized.replace(
     /(<text\b[^>]*>)([^<]*)(<\/text>)/g,
     (_whole: string, open: string, content: string, close: string) => {
       const strong = /font-weight(?:="|:)\s*(?:bold|[6-9]00)/.test(open);

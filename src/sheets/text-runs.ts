@@ -50,11 +50,13 @@ function subscriptPieces(text: string): Piece[] {
  * @throws {InvalidInput} for right-to-left text, and for a character no font of the sheet has
  */
 export function textRuns(words: Words, weight: Weight, glyphs: Glyphs): TextRun[] {
+  // Spans say their own weight; a plain text takes that of its place.
+  const base = typeof words === 'string' ? weight : 'regular';
   const spans = typeof words === 'string' ? [{ text: words }] : words;
   const runs: (TextRun & { text: string })[] = [];
   for (const span of spans) {
     const text = printableText(span.text);
-    const chain = glyphs.chain('strong' in span ? 'strong' : weight);
+    const chain = glyphs.chain('strong' in span ? 'strong' : base);
     for (const piece of subscriptPieces(text)) {
       for (const word of piece.text.match(/\s+|[^\s]+/gu) ?? []) {
         for (const { part, font } of fontParts(word, chain, glyphs)) {

@@ -93,7 +93,7 @@ function headingStrips(
     strips.push(...textStrips(heading.words, look, frame, element, set, before));
   } else {
     // A rule across the page opens each numbered part; its number hangs before the title.
-    const hang = 20;
+    const hang = 24;
     const numbered = heading.number !== undefined;
     const x = numbered ? frame.x + hang : frame.x;
     const lines = setLines(heading.words, look, frame.width - hang, set);
@@ -135,13 +135,14 @@ function factStrips(facts: Facts, frame: Frame, parent: StructureNode, set: Type
   const list = node('L');
   parent.children.push(list);
   const gap = 18;
-  const width = (frame.width - gap) / 2;
+  const widths = [(frame.width - gap) * 0.58, (frame.width - gap) * 0.42];
   const labelWidth = 84;
   const strips: Strip[] = [];
   for (let index = 0; index < facts.pairs.length; index += 2) {
     let height = 0;
     const pieces = facts.pairs.slice(index, index + 2).flatMap((pair, column) => {
-      const x = frame.x + column * (width + gap);
+      const width = widths[column] ?? 0;
+      const x = column === 0 ? frame.x : frame.x + (widths[0] ?? 0) + gap;
       const item = node('LI');
       const label = node('Lbl');
       const body = node('LBody');
@@ -175,7 +176,7 @@ function bulletStrips(
   const element = node('L');
   parent.children.push(element);
   const indent = 13;
-  return list.items.flatMap((words) => {
+  const strips = list.items.flatMap((words) => {
     const item = node('LI');
     const body = node('LBody');
     item.children.push(body);
@@ -208,6 +209,8 @@ function bulletStrips(
           },
     );
   });
+  if (list.together !== true) return strips;
+  return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));
 }
 
 function numberedStrips(
@@ -301,7 +304,7 @@ function signOffStrips(
     frame,
     parent,
     set,
-    36,
+    33,
   );
   // The whole block is signed at once: it never spans two pages.
   return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));

@@ -7,7 +7,7 @@ export const ink = '#1a1a17';
 export const softInk = '#55534c';
 export const hairline = '#b9b5a8';
 export const accent = '#1f4a5f';
-export const markGrey = '#e4e2dc';
+export const markGrey = '#edebe6';
 
 export interface Paper {
   readonly width: number;

@@ -8,6 +8,8 @@ export interface StructureNode {
   readonly type: string;
   readonly alt?: string;
   readonly scope?: 'Column' | 'Row';
+  /** Rows of a table that a row header stands for, when more than one. */
+  readonly rowSpan?: number;
   /** Title of a bookmark that leads here. */
   readonly bookmark?: string;
   readonly children: StructureNode[];

@@ -82,8 +82,18 @@ export function tableStrips(
   if (table.rows.length === 0) {
     const paragraph: StructureNode = { type: 'P', children: [] };
     parent.children.push(paragraph);
-    const words = [{ text: `${table.caption}: `, strong: true as const }, { text: table.empty }];
-    return textStrips(words, looks.note, frame, paragraph, set, 5);
+    const words: Words =
+      table.caption === ''
+        ? table.empty
+        : [{ text: `${table.caption}: `, strong: true }, { text: table.empty }];
+    return textStrips(
+      words,
+      table.caption === '' ? looks.body : looks.note,
+      frame,
+      paragraph,
+      set,
+      5,
+    );
   }
   parent.children.push(node);
   if (table.caption !== '') node.children.push(caption);
@@ -140,77 +150,126 @@ export function tableStrips(
     })),
     table.caption === '' ? { ...head(true), before: 4 } : head(true),
   ];
-  const repeated = head(false);
-  table.rows.forEach((row, rowIndex) => {
-    const next = table.rows[rowIndex + 1];
+  const setting = { body, frame, set, repeated: head(false), place, leastHeight: leastRowHeight };
+  const groups = rowGroups(table.rows);
+  groups.forEach((rows, index) => {
+    const last = index === groups.length - 1;
+    const under = groupStrips(rows, table.columns.length, setting, last);
+    // The first rows stay with the head, so that a head never stands alone.
     strips.push(
-      ...rowStrips(row, rowIndex, {
-        body,
-        frame,
-        set,
-        repeated,
-        place,
-        columns: table.columns.length,
-        leastHeight: leastRowHeight,
-        ruled: next?.continues !== true,
-        last: next === undefined,
-      }),
+      ...under.map((strip) => (index === 0 && !last ? { ...strip, keepWithNext: true } : strip)),
     );
   });
   return strips;
 }
 
-interface RowSetting {
+/** Each row with those that continue it. */
+function rowGroups(rows: readonly TableRow[]): TableRow[][] {
+  const groups: TableRow[][] = [];
+  for (const row of rows) {
+    const open = groups.at(-1);
+    if (row.continues === true && open !== undefined) open.push(row);
+    else groups.push([row]);
+  }
+  return groups;
+}
+
+interface Setting {
   readonly body: StructureNode;
   readonly frame: Frame;
   readonly set: Typesetter;
   readonly repeated: Strip;
   readonly place: (index: number) => { x: number; width: number; align: 'left' | 'right' };
-  readonly columns: number;
   readonly leastHeight: number;
-  readonly ruled: boolean;
-  readonly last: boolean;
 }
 
-/** One strip per row; a row longer than a page is divided between lines. */
-function rowStrips(row: TableRow, rowIndex: number, setting: RowSetting): Strip[] {
-  const { frame, set, repeated, place } = setting;
-  const rowNode: StructureNode = { type: 'TR', children: [] };
-  setting.body.children.push(rowNode);
-  const cells = Array.from({ length: setting.columns }, (_, index): Cell => {
-    const node: StructureNode =
-      index === 0 ? { type: 'TH', scope: 'Row', children: [] } : { type: 'TD', children: [] };
-    rowNode.children.push(node);
-    const words: Words = row.cells[index] ?? '';
-    const look = index === 0 ? looks.cellStrong : looks.cell;
-    return { ...place(index), look, lines: setLines(words, look, place(index).width, set), node };
-  });
-  const count = Math.max(1, ...cells.map((cell) => cell.lines.length));
+/** One strip per row under a common first cell; a row longer than a page is divided between lines. */
+function groupStrips(
+  rows: readonly TableRow[],
+  columns: number,
+  setting: Setting,
+  last: boolean,
+): Strip[] {
+  const { frame, set, place } = setting;
   const leading = looks.cell.leading;
-  const mostLines = Math.max(
-    1,
-    Math.floor((frame.pageHeight - repeated.height - 2 * padding) / leading),
-  );
-  const strips: Strip[] = [];
-  for (let from = 0; from < count; from += mostLines) {
-    const to = Math.min(count, from + mostLines);
-    const height = Math.max(setting.leastHeight, (to - from) * leading + 2 * padding);
-    const ends = to === count;
-    const pieces: Piece[] = cells.map((cell) => ({
-      node: cell.node,
-      marks: cellMarks(cell, from, to, padding),
-    }));
-    if (setting.ruled || !ends) {
-      pieces.push(rule(frame, height, setting.last && ends ? 0.6 : 0.4, hairline));
-    }
-    // The first two rows stay with the head, so that a head never stands alone.
-    strips.push({
-      height,
-      before: 0,
-      keepWithNext: (rowIndex === 0 && !setting.last && ends) || !(setting.ruled || !ends),
-      pieces,
-      repeated,
+  const tallest = frame.pageHeight - setting.repeated.height;
+  const mostLines = Math.max(1, Math.floor((tallest - 2 * padding) / leading));
+  const head: StructureNode = {
+    type: 'TH',
+    scope: 'Row',
+    children: [],
+    ...(rows.length > 1 ? { rowSpan: rows.length } : {}),
+  };
+  const bands: { height: number; pieces: Piece[] }[] = [];
+  rows.forEach((row, rowIndex) => {
+    const node: StructureNode = { type: 'TR', children: rowIndex === 0 ? [head] : [] };
+    setting.body.children.push(node);
+    const cells = Array.from({ length: columns - 1 }, (_, offset): Cell => {
+      const cell: StructureNode = { type: 'TD', children: [] };
+      node.children.push(cell);
+      const { x, width, align } = place(offset + 1);
+      const lines = setLines(row.cells[offset + 1] ?? '', looks.cell, width, set);
+      return { x, width, align, lines, look: looks.cell, node: cell };
     });
+    const count = Math.max(1, ...cells.map((cell) => cell.lines.length));
+    for (let from = 0; from < count; from += mostLines) {
+      const to = Math.min(count, from + mostLines);
+      bands.push({
+        height: Math.max(setting.leastHeight, (to - from) * leading + 2 * padding),
+        pieces: cells.map((cell) => ({
+          node: cell.node,
+          marks: cellMarks(cell, from, to, padding),
+        })),
+      });
+    }
+  });
+  addFirstCell(rows[0]?.cells[0] ?? '', head, bands, setting, tallest);
+  return bands.map((band, index): Strip => {
+    const ends = index === bands.length - 1;
+    return {
+      height: band.height,
+      before: 0,
+      keepWithNext: !ends,
+      pieces: ends
+        ? [...band.pieces, rule(frame, band.height, last ? 0.6 : 0.4, hairline)]
+        : band.pieces,
+      repeated: setting.repeated,
+    };
+  });
+}
+
+/** The first cell runs down beside all rows of its group; the last row grows when it is longer. */
+function addFirstCell(
+  words: Words,
+  node: StructureNode,
+  bands: { height: number; pieces: Piece[] }[],
+  setting: Setting,
+  tallest: number,
+): void {
+  const look = looks.cellStrong;
+  const { x, width } = setting.place(0);
+  const lines = setLines(words, look, width, setting.set);
+  let missing =
+    lines.length * look.leading + 2 * padding - bands.reduce((sum, band) => sum + band.height, 0);
+  while (missing > 0.01) {
+    const band = bands.at(-1);
+    if (band !== undefined && tallest - band.height > look.leading) {
+      const grown = Math.min(missing, tallest - band.height);
+      band.height += grown;
+      missing -= grown;
+    } else {
+      bands.push({ height: 0, pieces: [] });
+    }
   }
-  return strips;
+  let top = 0;
+  for (const band of bands) {
+    const marks = lines.flatMap((line, index) => {
+      const y = padding + index * look.leading;
+      return y >= top - 0.01 && y < top + band.height - 0.01
+        ? [lineMark(line, look, x, y - top)]
+        : [];
+    });
+    if (marks.length > 0) band.pieces.unshift({ node, marks });
+    top += band.height;
+  }
 }

@@ -51,8 +51,8 @@ export function actsPart(assessment: Assessment, texts: RiskTexts): Block[] {
             items: assessment.spaces.map((space) =>
               filledText(words.spaceFacts, {
                 space: space.title,
-                volume: figureWords(space.volume).replace('\n', ' '),
-                freshAir: figureWords(space.freshAir).replace('\n', ' '),
+                volume: figureWords(space.volume).replaceAll('\n', ' '),
+                freshAir: figureWords(space.freshAir).replaceAll('\n', ' '),
               }),
             ),
           } as const,
@@ -72,7 +72,10 @@ function actRows(act: ActResult, texts: RiskTexts): TableRow[] {
     ...act.planned.map((line) => ({ caseName: 'planned' as const, line })),
     ...act.worstCredible.map((line) => ({ caseName: 'worstCredible' as const, line })),
   ];
-  const title = `${act.title}\n${filledText(words.in, { space: act.spaceTitle })}`;
+  const title = [
+    { text: `${act.title}\n`, strong: true as const },
+    { text: filledText(words.in, { space: act.spaceTitle }) },
+  ];
   if (lines.length === 0) return [{ cells: [title, '–', words.none, '–', '–', '–', '–'] }];
   return lines.map(({ caseName, line }, index) => ({
     cells: [

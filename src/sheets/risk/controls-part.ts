@@ -22,7 +22,7 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
     { kind: 'paragraph', look: 'small', words: words.intro },
     {
       kind: 'table',
-      caption: words.caption,
+      caption: '',
       empty: words.none,
       columns: [
         { title: words.control, share: 2.6, align: 'left' },
@@ -119,7 +119,7 @@ export function questionsPart(assessment: Assessment, texts: RiskTexts): Block[]
   return [
     {
       kind: 'table',
-      caption: words.caption,
+      caption: '',
       empty: words.none,
       columns: [
         { title: words.question, share: 4, align: 'left' },

@@ -14,7 +14,7 @@ import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import type { RiskTexts } from './risk-texts.js';
 
-const chartSize = { width: 720, height: 270 };
+const chartSize = { width: 600, height: 250 };
 
 /** Rows of a section that one page can hold at a legible size. */
 const mostRows = 4;

@@ -35,7 +35,7 @@ export function soundPart(assessment: Assessment, texts: RiskTexts): Block[] {
   return [
     {
       kind: 'table',
-      caption: words.caption,
+      caption: '',
       empty: words.none,
       columns: [
         { title: words.act, share: 2.2, align: 'left' },

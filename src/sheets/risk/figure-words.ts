@@ -1,11 +1,11 @@
 import type { Assessment, Figure } from '../../assessment/assessment.js';
 import { quantityText, spanText, type Rounding } from '../../web/format/figure-text.js';
 
-/** The figure for a cell: the value, and its span on a line of its own. */
+/** The figure for a cell: the value, and its span on lines of its own. */
 export function figureWords(figure: Figure, rounding?: Rounding): string {
   const span = spanText(figure);
   const value = quantityText(figure.value, figure.unit, rounding);
-  return span === undefined ? value : `${value}\n(${span})`;
+  return span === undefined ? value : `${value}\n(${span.replace(' to ', '\nto\u00a0')})`;
 }
 
 /** The figure, or a dash where there is none to show. */

@@ -11,7 +11,7 @@ export function rulesPart(assessment: Assessment, texts: RiskTexts): Block[] {
     { kind: 'paragraph', look: 'small', words: words.intro },
     {
       kind: 'table',
-      caption: words.caption,
+      caption: '',
       empty: words.none,
       columns: [
         { title: words.rule, share: 2.2, align: 'left' },
@@ -58,7 +58,7 @@ export function assumptionsPart(assessment: Assessment, texts: RiskTexts): Block
     { kind: 'paragraph', look: 'small', words: words.intro },
     {
       kind: 'table',
-      caption: words.caption,
+      caption: '',
       empty: words.none,
       columns: [
         { title: words.what, share: 3.6, align: 'left' },
@@ -79,7 +79,7 @@ export function assumptionsPart(assessment: Assessment, texts: RiskTexts): Block
 }
 
 export function validityPart(texts: RiskTexts): Block[] {
-  return [{ kind: 'list', items: texts.parts.validity.lines, empty: '' }];
+  return [{ kind: 'list', items: texts.parts.validity.lines, empty: '', together: true }];
 }
 
 /** Where it is signed, and what exactly was signed. */
@@ -95,7 +95,10 @@ export function signOffPart(assessment: Assessment, texts: RiskTexts): Block[] {
     {
       kind: 'paragraph',
       look: 'small',
-      words: `${words.identityTitle}: ${words.engine} ${assessment.engineVersion}. ${words.hash}: ${filledText(words.hashWords, { hash: assessment.inputHash })}.`,
+      words: [
+        `${words.identityTitle}: ${words.engine} ${assessment.engineVersion}.`,
+        `${words.hash}: ${filledText(words.hashWords, { hash: assessment.inputHash })}`,
+      ].join('\n'),
     },
   ];
 }

@@ -128,7 +128,6 @@ export const riskTextsSchema = Type.Object(
         section: texts('heading', 'caption'),
         sound: texts(
           'heading',
-          'caption',
           'act',
           'instrument',
           'air',
@@ -165,7 +164,6 @@ export const riskTextsSchema = Type.Object(
         controls: texts(
           'heading',
           'intro',
-          'caption',
           'control',
           'level',
           'act',
@@ -192,11 +190,10 @@ export const riskTextsSchema = Type.Object(
           'text',
           'noFindings',
         ),
-        questions: texts('heading', 'caption', 'question', 'best', 'worst', 'suffices', 'none'),
+        questions: texts('heading', 'question', 'best', 'worst', 'suffices', 'none'),
         rules: texts(
           'heading',
           'intro',
-          'caption',
           'rule',
           'edition',
           'duty',
@@ -209,7 +206,6 @@ export const riskTextsSchema = Type.Object(
         assumptions: texts(
           'heading',
           'intro',
-          'caption',
           'what',
           'figure',
           'origin',

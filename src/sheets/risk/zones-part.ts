@@ -79,24 +79,25 @@ function caseTable(zones: readonly ZoneResult[], caseName: CaseName, texts: Risk
   return { kind: 'table', caption, columns, rows, empty: words.none };
 }
 
-/** Each different set of levels once. */
+/** Each different set of levels once, with all whom it is for. */
 function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
   const words = texts.parts.zones;
-  const rows = new Map<string, TableRow>();
+  const sets = new Map<string, { title: string; kinds: Set<string>; levels: string[] }>();
   for (const zone of zones) {
-    for (const { quantityTitle, levels } of zone.quantities) {
-      if (levels.aim === null && levels.limit === null && levels.never === null) continue;
-      const cells = [
-        quantityTitle,
-        words.kinds[zone.kind],
-        ...(['aim', 'limit', 'never'] as const).map((name) => {
-          const figure = levels[name];
-          return figure === null ? '–' : levelWords(figure);
-        }),
-      ];
-      rows.set(cells.join('\n'), { cells });
+    for (const { quantityTitle: title, levels: of } of zone.quantities) {
+      if (of.aim === null && of.limit === null && of.never === null) continue;
+      const levels = [of.aim, of.limit, of.never].map((figure) =>
+        figure === null ? '–' : levelWords(figure),
+      );
+      const key = [title, ...levels].join('\n');
+      const set = sets.get(key) ?? { title, kinds: new Set(), levels };
+      set.kinds.add(words.kinds[zone.kind]);
+      sets.set(key, set);
     }
   }
+  const rows = [...sets.values()].map(({ title, kinds, levels }) => ({
+    cells: [title, [...kinds].join(', '), ...levels],
+  }));
   return {
     kind: 'table',
     caption: words.levelsCaption,
@@ -107,7 +108,7 @@ function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
       { title: texts.levels.limit, share: 1, align: 'right' },
       { title: texts.levels.never, share: 1, align: 'right' },
     ],
-    rows: [...rows.values()],
+    rows,
     empty: words.none,
   };
 }
@@ -118,7 +119,7 @@ function crossingTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
     kind: 'table',
     caption: words.crossingsCaption,
     columns: [
-      { title: words.zone, share: 2.6, align: 'left' },
+      { title: texts.parts.amounts.zone, share: 2.6, align: 'left' },
       { title: texts.parts.acts.case, share: 1.5, align: 'left' },
       { title: words.quantity, share: 1.5, align: 'left' },
       { title: words.answer, share: 1.6, align: 'left' },

@@ -63,7 +63,7 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
     animation: false,
     backgroundColor: 'transparent',
     textStyle: { fontFamily, fontSize: 11 },
-    grid: { left: 52, right: 128, top: 34, bottom: 34 },
+    grid: { left: 52, right: 108, top: 34, bottom: 34 },
     xAxis: {
       type: 'value',
       min: Math.floor(from / step) * step,
@@ -105,6 +105,7 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
           ...label,
           formatter: words.answers[series.answer],
           distance: 6,
+          lineHeight: 14,
         },
         labelLayout: { moveOverlap: 'shiftY' },
         ...(series === first

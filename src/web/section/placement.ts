@@ -31,17 +31,17 @@ export interface Placement {
   readonly rows: readonly Row[];
 }
 
-const drawingWidth = 720;
+const drawingWidth = 620;
 const side = 12;
-const rightSide = 66;
+const rightSide = 58;
 const titleRoom = 34;
 const footRoom = 20;
 /** Under a row whose pits carry their titles below. */
 const deepFootRoom = 40;
 const rowGap = 14;
-const tallest = 300;
+const tallest = 270;
 const largestScale = 150;
-const narrowestSpace = 74;
+const narrowestSpace = 70;
 
 const lengthOf = (space: SectionSpace): number => Math.max(space.lengthM, 0.5);
 /** Level of the ceiling [m]: the mean clear height stands on the mean floor. */

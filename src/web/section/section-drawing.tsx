@@ -131,6 +131,7 @@ function people(
   scale: number,
   along: { readonly left: number; readonly right: number },
   turn: number,
+  paper: string,
 ): JSX.Element[] {
   const radius = Math.min(6, Math.max(2.2, 0.11 * scale));
   const width = along.right - along.left;
@@ -146,7 +147,7 @@ function people(
         cx={two(x)}
         cy={two(y)}
         r={two(radius)}
-        fill="none"
+        fill={paper}
         stroke={accent}
         stroke-width={1}
       />,
@@ -255,29 +256,40 @@ function scaleBar(scale: number, x: number, y: number): JSX.Element[] {
   ];
 }
 
-/** The hatches that occur, each with what it means. */
-function hatchKey(view: SectionView, words: SectionWords, x: number, y: number): JSX.Element[] {
+/** The hatches that occur, each with what it means, in as many lines as they need. */
+function hatchKey(
+  view: SectionView,
+  words: SectionWords,
+  at: { readonly x: number; readonly y: number; readonly right: number },
+): { readonly parts: JSX.Element[]; readonly bottom: number } {
   const used = (['floor', 'ceiling', 'whole'] as const).filter((at) =>
     view.layers.some((layer) => layer.at === at),
   );
-  let left = x;
-  return used.flatMap((at) => {
+  let left = at.x;
+  let y = at.y;
+  const parts = used.flatMap((position) => {
+    const text = words.layers[position];
+    const width = 32 + drawnWidth(text, small);
+    if (left > at.x && left + width > at.right) {
+      left = at.x;
+      y += 19;
+    }
     const box = [
       { x: left, y: y - 11 },
       { x: left + 26, y: y - 11 },
       { x: left + 26, y: y + 2 },
       { x: left, y: y + 2 },
     ];
-    const hatch = hatches[at];
-    const text = words.layers[at];
-    const parts = [
+    const hatch = hatches[position];
+    const drawn = [
       stroke(hatchPath(box, hatch.angleDeg, hatch.spacing), softInk, 0.9, hatch.dash),
       stroke(polygonPath(box), softInk, 0.8),
       label({ x: left + 32, y, text, fontSize: small }),
     ];
-    left += 32 + drawnWidth(text, small) + 20;
-    return parts;
+    left += width + 14;
+    return drawn;
   });
+  return { parts, bottom: y };
 }
 
 /** The venue as a vertical cut, to scale, with breathing heights, gas and the lowest oxygen. */
@@ -331,7 +343,8 @@ function drawnSection(
     }),
   ]);
   const barY = placement.height + 12;
-  const keyTop = barY + 36;
+  const hatched = hatchKey(view, words, { x: 176, y: barY + 2, right: placement.width });
+  const keyTop = Math.max(barY + 36, hatched.bottom + 24);
   const drawnKey = keyLines(key, keyTop, placement.width);
   const height = keyTop + drawnKey.height - (drawnKey.height === 0 ? 12 : 4);
   const svg = (
@@ -351,7 +364,7 @@ function drawnSection(
       {heights}
       {view.spaces.length === 0
         ? label({ x: 12, y: 24, text: words.empty })
-        : [...scaleBar(placement.scale, 12, barY), ...hatchKey(view, words, 220, barY + 2)]}
+        : [...scaleBar(placement.scale, 12, barY), ...hatched.parts]}
       {drawnKey.lines}
     </svg>
   );
@@ -415,6 +428,7 @@ function spaceContents(
     );
   };
 
+  const layerLabels: { text: string; at: keyof typeof hatches; polygon: readonly Point[] }[] = [];
   for (const layer of view.layers.filter((entry) => entry.space === placed.space.id)) {
     const hatch = hatches[layer.at];
     const edge =
@@ -427,17 +441,7 @@ function spaceContents(
         : polygonPart(own.polygon, edge, layer.at === 'floor' ? 'below' : 'above');
     gas.push(stroke(hatchPath(polygon, hatch.angleDeg, hatch.spacing), softInk, 0.9, hatch.dash));
     if (layer.at !== 'whole') gas.push(stroke(polygonPath(polygon), softInk, 0.8));
-    const text = `gas ${figureText(layer.gasFraction)}`;
-    const width = drawnWidth(text, size);
-    if (width <= room) {
-      const middle = polygon.reduce((sum, point) => sum + point.y, 0) / Math.max(1, polygon.length);
-      const y = layer.at === 'ceiling' ? own.roofY + 11 : Math.min(middle, lowest - 9);
-      const box = freeBox({ y, width, height: lineHeight }, within, taken, 'left');
-      if (box !== null) {
-        taken.push(box);
-        boxed(box, text, false);
-      }
-    }
+    layerLabels.push({ text: `gas ${figureText(layer.gasFraction)}`, at: layer.at, polygon });
   }
 
   const zones = view.zones
@@ -479,7 +483,7 @@ function spaceContents(
       };
     taken.push(box);
     heights.push(stroke(segment(along.left + 2, y, along.right - 2, y), accent, 1, '6 3'));
-    heights.push(...people(own, y, scale, along, turn));
+    heights.push(...people(own, y, scale, along, turn, setting.paper));
     if (Math.abs(box.y - y) > 1) {
       const x = Math.min(box.x + box.width / 2, along.right - 4);
       const edge = box.y + (box.y < y ? 1 : -1) * (lineHeight / 2);
@@ -487,6 +491,21 @@ function spaceContents(
     }
     boxed(box, text, true);
   });
+
+  // Zones come first: their numbers decide. A gas label without a place goes to the key.
+  for (const { text, at, polygon } of layerLabels) {
+    const width = drawnWidth(text, size);
+    const middle = polygon.reduce((sum, point) => sum + point.y, 0) / Math.max(1, polygon.length);
+    const y = at === 'ceiling' ? own.roofY + 11 : Math.min(middle, lowest - 9);
+    const box =
+      width <= room ? freeBox({ y, width, height: lineHeight }, within, taken, 'left') : null;
+    if (box === null) {
+      setting.key.push({ sign: '', text: `${placed.space.title}: ${text}` });
+    } else {
+      taken.push(box);
+      boxed(box, text, false);
+    }
+  }
 
   floorLabel(placed, own, { within, taken, room, boxed: labels, paper: setting.paper });
   return { gas, heights: [...heights, ...labels] };
