@@ -260,6 +260,9 @@ describe('renderRiskSheet at the edges', () => {
       expect(placed.y, placed.text).toBeGreaterThan(24);
     }
     const all = texts.map((placed) => placed.text).join(' ');
+    // A word without an end is divided; the figures beside it stay whole.
+    expect(all.replaceAll('\u00a0', ' ')).toContain('10.0 kg');
+    expect(all).toContain('Carbon dioxide');
     expect(all).toContain('αμφιθέατρο');
     expect(all).toContain('тумана');
     expect(all).toContain('Żółta');

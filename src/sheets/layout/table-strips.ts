@@ -6,6 +6,8 @@ import { lineMark, textStrips } from './text-strips.js';
 
 const gutter = 9;
 const padding = 3.6;
+/** Width any word may claim [points]: enough for a figure with its unit. */
+const leastClaim = 62;
 
 interface Frame {
   readonly x: number;
@@ -29,7 +31,9 @@ export function columnWidths(
   const least = columns.map((column, index) => {
     const look = index === 0 ? looks.cellStrong : looks.cell;
     const words = rows.map((row) => textExtent(row.cells[index] ?? '', look, set).word);
-    return Math.max(textExtent(column.title, looks.tableHead, set).word, ...words) + 0.5;
+    const longest = Math.max(textExtent(column.title, looks.tableHead, set).word, ...words) + 0.5;
+    // One endless word must not starve the other columns: beyond this it is divided.
+    return Math.min(longest, Math.max((wanted[index] ?? 0) * 1.3, leastClaim));
   });
   const widths = wanted.map((width, index) => Math.max(width, least[index] ?? 0));
   // What the wide words took is given back by the columns that have room to spare.

@@ -9,7 +9,7 @@ import type { RiskTexts } from './risk-texts.js';
 export function actsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.acts;
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'table',
       caption: words.caption,

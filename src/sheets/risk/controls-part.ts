@@ -19,7 +19,7 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
     (one, other) => levelOrder.indexOf(one.level) - levelOrder.indexOf(other.level),
   );
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'table',
       caption: '',
@@ -52,7 +52,7 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
 export function conditionsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.conditions;
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'numbered',
       empty: words.none,

@@ -8,7 +8,7 @@ import type { RiskTexts } from './risk-texts.js';
 export function rulesPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.rules;
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'table',
       caption: '',
@@ -55,7 +55,7 @@ export function cautionsPart(assessment: Assessment, texts: RiskTexts): Block[] 
 export function assumptionsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.assumptions;
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'table',
       caption: '',

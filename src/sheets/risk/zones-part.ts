@@ -26,7 +26,7 @@ export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
       : [filledText(words.notComputed, { zone: zone.title, words: zone.notComputed })],
   );
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro },
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     ...(used.length === 0
       ? [{ kind: 'paragraph', look: 'body', words: words.none } as const]
       : used.map((caseName) => caseTable(zones, caseName, texts))),
