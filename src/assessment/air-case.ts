@@ -5,7 +5,12 @@ import type {
   AirRelease,
   AirSystem,
 } from '../science/room-air/air-input.js';
-import type { ResolvedGroup, ResolvedPlan, ResolvedRelease } from './resolved-plan.js';
+import type {
+  ResolvedGroup,
+  ResolvedPlan,
+  ResolvedRelease,
+  ResolvedSpace,
+} from './resolved-plan.js';
 
 /** People are in their places this long before a performance begins. */
 const doorsBeforeS = 600;
@@ -13,6 +18,9 @@ const doorsBeforeS = 600;
 const afterDayS = 1800;
 /** A worst credible release is followed this long. */
 const afterWorstS = 3600;
+
+/** A free volume below this share of the shape narrows the plan area. */
+const fullEnough = 0.86;
 
 /** One release placed in the day: absolute start, and the act or container it belongs to. */
 export interface PlacedRelease {
@@ -164,6 +172,15 @@ function releaseOf({ release, startS, episode }: PlacedRelease, window: DayWindo
   };
 }
 
+/**
+ * Share of the plan area that counts as free. What stands in a room takes its part at every height;
+ * where it takes much, the area is narrowed instead of contradicting the measured volume.
+ */
+function freeShare(space: ResolvedSpace): number {
+  const share = space.volumeM3 / space.shapeVolumeM3;
+  return share < fullEnough ? share : 1;
+}
+
 /** Seconds between results: fine enough for a one-minute mean, coarse enough for a long day. */
 export function outputInterval(window: DayWindow): number {
   return window.endS - window.startS > 4 * 3600 ? 60 : 30;
@@ -188,12 +205,16 @@ export function airCase(
     outputIntervalS: outputInterval(window),
     spaces: plan.spaces.map((space) => ({
       id: space.id,
-      floorAreaM2: space.floorAreaM2,
+      floorAreaM2: space.floorAreaM2 * freeShare(space),
       heightM: space.heightM,
       floorLevelM: space.floorLevelM,
       volumeM3: space.volumeM3,
       ...(space.floorRiseM > 0 ? { floorRiseM: space.floorRiseM } : {}),
-      ...(space.steps.length > 0 ? { steps: space.steps } : {}),
+      ...(space.steps.length > 0
+        ? {
+            steps: space.steps.map((step) => ({ ...step, areaM2: step.areaM2 * freeShare(space) })),
+          }
+        : {}),
       ...(space.pockets.length > 0 ? { pockets: space.pockets } : {}),
       ...optional('temperatureK', space.temperatureK),
       ...optional('initial', space.initial),

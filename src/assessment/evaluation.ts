@@ -1,3 +1,4 @@
+import { InvalidInput } from '../errors.js';
 import type { AirGasTable } from '../science/room-air/air-gases.js';
 import type { AirResult } from '../science/room-air/air-result.js';
 import { airRun } from '../science/room-air/air-run.js';
@@ -45,6 +46,24 @@ export interface Evaluation {
   readonly levelsOf: (group: ResolvedGroup) => readonly JudgedLevel[];
 }
 
+/** The air model on one case; what it refuses is told with the place in the plan. */
+function airAnswer(air: AirCase, gases: AirGasTable, displacement?: 'straight'): AirResult {
+  try {
+    return airRun(air.input, gases, displacement ? { displacement } : {});
+  } catch (thrown) {
+    if (!(thrown instanceof InvalidInput)) throw thrown;
+    const details = thrown.details.map(({ path, problem }) => ({ path: `/venue${path}`, problem }));
+    const [first] = details;
+    throw new InvalidInput(
+      first
+        ? `The venue does not hold together at ${first.path}: ${first.problem}.`
+        : thrown.message,
+      thrown.hint,
+      details,
+    );
+  }
+}
+
 function outcomesOf(
   air: AirCase,
   exact: AirResult,
@@ -53,7 +72,7 @@ function outcomesOf(
   resolved: ResolvedPlan,
   levelsOf: Evaluation['levelsOf'],
 ): readonly ZoneOutcome[] {
-  const straight = airRun(air.input, gases, { displacement: 'straight' });
+  const straight = airAnswer(air, gases, 'straight');
   return zoneOutcomes(air, exact, straight, caseName, resolved.groups, levelsOf);
 }
 
@@ -99,13 +118,13 @@ export function evaluation(
   const day = dayWindow(resolved);
   const dayReleases = plannedReleases(resolved);
   const dayAir = airCase(resolved, dayReleases, day, false);
-  const dayResult = airRun(dayAir.input, gases);
+  const dayResult = airAnswer(dayAir, gases);
   const planned = outcomesOf(dayAir, dayResult, gases, 'planned', resolved, levelsOf);
 
   const hasFans = resolved.airSystems.length > 0;
   const stillAir = airCase(resolved, dayReleases, day, true);
   const fansOff = hasFans
-    ? outcomesOf(stillAir, airRun(stillAir.input, gases), gases, 'fansOff', resolved, levelsOf)
+    ? outcomesOf(stillAir, airAnswer(stillAir, gases), gases, 'fansOff', resolved, levelsOf)
     : planned.map((outcome) => ({ ...outcome, caseName: 'fansOff' as const }));
 
   const worst = worstReleases(resolved, policy).map((one) => {
@@ -115,7 +134,7 @@ export function evaluation(
     const air = airCase(resolved, [...before, ...one.placed], worstWindow(day, one.startS), false);
     const outcomes = outcomesOf(
       air,
-      airRun(air.input, gases),
+      airAnswer(air, gases),
       gases,
       'worstCredible',
       resolved,

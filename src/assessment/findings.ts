@@ -42,10 +42,9 @@ type Find = (code: string, kind: FindingKind, path: string, text: string) => voi
 function spaceFindings(plan: PlanFile, resolved: ResolvedPlan, policy: Policy, find: Find): void {
   resolved.spaces.forEach((space, index) => {
     const path = `/venue/spaces/${String(index)}`;
-    const gross = space.floorAreaM2 * space.heightM;
+    const gross = space.shapeVolumeM3;
     const stated = plan.venue.spaces[index]?.volumeM3 !== undefined;
-    const stepped = space.steps.length > 0 || space.floorRiseM > 0;
-    if (stated && space.volumeM3 > gross * (1 + (stepped ? limits.volumeMismatch : 0))) {
+    if (stated && space.volumeM3 > gross) {
       find(
         'volume-above-gross',
         'plausibility',

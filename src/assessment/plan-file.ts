@@ -54,7 +54,7 @@ export const spaceSchema = Type.Object(
     title: optional(title),
     kind: optional(words(40, 'room type of the policy, for defaults')),
     floorAreaM2: figure('plan area of the floor'),
-    heightM: figure('mean clear height'),
+    heightM: figure('ceiling above the lowest floor'),
     floorLevelM: optional(figure('lowest floor above the datum of the venue; default 0')),
     floorRiseM: optional(figure('raked floor: rise to its highest point')),
     steps: optional(

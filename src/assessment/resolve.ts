@@ -113,10 +113,18 @@ function resolvedSite(plan: PlanFile, { reader, policy }: ResolveContext): Resol
   };
 }
 
-/** Volume of the plain shape: plan area times mean height, pockets added. */
-function grossVolume(space: PlanSpace, floorAreaM2: number, heightM: number): number {
+/** Volume of the plain shape: plan area times height over its mean floor, pockets added. */
+function grossVolume(
+  space: PlanSpace,
+  floorAreaM2: number,
+  heightM: number,
+  floorLevelM: number,
+  floorRiseM: number,
+): number {
   const pockets = (space.pockets ?? []).reduce((sum, one) => sum + one.areaM2 * one.depthM, 0);
-  return floorAreaM2 * heightM + pockets;
+  const steps = space.steps ?? [];
+  const raised = steps.reduce((sum, one) => sum + one.areaM2 * (one.levelM - floorLevelM), 0);
+  return floorAreaM2 * (heightM - floorRiseM / 2) - raised + pockets;
 }
 
 function resolvedSpace(space: PlanSpace, index: number, context: ResolveContext): ResolvedSpace {
@@ -126,7 +134,17 @@ function resolvedSpace(space: PlanSpace, index: number, context: ResolveContext)
     reader.number(raw, `${path}/${key}`, how);
   const floorAreaM2 = read(space.floorAreaM2, 'floorAreaM2', spec(planRanges.floorAreaM2, 'low'));
   const heightM = read(space.heightM, 'heightM', spec(planRanges.heightM, 'low'));
-  const gross = grossVolume(space, floorAreaM2, heightM);
+  const floorLevelM = read(
+    space.floorLevelM,
+    'floorLevelM',
+    spec(planRanges.floorLevelM, 'low', constant(0, 'floor at the datum of the venue')),
+  );
+  const floorRiseM = read(
+    space.floorRiseM,
+    'floorRiseM',
+    spec(planRanges.floorRiseM, 'high', constant(0, 'level floor')),
+  );
+  const gross = grossVolume(space, floorAreaM2, heightM, floorLevelM, floorRiseM);
   const furniture = policyDefault(policy, 'furnitureShare');
   const net = gross * (1 - furniture.value);
   const volumeM3 = read(
@@ -146,19 +164,12 @@ function resolvedSpace(space: PlanSpace, index: number, context: ResolveContext)
     kind: space.kind ?? null,
     floorAreaM2,
     heightM,
-    floorLevelM: read(
-      space.floorLevelM,
-      'floorLevelM',
-      spec(planRanges.floorLevelM, 'low', constant(0, 'floor at the datum of the venue')),
-    ),
-    floorRiseM: read(
-      space.floorRiseM,
-      'floorRiseM',
-      spec(planRanges.floorRiseM, 'high', constant(0, 'level floor')),
-    ),
+    floorLevelM,
+    floorRiseM,
     steps: space.steps ?? [],
     pockets: space.pockets ?? [],
     volumeM3,
+    shapeVolumeM3: gross,
     temperatureK:
       space.temperatureK === undefined
         ? null

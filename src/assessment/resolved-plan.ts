@@ -30,6 +30,8 @@ export interface ResolvedSpace {
     readonly at: 'high' | 'low';
   }[];
   readonly volumeM3: number;
+  /** Volume of the shape before furniture and seats are taken off. */
+  readonly shapeVolumeM3: number;
   readonly temperatureK: number | null;
   readonly initial: Readonly<Record<string, number>> | null;
   readonly occupied: boolean;

@@ -14,8 +14,11 @@ export interface SidesFlow {
   readonly bToAM3PerS: number;
 }
 
-/** Relative density difference below which the two sides count as equal. */
-const EQUAL_DENSITY = 1e-9;
+/**
+ * Relative density difference (some 4 ppm of carbon dioxide) below which the exchange falls off
+ * linearly instead of by the root. A hard stop there would switch the flow on and off for ever.
+ */
+const SMALL_DIFFERENCE = 1e-6;
 
 /** Integral over a span of sqrt(2 |dp|) for a pressure difference linear in height. */
 function speedIntegral(lowDp: number, highDp: number, spanM: number): number {
@@ -80,14 +83,33 @@ export function verticalOpeningFlows(
   netM3PerS: number,
 ): SidesFlow {
   const area = openings.reduce((sum, one) => sum + one.effectiveWidthM * one.heightM, 0);
-  const slope = GRAVITY_M_PER_S2 * (densityA - densityB);
-  const difference = Math.abs(densityA - densityB) / (densityA + densityB);
-  if (area <= 0 || difference < EQUAL_DENSITY) {
+  const oneWay = { aToBM3PerS: Math.max(0, netM3PerS), bToAM3PerS: Math.max(0, -netM3PerS) };
+  if (area <= 0) return oneWay;
+  const sum = densityA + densityB;
+  const difference = (densityA - densityB) / sum;
+  if (Math.abs(difference) < SMALL_DIFFERENCE) {
+    if (difference === 0) return oneWay;
+    const half = 0.5 * sum * SMALL_DIFFERENCE * Math.sign(difference);
+    const flows = differingSides(openings, area, 0.5 * sum + half, 0.5 * sum - half, netM3PerS);
+    const exchange =
+      (Math.min(flows.aToBM3PerS, flows.bToAM3PerS) * Math.abs(difference)) / SMALL_DIFFERENCE;
     return {
-      aToBM3PerS: Math.max(0, netM3PerS),
-      bToAM3PerS: Math.max(0, -netM3PerS),
+      aToBM3PerS: oneWay.aToBM3PerS + exchange,
+      bToAM3PerS: oneWay.bToAM3PerS + exchange,
     };
   }
+  return differingSides(openings, area, densityA, densityB, netM3PerS);
+}
+
+/** The balance of pressures for two sides whose densities differ for certain. */
+function differingSides(
+  openings: readonly VerticalOpening[],
+  area: number,
+  densityA: number,
+  densityB: number,
+  netM3PerS: number,
+): SidesFlow {
+  const slope = GRAVITY_M_PER_S2 * (densityA - densityB);
   const bottom = Math.min(...openings.map((one) => one.sillM));
   const top = Math.max(...openings.map((one) => one.sillM + one.heightM));
   // Between these two pressures lies any balance whose net flow is not beyond pure one-way flow.
