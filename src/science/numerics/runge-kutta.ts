@@ -43,7 +43,7 @@ const ERROR = [71 / 57600, 0, -71 / 16695, 71 / 1920, -17253 / 339200, 22 / 525,
  * @param t0  start [s]
  * @param t1  end [s], not before the start
  * @param options tolerances and the longest step
- * @param onStep called after each accepted step
+ * @param onStep called after each accepted step; a state it returns takes the place of the new one
  * @returns state at t1
  * @throws {NotComputable} when the step shrinks to nothing
  * Source: dormand-prince-1980, table 2. Assumes: a smooth derivative inside the span (break the
@@ -55,7 +55,7 @@ export function integratedState(
   t0: number,
   t1: number,
   options: RungeKuttaOptions,
-  onStep?: (step: AcceptedStep) => void,
+  onStep?: (step: AcceptedStep) => Float64Array | undefined,
 ): Float64Array {
   const n = y0.length;
   let y = Float64Array.from(y0);
@@ -71,7 +71,12 @@ export function integratedState(
       throw new NotComputable(
         'The time integration did not get through.',
         'Shorten the span or look for a flow that is out of proportion.',
-        [{ path: '', problem: `stopped at ${String(t)} s` }],
+        [
+          {
+            path: '',
+            problem: `stopped at ${String(t)} s after ${String(count)} steps, step ${String(step)} s`,
+          },
+        ],
       );
     }
     const last = t + step >= t1 * (1 - 1e-15) && t + step * (1 + 1e-9) >= t1;
@@ -100,7 +105,7 @@ export function integratedState(
     if (worst <= 1) {
       const next = Float64Array.from(trial);
       const t1Step = last ? t1 : t + h;
-      onStep?.({
+      const replaced = onStep?.({
         t0: t,
         t1: t1Step,
         y0: y,
@@ -108,9 +113,14 @@ export function integratedState(
         f0: Float64Array.from(slope(0)),
         f1: Float64Array.from(slope(6)),
       });
-      y = next;
       t = t1Step;
-      slope(0).set(slope(6));
+      if (replaced) {
+        y = Float64Array.from(replaced);
+        f(t, y, slope(0));
+      } else {
+        y = next;
+        slope(0).set(slope(6));
+      }
     }
     const factor = worst > 0 ? 0.9 * worst ** -0.2 : 5;
     const base = last && worst <= 1 ? step : h;

@@ -57,6 +57,9 @@ export const DISCHARGE_COEFFICIENTS = {
 /** Area of gaps per flow of fresh air [m2 per m3/s]: about 3 m/s through gaps at 5 to 10 Pa. */
 const GAP_AREA_PER_FLOW = 0.2;
 
+/** Fresh air of a closed group below which its gaps are taken to lie everywhere [m3/s]. */
+const LEAST_KNOWN_FLOW = 1e-9;
+
 export function isActive(one: Timed, t: number): boolean {
   return t >= (one.fromS ?? 0) && t < (one.toS ?? Infinity);
 }
@@ -134,7 +137,7 @@ function leakAreas(model: AirModel, links: readonly OpenLink[], known: Float64Ar
     if (root(i) === root(n)) continue;
     let total = 0;
     for (let j = 0; j < n; j++) if (root(j) === root(i)) total += known[j] ?? 0;
-    if (total > 0) continue;
+    if (total > LEAST_KNOWN_FLOW) continue;
     leaks[i] = (model.spaces[i]?.capacityM3 ?? 1) * 1e-6;
   }
   return leaks;

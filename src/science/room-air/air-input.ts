@@ -128,6 +128,8 @@ export interface AirOccupants extends Timed {
   readonly carbonDioxideM3PerS?: number;
   /** Carbon dioxide out per oxygen in, by volume; default 0.85. */
   readonly respiratoryQuotient?: number;
+  /** Mouths above the lowest floor; where not given they breathe the air above the layers. */
+  readonly heightM?: number;
 }
 
 export interface AirZone {

@@ -15,6 +15,16 @@ import { FALLEN_HEIGHT_M, OXYGEN_IN_DRY_AIR } from './air-constants.js';
 import type { Displacement } from './air-flows.js';
 import { airModel, OXYGEN, type AirModel } from './air-model.js';
 import { crossingsOf, gasMaxima, oxygenMinimum, type AnswerTrack } from './answer-track.js';
+import {
+  layerCase,
+  layeredRows,
+  layerMouth,
+  layersRun,
+  spaceLayers,
+  type LayerCase,
+} from './layered-answer.js';
+import { adverseLayers, usualLayers, type LayerParameters } from './layer-parameters.js';
+import type { LayerTrack } from './layered-track.js';
 import { mixedTrack } from './mixed-track.js';
 import {
   pieceRows,
@@ -40,6 +50,8 @@ import {
 export interface AirRunOptions {
   /** `straight`: the form in which a release only replaces air (the decision's M). */
   readonly displacement?: Displacement;
+  /** False leaves the two-layer answer out; it never stands beside the straight form. */
+  readonly layered?: boolean;
 }
 
 /**
@@ -85,12 +97,19 @@ export function airRun(
   };
   const mixed = model.spaces.map((_, space) => mixedAnswer(model, runs, space));
   const depths = purePoolDepths(model, releases);
+  const layers =
+    displacement === 'pushOut' && (options.layered ?? true)
+      ? layerRuns(model, gases, mixed[0])
+      : undefined;
   const spaces: Record<string, SpaceAir> = {};
   for (const [i, space] of model.spaces.entries()) {
     const track = mixed[i];
     if (!track) continue;
     spaces[space.id] = {
       mixed: seriesOf(model, track, timesS),
+      ...(layers
+        ? { layered: spaceLayers(layers.one, layers.usual.track, i, model.gases, timesS) }
+        : {}),
       purePoolDepthM: depths[i] ?? 0,
     };
   }
@@ -101,7 +120,16 @@ export function airRun(
     const track = mixed[index];
     const series = spaces[zone.space]?.mixed;
     if (!track || !series) continue;
-    const place = { model, runs, releases, zone, mixed: track, mixedSeries: series, timesS };
+    const place = {
+      model,
+      runs,
+      releases,
+      zone,
+      mixed: track,
+      mixedSeries: series,
+      timesS,
+      layers,
+    };
     zones[zone.id] = {
       ...heightAnswer(place, zone.heightM, crossings),
       at02M: heightAnswer(place, FALLEN_HEIGHT_M, crossings),
@@ -157,6 +185,40 @@ interface ZonePlace {
   readonly mixed: AnswerTrack;
   readonly mixedSeries: AirSeries;
   readonly timesS: readonly number[];
+  readonly layers: LayerRuns | undefined;
+}
+
+interface LayerRun {
+  readonly parameters: LayerParameters;
+  readonly track: LayerTrack;
+}
+
+/** The usual two-layer run and those without any mixing. */
+interface LayerRuns {
+  readonly one: LayerCase;
+  readonly usual: LayerRun;
+  readonly adverse: readonly LayerRun[];
+}
+
+function layerRuns(model: AirModel, gases: AirGasTable, rows: AnswerTrack | undefined): LayerRuns {
+  const one = layerCase(model, gases);
+  const times = new Set(rows?.pieces.flatMap((piece) => piece.rows.map((row) => row.t)) ?? []);
+  const timesS = [...times].sort((a, b) => a - b);
+  const { network } = one;
+  const overrides = model.input.layers ?? {};
+  const hasFalls = network.weirs.some((weir) => weir.b >= 0 && weir.sillA !== weir.sillB);
+  const run = (parameters: LayerParameters): LayerRun => ({
+    parameters,
+    track: layersRun(one, parameters, timesS),
+  });
+  return {
+    one,
+    usual: run(usualLayers(overrides)),
+    adverse:
+      network.layers.length === 0
+        ? []
+        : adverseLayers(overrides, hasFalls, network.groupVolumesM3.length > 1).map(run),
+  };
 }
 
 function boundAnswer(place: ZonePlace, mouth: BoundMouth): AnswerTrack {
@@ -218,25 +280,74 @@ function heightAnswer(place: ZonePlace, heightM: number, crossings: Crossing[]):
     heightM,
   );
   const bound = boundAnswer(place, mouth);
+  const layered = layeredAnswers(place, mouth, bound);
+  const answers = [
+    ['mixed', mixed],
+    ['bound', bound],
+    ...(layered ? ([['layered', layered.usual]] as const) : []),
+  ] as const;
   for (const { quantity, value } of model.input.thresholds ?? []) {
     const column = quantity === 'oxygenFraction' ? 0 : model.gases.indexOf(quantity) + 1;
     if (quantity !== 'oxygenFraction' && column === 0) continue;
-    for (const [answer, track] of [
-      ['mixed', mixed],
-      ['bound', bound],
-    ] as const) {
+    for (const [answer, track] of answers) {
       for (const found of crossingsOf(track, column, value)) {
         crossings.push({ zone: zone.id, heightM, answer, quantity, value, ...found });
       }
     }
   }
-  return {
+  const common = {
     heightM,
     mixed: mixedSeries,
     bound: seriesOf(model, bound, timesS),
-    minimum: { mixed: oxygenMinimum(mixed), bound: oxygenMinimum(bound) },
-    maximum: { mixed: gasMaxima(mixed, model.gases), bound: gasMaxima(bound, model.gases) },
   };
+  const minimum = { mixed: oxygenMinimum(mixed), bound: oxygenMinimum(bound) };
+  const maximum = {
+    mixed: gasMaxima(mixed, model.gases),
+    bound: gasMaxima(bound, model.gases),
+  };
+  if (!layered) return { ...common, minimum, maximum };
+  return {
+    ...common,
+    layered: {
+      ...seriesOf(model, layered.usual, timesS),
+      adverse: seriesOf(model, layered.adverse, timesS),
+    },
+    minimum: { ...minimum, layered: oxygenMinimum(layered.usual) },
+    maximum: { ...maximum, layered: gasMaxima(layered.usual, model.gases) },
+  };
+}
+
+/** The usual two-layer answer at a mouth, and the worst of the runs without any mixing. */
+function layeredAnswers(
+  place: ZonePlace,
+  mouth: BoundMouth,
+  bound: AnswerTrack,
+): { readonly usual: AnswerTrack; readonly adverse: AnswerTrack } | undefined {
+  const { model, zone, layers } = place;
+  if (!layers) return undefined;
+  const at = layerMouth(model, mouth, zone.floorLevelM);
+  const bounds = bound.pieces.flatMap((piece) => piece.rows);
+  const rowsOf = (run: LayerRun): AnswerTrack =>
+    layeredRows(layers.one, run.track, at, run.parameters, bounds);
+  const usual = rowsOf(layers.usual);
+  return {
+    usual,
+    adverse: worstTrack(
+      [usual, ...layers.adverse.map(rowsOf)].slice(-Math.max(1, layers.adverse.length)),
+    ),
+  };
+}
+
+/** The worse of several answers at each row; all have the same times. */
+function worstTrack(tracks: readonly AnswerTrack[]): AnswerTrack {
+  const all = tracks.map((track) => track.pieces.flatMap((piece) => piece.rows));
+  const [first = []] = all;
+  const rows = first.map((row, i): QuantityRow => ({
+    t: row.t,
+    values: all.map((one) => one[i]?.values ?? row.values).reduce(worseOf),
+    slopes: undefined,
+  }));
+  return { pieces: [{ rows, valuesAt: () => new Float64Array(0) }] };
 }
 
 /** The rows at the output times; at a jump the state after it. */

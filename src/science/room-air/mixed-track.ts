@@ -231,7 +231,10 @@ function integratedPiece(
   const from = times[0] ?? 0;
   const to = times.at(-1) ?? from;
   const options = { relative: RELATIVE, absolute: ABSOLUTE, maxStepS: MAX_STEP_S };
-  const end = integratedState(derivative, start, from, to, options, (step) => steps.push(step));
+  const end = integratedState(derivative, start, from, to, options, (step) => {
+    steps.push(step);
+    return undefined;
+  });
   const stateAt = (t: number): Float64Array => {
     if (t >= to) return end;
     const step = stepAround(steps, t);

@@ -1,0 +1,339 @@
+import { airMolarMass, diffusivityInAir, type AirGasTable } from './air-gases.js';
+import { isActive } from './air-flows.js';
+import type { AirOpening } from './air-input.js';
+import { spaceAt, type AirModel } from './air-model.js';
+import { basinOf, type Basin, type LayerSide } from './layer-geometry.js';
+import type { LowGrille } from './layer-flow.js';
+import { RELEASE_MANNERS, DEFAULT_MANNER } from './release-manner.js';
+import type { BoundRelease } from './zone-bound.js';
+
+/** What is followed in the layers: as in the mixed run, but without telling episodes apart. */
+export interface LayerComponent {
+  readonly gas: string;
+  readonly isReleased: boolean;
+  readonly excessKgPerMol: number;
+  readonly outdoors: number;
+}
+
+export interface Layer {
+  readonly space: number;
+  readonly group: number;
+  readonly side: LayerSide;
+  readonly basin: Basin;
+  /** Mean diffusivity of the gases that gather here [m2/s]. */
+  readonly diffusivityM2PerS: number;
+  /** Base (floor or ceiling) above the datum [m]. */
+  readonly baseLevelM: number;
+}
+
+/** A release as the layers take it. */
+export interface LayerSource {
+  readonly plan: BoundRelease['plan'];
+  /** Index of the layer that takes it, or -1: mixed into the upper air. */
+  readonly layer: number;
+  readonly mannerDilution: number;
+  /** A light gas that flows rises as a plume; the distance from its source to the base [m]. */
+  readonly plumeRiseM: number | undefined;
+  readonly gZero: number;
+  readonly airShare: number;
+  readonly columns: readonly { readonly column: number; readonly share: number }[];
+}
+
+/** An edge over which layers of one side pass. */
+export interface LayerWeir {
+  readonly a: number;
+  /** Layer index, or -1 for outdoors. */
+  readonly b: number;
+  readonly widthM: number;
+  /** Sill above the base of each basin, along its own direction [m]. */
+  readonly sillA: number;
+  readonly sillB: number;
+  /** Height of the opening that can face a layer, for the way outdoors [m]. */
+  readonly heightM: number;
+  readonly dischargeCoefficient: number;
+  readonly opening: AirOpening;
+}
+
+export interface LayerIntake {
+  readonly space: number;
+  readonly grille: LowGrille;
+  readonly level: 'high' | 'low' | 'mixed';
+  readonly outdoorM3PerS: number;
+  readonly recirculatedM3PerS: number;
+  readonly system: number;
+}
+
+export interface LayerSupply {
+  readonly space: number;
+  readonly level: 'high' | 'low' | 'mixed';
+  readonly freshM3PerS: number;
+  readonly recirculatedM3PerS: number;
+  readonly system: number;
+}
+
+export interface LayerNetwork {
+  readonly model: AirModel;
+  readonly components: readonly LayerComponent[];
+  /** Upper zone of each space; spaces in wide open connection share one. */
+  readonly groupOf: readonly number[];
+  readonly groupVolumesM3: readonly number[];
+  readonly layers: readonly Layer[];
+  readonly sources: readonly LayerSource[];
+  readonly weirs: readonly LayerWeir[];
+  readonly airMolarMassKgPerMol: number;
+  readonly outdoorMolarMassKgPerMol: number;
+}
+
+/** An opening of at least this area joins the upper air of both sides into one zone [m2]. */
+const SHARED_AIR_M2 = 15;
+/** A hole over at least this share of the lower floor makes it an open pit [-]. */
+const OPEN_PIT_SHARE = 0.25;
+/** A release at once is taken as lasting this long [s]: a current needs as long to form. */
+const AT_ONCE_S = 5;
+
+/** The model in which what is released at once comes within a few seconds. */
+export function withoutPulses(model: AirModel): AirModel {
+  const { durationS } = model.input;
+  const releases = model.releases.map((plan) =>
+    plan.endS <= plan.startS ? { ...plan, endS: plan.startS + AT_ONCE_S } : plan,
+  );
+  const edges = new Set(model.edgesS);
+  for (const { endS } of releases) if (endS < durationS) edges.add(endS);
+  return { ...model, releases, edgesS: [...edges].sort((a, b) => a - b) };
+}
+
+export function layerNetwork(
+  model: AirModel,
+  gases: AirGasTable,
+  releases: readonly BoundRelease[],
+): LayerNetwork {
+  const air = airMolarMass(gases);
+  const components: LayerComponent[] = model.components.slice(0, 2).map((one) => ({
+    gas: one.gas,
+    isReleased: false,
+    excessKgPerMol: one.excessKgPerMol,
+    outdoors: one.outdoors,
+  }));
+  for (const one of model.components.slice(2)) {
+    if (components.some((known) => known.isReleased && known.gas === one.gas)) continue;
+    components.push({
+      gas: one.gas,
+      isReleased: true,
+      excessKgPerMol: one.excessKgPerMol,
+      outdoors: 0,
+    });
+  }
+  const groupOf = sharedAir(model);
+  const groupCount = Math.max(...groupOf) + 1;
+  const groupVolumesM3 = Array.from({ length: groupCount }, (_, g) =>
+    model.spaces.reduce((sum, space, i) => (groupOf[i] === g ? sum + space.capacityM3 : sum), 0),
+  );
+  const layers: Layer[] = [];
+  const sides = [
+    { side: 'floor', gathering: 'below' },
+    { side: 'ceiling', gathering: 'above' },
+  ] as const;
+  for (const { side, gathering } of sides) {
+    const own = releases.filter(
+      (release) => release.gathering === gathering && release.startsLayered,
+    );
+    for (const [i, space] of model.spaces.entries()) {
+      const here = own.filter((release) => Number.isFinite(release.reachS[i] ?? Infinity));
+      if (here.length === 0) continue;
+      const scale = space.capacityM3 / space.curve.volumeM3;
+      layers.push({
+        space: i,
+        group: groupOf[i] ?? 0,
+        side,
+        basin: basinOf(space.curve, side, scale),
+        diffusivityM2PerS: meanDiffusivity(here, gases),
+        baseLevelM: space.curve.floorLevelM + (side === 'floor' ? 0 : space.curve.heightM),
+      });
+    }
+  }
+  const layerAt = (space: number, side: LayerSide): number =>
+    layers.findIndex((layer) => layer.space === space && layer.side === side);
+  const sources = releases.map((release): LayerSource => {
+    const { plan } = release;
+    const side = release.gathering === 'below' ? 'floor' : 'ceiling';
+    const layer =
+      release.gathering === 'slab' || !release.startsLayered ? -1 : layerAt(plan.space, side);
+    const manner = RELEASE_MANNERS[plan.source.manner ?? DEFAULT_MANNER];
+    const atOnce = (plan.source.durationS ?? 0) === 0 && plan.decayS === undefined;
+    const rise = spaceAt(model, plan.space).curve.heightM - (plan.source.heightM ?? 0);
+    return {
+      plan,
+      layer,
+      mannerDilution: manner.dilution,
+      plumeRiseM: layer >= 0 && side === 'ceiling' && !atOnce ? rise : undefined,
+      gZero: (9.81 * Math.abs(plan.molarMassKgPerMol - air)) / air,
+      airShare: (plan.shares as { readonly air?: number }).air ?? 0,
+      columns: Object.entries(plan.shares)
+        .filter(([gas]) => gas !== 'air')
+        .map(([gas, share]) => ({
+          column: components.findIndex((one) => one.isReleased && one.gas === gas),
+          share,
+        })),
+    };
+  });
+  const outdoor = components.reduce((sum, one) => sum + one.excessKgPerMol * one.outdoors, air);
+  return {
+    model,
+    components,
+    groupOf,
+    groupVolumesM3,
+    layers,
+    sources,
+    weirs: layerWeirs(model, layerAt),
+    airMolarMassKgPerMol: air,
+    outdoorMolarMassKgPerMol: outdoor,
+  };
+}
+
+function meanDiffusivity(releases: readonly BoundRelease[], gases: AirGasTable): number {
+  let weight = 0;
+  let sum = 0;
+  for (const { plan } of releases) {
+    for (const [gas, share] of Object.entries(plan.shares)) {
+      if (gas === 'air') continue;
+      weight += share * plan.totalM3;
+      sum += share * plan.totalM3 * diffusivityInAir(gases, gas);
+    }
+  }
+  return weight > 0 ? sum / weight : 0;
+}
+
+/** Zone number of each space: wide openings and open pits share their upper air. */
+function sharedAir(model: AirModel): readonly number[] {
+  const root = model.spaces.map((_, i) => i);
+  const find = (i: number): number => {
+    const parent = root[i] ?? i;
+    return parent === i ? i : find(parent);
+  };
+  for (const opening of model.input.openings ?? []) {
+    const a = model.indexOf.get(opening.from);
+    const b = model.indexOf.get(opening.to);
+    if (a === undefined || b === undefined) continue;
+    const area = opening.widthM * opening.heightM * (opening.openFraction ?? 1);
+    const always = (opening.fromS ?? 0) <= 0 && (opening.toS ?? Infinity) >= model.input.durationS;
+    if (!always) continue;
+    const lower = spaceAt(model, a).curve.floorLevelM < spaceAt(model, b).curve.floorLevelM ? a : b;
+    const isPit =
+      opening.kind === 'floorOpening' &&
+      area >= OPEN_PIT_SHARE * spaceAt(model, lower).curve.floorAreaM2;
+    if (isPit || (opening.kind !== 'floorOpening' && area >= SHARED_AIR_M2)) {
+      root[find(a)] = find(b);
+    }
+  }
+  const roots = [...new Set(model.spaces.map((_, i) => find(i)))];
+  return model.spaces.map((_, i) => roots.indexOf(find(i)));
+}
+
+function layerWeirs(
+  model: AirModel,
+  layerAt: (space: number, side: LayerSide) => number,
+): readonly LayerWeir[] {
+  const weirs: LayerWeir[] = [];
+  for (const opening of model.input.openings ?? []) {
+    if ((opening.openFraction ?? 1) <= 0) continue;
+    const a = model.indexOf.get(opening.from);
+    const b = model.indexOf.get(opening.to);
+    const share = opening.openFraction ?? 1;
+    for (const side of ['floor', 'ceiling'] as const) {
+      const inside = a ?? b;
+      if (inside === undefined) continue;
+      const other = a === undefined ? undefined : b;
+      const first = layerAt(inside, side);
+      const second = other === undefined ? -1 : layerAt(other, side);
+      if (first < 0 || (other !== undefined && second < 0)) continue;
+      const edge = edgeLevel(model, opening, side, inside, other);
+      const fromBase = (space: number): number => {
+        const { curve } = spaceAt(model, space);
+        return side === 'floor'
+          ? Math.max(0, edge - curve.floorLevelM)
+          : Math.max(0, curve.floorLevelM + curve.heightM - edge);
+      };
+      weirs.push({
+        a: first,
+        b: second,
+        widthM:
+          opening.kind === 'floorOpening'
+            ? 2 * share * (opening.widthM + opening.heightM)
+            : share * opening.widthM,
+        sillA: fromBase(inside),
+        sillB: other === undefined ? 0 : fromBase(other),
+        heightM: opening.heightM,
+        dischargeCoefficient: opening.dischargeCoefficient ?? 0.45,
+        opening,
+      });
+    }
+  }
+  return weirs;
+}
+
+/** Level over which (under which, for light gas) the layer passes, above the datum [m]. */
+function edgeLevel(
+  model: AirModel,
+  opening: AirOpening,
+  side: LayerSide,
+  inside: number,
+  other: number | undefined,
+): number {
+  const floor = (space: number): number => spaceAt(model, space).curve.floorLevelM;
+  if (opening.kind === 'floorOpening') {
+    const plane = other === undefined ? floor(inside) : Math.max(floor(inside), floor(other));
+    return opening.sillLevelM ?? plane;
+  }
+  const sill = opening.sillLevelM ?? floor(inside);
+  return side === 'floor' ? sill : sill + opening.heightM;
+}
+
+/** The ways by which units take air from spaces and give it, between two edges. */
+export function layerUnits(
+  model: AirModel,
+  t: number,
+): { readonly intakes: readonly LayerIntake[]; readonly supplies: readonly LayerSupply[] } {
+  const intakes: LayerIntake[] = [];
+  const supplies: LayerSupply[] = [];
+  for (const [index, system] of (model.input.airSystems ?? []).entries()) {
+    if (!isActive(system, t)) continue;
+    const served = system.serves ?? [{ space: system.space ?? '', share: 1 }];
+    const m = Math.min(1, system.effectiveness ?? 1);
+    const fresh = (system.freshAirM3PerS ?? 0) * m;
+    const balanced = system.drive === 'balanced';
+    const supply = balanced
+      ? (system.supplyM3PerS ?? system.freshAirM3PerS ?? 0) * m
+      : system.drive === 'supply'
+        ? fresh
+        : 0;
+    const exhaust = balanced
+      ? (system.extractM3PerS ?? system.freshAirM3PerS ?? 0) * m
+      : system.drive === 'extract'
+        ? fresh
+        : 0;
+    for (const { space, share } of served) {
+      const at = model.indexOf.get(space) ?? 0;
+      const recirculatedM3PerS = (system.recirculatedM3PerS ?? 0) * share;
+      intakes.push({
+        space: at,
+        level: system.extractLevel ?? 'high',
+        grille: {
+          flowM3PerS: exhaust * share + recirculatedM3PerS,
+          widthM: system.extractWidthM ?? 1,
+          topM: system.extractTopM ?? 0.3,
+        },
+        outdoorM3PerS: exhaust * share,
+        recirculatedM3PerS,
+        system: index,
+      });
+      supplies.push({
+        space: at,
+        level: system.supplyLevel ?? 'high',
+        freshM3PerS: supply * share,
+        recirculatedM3PerS,
+        system: index,
+      });
+    }
+  }
+  return { intakes, supplies };
+}
