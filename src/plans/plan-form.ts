@@ -250,8 +250,8 @@ export const actRows: RowSpec = {
     },
     { kind: 'rows', key: 'sound', rows: sound },
     { kind: 'rows', key: 'inhaled', rows: inhaled },
-    { kind: 'check', key: 'recovery', label: words.acts.recovery },
-    { kind: 'check', key: 'writtenAuthority', label: words.acts.authority },
+    { kind: 'yesNo', key: 'recovery', label: words.acts.recovery, ...words.yesNo },
+    { kind: 'yesNo', key: 'writtenAuthority', label: words.acts.authority, ...words.yesNo },
     { kind: 'longText', key: 'note', label: words.acts.note },
   ],
 };
@@ -261,6 +261,7 @@ const performances: RowSpec = {
   noun: words.event.performance,
   empty: words.event.noPerformance,
   heading: ['startsAt', 'durationMin'],
+  within: true,
   flat: true,
   fields: [
     { kind: 'clock', key: 'startsAt', label: words.event.startsAt, required: true },

@@ -15,6 +15,7 @@ import {
   WordsByPart,
   Workings,
 } from './result-tables.js';
+import { sentence } from '../web/views/sentence.js';
 import { ZoneResults } from './zone-results.js';
 
 /** Where the entry behind a place of the plan file stands: on this page or on that of the venue. */
@@ -28,7 +29,7 @@ function Decision({ assessment }: { readonly assessment: Assessment }): VNode {
       <DecisionBox
         word={decision.asFiled}
         label={same ? words.decision : words.asFiled}
-        reason={governing?.reason}
+        reason={governing === null ? undefined : sentence(governing.reason)}
       />
       {!same && <DecisionBox word={decision.withControls} label={words.withControls} />}
       {governing && (
@@ -142,7 +143,7 @@ export function PlanResults(props: {
       {assessment.section.spaces.length > 0 && (
         <section aria-labelledby="section-title">
           <h2 id="section-title">{words.section}</h2>
-          <figure class="drawn">
+          <figure class="drawn" tabIndex={0} aria-label={words.section}>
             <SectionDrawing view={assessment.section} />
             <figcaption>{assessment.section.moment}</figcaption>
           </figure>

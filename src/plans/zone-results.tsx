@@ -10,6 +10,7 @@ import { zoneCurve, zoneCurveText } from '../web/charts/zone-curve.js';
 import { quantityText } from '../web/format/figure-text.js';
 import { OpenableFigure } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
+import { sentence } from '../web/views/sentence.js';
 
 const answers: readonly Answer[] = ['mixed', 'layered', 'layeredP50', 'bound'];
 const standings = ['meets aim', 'meets limit', 'below limit', 'past never'] as const;
@@ -35,21 +36,26 @@ function QuantityTable(props: { readonly zone: ZoneResult }): VNode {
         <thead>
           <tr>
             <th scope="col">{words.what}</th>
+            <th scope="col">{words.standing}</th>
             {shown.map((answer) => (
               <th key={answer} scope="col">
                 {words.answers[answer]}
               </th>
             ))}
-            <th scope="col">{words.standing}</th>
           </tr>
         </thead>
         <tbody>
           {zone.quantities.map((quantity) => (
             <tr key={`${quantity.quantity} ${quantity.caseName}`}>
               <th scope="row">
-                {quantity.quantityTitle}
+                {sentence(quantity.quantityTitle)}
                 <span class="case">{words.cases[quantity.caseName]}</span>
               </th>
+              <td>
+                <span class={`standing ${quantity.standing.replace(' ', '-')}`}>
+                  {words.standings[quantity.standing]}
+                </span>
+              </td>
               {shown.map((answer) => {
                 const figure = quantity.answers[answer];
                 return (
@@ -58,11 +64,6 @@ function QuantityTable(props: { readonly zone: ZoneResult }): VNode {
                   </td>
                 );
               })}
-              <td>
-                <span class={`standing ${quantity.standing.replace(' ', '-')}`}>
-                  {words.standings[quantity.standing]}
-                </span>
-              </td>
             </tr>
           ))}
         </tbody>
@@ -77,7 +78,7 @@ function Levels(props: { readonly quantities: readonly ZoneQuantity[] }): VNode 
     <dl class="levels">
       {[...seen.values()].map(({ quantity, quantityTitle, levels }) => (
         <div key={quantity}>
-          <dt>{quantityTitle}</dt>
+          <dt>{sentence(quantityTitle)}</dt>
           <dd>
             {words.levels.aim} {levelText(levels.aim)}, {words.levels.limit.toLowerCase()}{' '}
             {levelText(levels.limit)}, {words.levels.never.toLowerCase()} {levelText(levels.never)}
@@ -132,13 +133,13 @@ function Curves(props: {
       {zone.quantities.map(({ quantity, quantityTitle, caseName }) => {
         const curve = zoneCurve(zone, quantity, caseName, assessment.events);
         if (curve === null) return null;
-        const title = `${quantityTitle}, ${words.cases[caseName]}`;
+        const title = `${sentence(quantityTitle)}, ${words.cases[caseName]}`;
         return (
           <details class="more" key={`${quantity} ${caseName}`}>
             <summary>
               {words.curve}: {title}
             </summary>
-            <figure class="drawn">
+            <figure class="drawn" tabIndex={0} aria-label={`${words.curve}: ${title}`}>
               <img
                 src={curvePath(planId, zone.id, quantity, caseName, assessment.inputHash)}
                 alt={zoneCurveText(curve)}
@@ -156,7 +157,7 @@ function Curves(props: {
 }
 
 function zoneFacts(zone: ZoneResult): string {
-  const height = `${words.height} ${quantityText(zone.heightM, 'm')} ${words.aboveFloor}`;
+  const height = `${words.height} ${String(zone.heightM)}\u00a0m ${words.aboveFloor}`;
   const count =
     zone.count === null
       ? ''

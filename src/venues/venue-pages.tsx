@@ -95,7 +95,7 @@ function Beside({ saved, plans }: Pick<VenuePageProps, 'saved' | 'plans'>): VNod
     <div class="beside" tabIndex={0} role="region" aria-label={words.section}>
       <h2>{words.section}</h2>
       {view !== undefined && view.spaces.length > 0 ? (
-        <figure class="drawn">
+        <figure class="drawn" tabIndex={0} aria-label={words.section}>
           <SectionDrawing view={view} />
           <figcaption>{words.sectionOf}</figcaption>
         </figure>

@@ -57,9 +57,10 @@ export function FigureField(props: FigureFieldProps): VNode {
   const words = en.figure;
   const id = fieldId(name);
   const detailParts = [`${name}-low`, `${name}-high`, `${name}-on`, `${name}-note`];
-  const isOpen = detailParts.some(
-    (part) => state.values[part] !== undefined || problemOf(state, part) !== undefined,
-  );
+  const isOpen = detailParts.some((part) => problemOf(state, part) !== undefined);
+  const [low, high, on, note] = detailParts.map((part) => state.values[part]);
+  const bounds = low === undefined && high === undefined ? [] : [`${low ?? ''}\u2013${high ?? ''}`];
+  const stated = [...bounds, on, note].filter((text) => text !== undefined);
   const chosen = state.values[`${name}-origin`] ?? '';
   const originId = fieldId(`${name}-origin`);
   return (
@@ -86,7 +87,7 @@ export function FigureField(props: FigureFieldProps): VNode {
       </div>
       <details class="figure-more" open={isOpen}>
         <summary>
-          {words.more}
+          {stated.length === 0 ? words.more : stated.join(', ')}
           <span class="unseen">: {label}</span>
         </summary>
         <Part field={props} part={`${name}-low`} label={words.low} hasUnit />

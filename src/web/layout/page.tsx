@@ -75,6 +75,7 @@ export function Page(props: PageProps): VNode {
         <meta name="color-scheme" content="light dark" />
         <link rel="icon" href={staticPath('styles/mark.svg')} type="image/svg+xml" />
         <link rel="stylesheet" href={staticPath('styles/stillair.css')} />
+        <link rel="stylesheet" href={staticPath('styles/planning.css')} />
         {scripts?.map((name) => (
           <script key={name} type="module" src={staticPath(`islands/${name}`)} />
         ))}

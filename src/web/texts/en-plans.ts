@@ -30,6 +30,7 @@ export const planTexts = {
   save: 'Save the plan',
   choose: 'Choose\u2026',
   notStated: 'Not stated',
+  yesNo: { yes: 'Yes', no: 'No', blank: 'Not stated' },
   download: 'Risk sheet (PDF)',
   export: 'Plan file (JSON)',
   editVenue: 'Open the venue',

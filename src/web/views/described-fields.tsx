@@ -234,10 +234,10 @@ export function Rows(
   const numbers = rowNumbersIn(state.values, list);
   const problem = problemOf(state, list);
   const headingId = `${fieldId(list)}-title`;
-  const isInner = list.includes('.');
+  const isInner = spec.within === true || /\.\d+\./.test(list);
   return (
     <section class="rows" aria-labelledby={headingId} id={fieldId(list)}>
-      {isInner ? <h4 id={headingId}>{spec.title}</h4> : <h2 id={headingId}>{spec.title}</h2>}
+      {isInner ? <h3 id={headingId}>{spec.title}</h3> : <h2 id={headingId}>{spec.title}</h2>}
       {spec.hint !== undefined && <p class="hint">{spec.hint}</p>}
       {problem !== undefined && <p class="problem">{problem}</p>}
       {numbers.length === 0 && <p class="none">{spec.empty}</p>}

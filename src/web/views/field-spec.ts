@@ -76,6 +76,8 @@ export interface RowSpec {
   readonly preset?: Readonly<Record<string, string>>;
   /** Keys whose texts stand in the heading of a row; the first one names it. */
   readonly heading: readonly string[];
+  /** Stands within a section that has a heading of its own. */
+  readonly within?: boolean;
   /** Rows are short enough to stay open. */
   readonly flat?: boolean;
 }

@@ -103,10 +103,12 @@ function readOne(
   }
   if (spec.kind === 'figure' || spec.kind === 'amount') {
     const chosen =
-      spec.kind === 'figure'
-        ? spec
-        : (spec.units.find(({ key }) => key === fields[`${name}-unit`]) ?? spec.units[0]);
-    if (chosen === undefined) return;
+      spec.kind === 'figure' ? spec : spec.units.find(({ key }) => key === fields[`${name}-unit`]);
+    if (chosen === undefined) {
+      // Taking the first unit for granted could be wrong by a factor of a thousand.
+      if (text !== undefined) complain(`${name}-unit`, `${spec.label}: choose the unit`);
+      return;
+    }
     const read = readFigure(fields, name, {
       label: spec.label,
       unit: chosen.unit,
