@@ -1,3 +1,4 @@
+import { sources, type Source } from '../science/sources.js';
 import type { Answer, Figure, FigureInput, FigureUnit } from './assessment.js';
 import type { JudgedLevel, LevelName } from './levels.js';
 import type { ResolvedPlan } from './resolved-plan.js';
@@ -16,24 +17,37 @@ const methods = {
   layered: {
     method: 'two-layer model, upper end of the band (or well-mixed, if worse)',
     formula: 'layer volume and gas amounts in time, with entrainment, smear, overflow and extract',
-    source: 'two-layer-model',
+    source: 'own-room-air',
     range: 'level layers in a closed space; not inside a jet, a pour or an open vessel',
   },
   layeredP50: {
     method: 'two-layer model, median of the band',
     formula: 'layer volume and gas amounts in time, with entrainment, smear, overflow and extract',
-    source: 'two-layer-model',
+    source: 'own-room-air',
     range: 'level layers in a closed space; not inside a jet, a pour or an open vessel',
   },
   bound: {
     method: 'inventory bound on top of the mixed background',
     formula:
       'gas fraction at the mouth <= gas volume let out / free volume below the mouth (light gas: above it)',
-    source: 'inventory-bound',
+    source: 'own-room-air',
     range:
       'any amount of mixing, level layer over the true floor; not inside a jet, a pour or an open vessel',
   },
 } as const satisfies Record<Answer, Pick<Figure, 'method' | 'formula' | 'source' | 'range'>>;
+
+/** A source as people read it: the title behind a key of the bibliography, or the words themselves. */
+export function sourceText(source: string): string {
+  const known = (sources as Readonly<Record<string, Source | undefined>>)[source];
+  return known ? known.title : (plainSources[source] ?? source);
+}
+
+const plainSources: Readonly<Record<string, string | undefined>> = {
+  plan: 'stated in the plan',
+  policy: 'policy of this planner',
+  judgement: 'judgement of this planner',
+  'plan-default': 'default of this planner where the plan is silent',
+};
 
 /** The unit in which a judged quantity is told. */
 export function unitOf(level: JudgedLevel): FigureUnit {
@@ -77,6 +91,7 @@ export function outcomeFigure(
     value: found.value * outcome.level.scale,
     unit: unitOf(outcome.level),
     ...methods[answer],
+    source: sourceText(methods[answer].source),
     inputs: roomInputs(outcome, plan),
   };
 }
@@ -134,7 +149,7 @@ export function plainFigure(
     method: words.method,
     formula: words.formula,
     inputs: words.inputs ?? [],
-    source: words.source,
+    source: sourceText(words.source),
     range: words.range ?? 'no limit beyond that of its inputs',
   };
 }

@@ -1,3 +1,4 @@
+import type { SpaceAir } from '../science/room-air/air-result.js';
 import type { SectionView } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { outcomeFigure, plainFigure } from './figures.js';
@@ -5,9 +6,14 @@ import { outcomeFigure, plainFigure } from './figures.js';
 /** Below this a mixed gas fraction is not worth hatching. */
 const smallestDrawn = 5e-5;
 
-/** What the section drawing shows, at the moment of the worst mixed value of the planned day. */
-export function sectionView(evaluation: Evaluation, moment: string): SectionView {
-  const { resolved, planned, dayResult, plan } = evaluation;
+/** Layers thinner than this are not drawn [m]. */
+const thinnestDrawnM = 0.005;
+
+/** What the section drawing shows of the planned day at one moment, seconds after midnight. */
+export function sectionView(evaluation: Evaluation, atS: number, moment: string): SectionView {
+  const { resolved, planned, dayResult, dayAir, plan } = evaluation;
+  const found = dayResult.timesS.findIndex((t) => t + dayAir.window.startS >= atS);
+  const index = found < 0 ? dayResult.timesS.length - 1 : found;
   const declared = planned.filter((outcome) => !outcome.floorCheck);
   return {
     spaces: resolved.spaces.map((space, index) => {
@@ -44,27 +50,74 @@ export function sectionView(evaluation: Evaluation, moment: string): SectionView
         highestGas: gas ? outcomeFigure(gas, 'bound', resolved) : null,
       };
     }),
-    layers: resolved.spaces.flatMap((space): SectionView['layers'][number][] => {
-      const fractions = dayResult.spaces[space.id]?.mixed.gasFraction ?? {};
-      const outdoors = resolved.site.carbonDioxideFraction;
-      const highest = Object.entries(fractions).map(
-        ([gas, series]) => Math.max(0, ...series) - (gas === 'CO2' ? outdoors : 0),
-      );
-      const total = highest.reduce((sum, value) => sum + value, 0);
-      if (total < smallestDrawn) return [];
-      return [
-        {
-          space: space.id,
-          at: 'whole',
-          depthM: space.heightM,
-          gasFraction: plainFigure(total, 'gasFraction', {
-            method: 'well-mixed gas above outdoor air, highest of the planned day',
-            formula: 'sum of all gases let out or breathed out',
-            source: 'own-room-air',
-          }),
-        },
-      ];
-    }),
-    moment,
+    layers: resolved.spaces.flatMap((space) =>
+      layersOf(dayResult.spaces[space.id], index, {
+        id: space.id,
+        heightM: space.heightM,
+        outdoors: resolved.site.carbonDioxideFraction,
+      }),
+    ),
+    moment: `${clockText(atS)}, ${moment}`,
   };
+}
+
+/** Gas above outdoor air at one output time; oxygen is listed too where let out, but is no gas to hatch. */
+function gasAt(
+  fractions: Readonly<Record<string, readonly number[]>>,
+  index: number,
+  outdoors: number,
+): number {
+  return Object.entries(fractions)
+    .filter(([gas]) => gas !== 'O2')
+    .reduce(
+      (sum, [gas, series]) =>
+        sum + Math.max(0, (series[index] ?? 0) - (gas === 'CO2' ? outdoors : 0)),
+      0,
+    );
+}
+
+function layersOf(
+  air: SpaceAir | undefined,
+  index: number,
+  space: { readonly id: string; readonly heightM: number; readonly outdoors: number },
+): readonly SectionView['layers'][number][] {
+  if (!air) return [];
+  const layer = (at: 'floor' | 'ceiling' | 'whole', depthM: number, fraction: number) =>
+    fraction < smallestDrawn || depthM < thinnestDrawnM
+      ? []
+      : [
+          {
+            space: space.id,
+            at,
+            depthM,
+            gasFraction: plainFigure(fraction, 'gasFraction', {
+              method: at === 'whole' ? 'well-mixed air' : 'two-layer model',
+              formula: 'all gases above outdoor air, let out or breathed out',
+              source: at === 'whole' ? 'own-room-air' : 'own-room-air',
+            }),
+          },
+        ];
+  const { layered, mixed } = air;
+  if (!layered)
+    return layer('whole', space.heightM, gasAt(mixed.gasFraction, index, space.outdoors));
+  return [
+    ...layer('whole', space.heightM, gasAt(layered.middle.gasFraction, index, space.outdoors)),
+    ...layer(
+      'floor',
+      layered.floorLayerDepthM[index] ?? 0,
+      gasAt(layered.floorLayer.gasFraction, index, space.outdoors),
+    ),
+    ...layer(
+      'ceiling',
+      layered.ceilingLayerDepthM[index] ?? 0,
+      gasAt(layered.ceilingLayer.gasFraction, index, space.outdoors),
+    ),
+  ];
+}
+
+/** hh:mm of a time after midnight. */
+function clockText(atS: number): string {
+  const minutes = Math.floor(atS / 60);
+  const two = (value: number) => String(value).padStart(2, '0');
+  return `${two(Math.floor(minutes / 60) % 24)}:${two(minutes % 60)}`;
 }

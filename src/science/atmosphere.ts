@@ -22,7 +22,7 @@ const exponent = 5.25588;
  * @param altitudeM altitude above sea level [m], -430 to 4500
  * @returns absolute pressure [Pa]
  * @throws {OutOfRange} outside the range
- * Source: standard-atmosphere. Assumes: the standard day; weather moves the true value by +-3 %.
+ * Source: iso-2533. Assumes: the standard day; weather moves the true value by +-3 %.
  * Accuracy: within 0.1 % of the published table.
  * @example standardPressure(2000) // 79495
  */
@@ -39,7 +39,7 @@ export function standardPressure(altitudeM: number): number {
  * @param pressurePa absolute pressure [Pa], 50 000 to 110 000
  * @returns altitude above sea level [m]
  * @throws {OutOfRange} outside the range
- * Source: standard-atmosphere. Assumes: the standard day. Accuracy: as standardPressure.
+ * Source: iso-2533. Assumes: the standard day. Accuracy: as standardPressure.
  * @example standardAltitude(79495) // 2000
  */
 export function standardAltitude(pressurePa: number): number {

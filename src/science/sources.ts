@@ -10,10 +10,6 @@ export interface Source {
 
 export const sources = {
   'si-2019': { title: 'SI Brochure, 9th edition (2019): exact constants', seen: 'second-hand' },
-  'standard-atmosphere': {
-    title: 'ISO 2533 standard atmosphere, pressure below 11 km',
-    seen: 'from memory',
-  },
   'cipm-2007': {
     title: 'Picard, Davis, Glaeser & Fujii (CIPM-2007), Metrologia 45 (2008) 149-155',
     seen: 'second-hand',
@@ -303,6 +299,11 @@ export const sources = {
   'release-courses': {
     title: 'Project choices for the course of releases in time',
     seen: 'own derivation',
+  },
+  'displacement-guidance': {
+    title:
+      'Straight displacement, the formula of British trade guidance GN 11 as used by universities',
+    seen: 'second-hand',
   },
 } as const satisfies Record<string, Source>;
 
