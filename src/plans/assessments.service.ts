@@ -1,9 +1,8 @@
 import { Injectable, Logger } from '@nestjs/common';
-import { assess, checkedPlan } from '../assessment/assess.js';
 import type { Assessment } from '../assessment/assessment.js';
 import type { PlanFile } from '../assessment/plan-file.js';
-import { CatalogueData } from '../catalogue/catalogue.module.js';
 import { DomainError, NotComputable } from '../errors.js';
+import { AssessmentPool } from '../workers/assessment-pool.js';
 
 /** What came of assessing a plan: the assessment, or why there is none. */
 export type Outcome =
@@ -17,11 +16,11 @@ const keptOutcomes = 40;
 @Injectable()
 export class AssessmentsService {
   readonly #log = new Logger('Faults');
-  readonly #outcomes = new Map<string, Outcome>();
+  readonly #outcomes = new Map<string, Promise<Outcome>>();
 
-  constructor(private readonly data: CatalogueData) {}
+  constructor(private readonly pool: AssessmentPool) {}
 
-  outcomeOf(file: PlanFile): Outcome {
+  outcomeOf(file: PlanFile): Promise<Outcome> {
     const key = JSON.stringify(file);
     const known = this.#outcomes.get(key);
     if (known !== undefined) return known;
@@ -29,23 +28,23 @@ export class AssessmentsService {
     const [oldest] = this.#outcomes.keys();
     if (oldest !== undefined && this.#outcomes.size >= keptOutcomes) this.#outcomes.delete(oldest);
     this.#outcomes.set(key, outcome);
+    // A thread that died has answered nothing: the next reader asks again.
+    outcome.catch(() => this.#outcomes.delete(key));
     return outcome;
   }
 
-  #assessed(file: PlanFile): Outcome {
-    const data = this.data.forAssessment;
-    try {
-      return { assessment: assess(checkedPlan(file, data), data) };
-    } catch (error) {
-      if (error instanceof DomainError) return { failure: error };
-      // The entries must stay within reach even when the calculation has a fault.
-      this.#log.error(error instanceof Error ? (error.stack ?? error.message) : String(error));
-      return {
-        failure: new NotComputable(
-          'Stillair met a fault of its own while working this plan out. Your entries are safe.',
-          'Change the last entry back, and report the fault with the exported plan file.',
-        ),
-      };
-    }
+  async #assessed(file: PlanFile): Promise<Outcome> {
+    const answer = await this.pool.answerTo(file);
+    if (answer.assessment !== null) return { assessment: answer.assessment };
+    const { code, message, hint, details } = answer.failure;
+    if (code !== 'internal') return { failure: new DomainError(code, message, hint, details) };
+    // The entries must stay within reach even when the calculation has a fault.
+    this.#log.error(answer.fault ?? message);
+    return {
+      failure: new NotComputable(
+        'Stillair met a fault of its own while working this plan out. Your entries are safe.',
+        'Change the last entry back, and report the fault with the exported plan file.',
+      ),
+    };
   }
 }

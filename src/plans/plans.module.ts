@@ -3,6 +3,7 @@ import { APP_INTERCEPTOR } from '@nestjs/core';
 import { VenuesModule } from '../venues/venues.module.js';
 import { CalculateController } from './calculate.controller.js';
 import { ExamplesService } from './examples.service.js';
+import { AssessmentPool } from '../workers/assessment-pool.js';
 import { AssessmentsService } from './assessments.service.js';
 import { PlansController } from './plans.controller.js';
 import { PlansService } from './plans.service.js';
@@ -11,6 +12,7 @@ import { PlansService } from './plans.service.js';
   imports: [VenuesModule],
   controllers: [CalculateController, PlansController],
   providers: [
+    AssessmentPool,
     AssessmentsService,
     PlansService,
     ExamplesService,

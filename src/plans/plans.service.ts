@@ -51,7 +51,7 @@ export class PlansService {
     const plan = await this.plans.get(id);
     const venue = plan.venueId === null ? undefined : await this.venues.get(plan.venueId);
     const file = planFile(plan.document, venue?.venue);
-    return { plan, venue, file, outcome: this.assessments.outcomeOf(file) };
+    return { plan, venue, file, outcome: await this.assessments.outcomeOf(file) };
   }
 
   /**
