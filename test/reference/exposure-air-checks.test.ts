@@ -194,6 +194,7 @@ const answers: Answers = {
         releases: [{ space: 'van', gas: 'CO2', volumeM3: flow * durationS, durationS }],
       }),
       checkGases,
+      { layered: false },
     );
     const total = result.spaces.van?.mixed.gasFraction.CO2?.at(-1) ?? Number.NaN;
     return { rise_ppm: (total - 420e-6) * 1e6 };

@@ -9,6 +9,7 @@ import type {
   GasBalance,
   HeightAir,
   SpaceAir,
+  SpaceLayers,
   ZoneAir,
 } from './air-result.js';
 import { FALLEN_HEIGHT_M, OXYGEN_IN_DRY_AIR } from './air-constants.js';
@@ -97,19 +98,15 @@ export function airRun(
   };
   const mixed = model.spaces.map((_, space) => mixedAnswer(model, runs, space));
   const depths = purePoolDepths(model, releases);
-  const layers =
-    displacement === 'pushOut' && (options.layered ?? true)
-      ? layerRuns(model, gases, mixed[0])
-      : undefined;
+  const wantsLayers = displacement === 'pushOut' && (options.layered ?? true);
+  const layers = wantsLayers ? layerRuns(model, gases, mixed[0]) : undefined;
   const spaces: Record<string, SpaceAir> = {};
   for (const [i, space] of model.spaces.entries()) {
     const track = mixed[i];
     if (!track) continue;
     spaces[space.id] = {
       mixed: seriesOf(model, track, timesS),
-      ...(layers
-        ? { layered: spaceLayers(layers.one, layers.usual.track, i, model.gases, timesS) }
-        : {}),
+      ...(layers ? { layered: layersOfSpace(model, layers, i, track, timesS) } : {}),
       purePoolDepthM: depths[i] ?? 0,
     };
   }
@@ -196,7 +193,8 @@ interface LayerRun {
 /** The usual two-layer run and those without any mixing. */
 interface LayerRuns {
   readonly one: LayerCase;
-  readonly usual: LayerRun;
+  /** Undefined where nothing gathers as a layer: then the mixed answer is the layered one. */
+  readonly usual: LayerRun | undefined;
   readonly adverse: readonly LayerRun[];
 }
 
@@ -211,13 +209,33 @@ function layerRuns(model: AirModel, gases: AirGasTable, rows: AnswerTrack | unde
     parameters,
     track: layersRun(one, parameters, timesS),
   });
+  if (network.layers.length === 0) return { one, usual: undefined, adverse: [] };
   return {
     one,
     usual: run(usualLayers(overrides)),
-    adverse:
-      network.layers.length === 0
-        ? []
-        : adverseLayers(overrides, hasFalls, network.groupVolumesM3.length > 1).map(run),
+    adverse: adverseLayers(overrides, hasFalls, network.groupVolumesM3.length > 1).map(run),
+  };
+}
+
+function layersOfSpace(
+  model: AirModel,
+  layers: LayerRuns,
+  space: number,
+  mixed: AnswerTrack,
+  timesS: readonly number[],
+): SpaceLayers {
+  if (layers.usual) {
+    return spaceLayers(layers.one, layers.usual.track, space, model.gases, timesS);
+  }
+  const none = timesS.map(() => 0);
+  const { oxygenFraction, gasFraction } = seriesOf(model, mixed, timesS);
+  const same = { oxygenFraction, gasFraction };
+  return {
+    floorLayerDepthM: none,
+    ceilingLayerDepthM: none,
+    floorLayer: same,
+    middle: same,
+    ceilingLayer: same,
   };
 }
 
@@ -325,17 +343,12 @@ function layeredAnswers(
 ): { readonly usual: AnswerTrack; readonly adverse: AnswerTrack } | undefined {
   const { model, zone, layers } = place;
   if (!layers) return undefined;
+  if (!layers.usual) return { usual: place.mixed, adverse: place.mixed };
   const at = layerMouth(model, mouth, zone.floorLevelM);
   const bounds = bound.pieces.flatMap((piece) => piece.rows);
   const rowsOf = (run: LayerRun): AnswerTrack =>
     layeredRows(layers.one, run.track, at, run.parameters, bounds);
-  const usual = rowsOf(layers.usual);
-  return {
-    usual,
-    adverse: worstTrack(
-      [usual, ...layers.adverse.map(rowsOf)].slice(-Math.max(1, layers.adverse.length)),
-    ),
-  };
+  return { usual: rowsOf(layers.usual), adverse: worstTrack(layers.adverse.map(rowsOf)) };
 }
 
 /** The worse of several answers at each row; all have the same times. */

@@ -16,8 +16,11 @@ import { LINE_PLUME_CONSTANT } from './plume.js';
 import { releaseFlow } from './release-flow.js';
 import { verticalOpeningFlows } from './vertical-openings.js';
 
-/** Depth below which a layer counts as empty [m]. */
-export const EMPTY_DEPTH_M = 1e-9;
+/**
+ * Where no layer lies, a film of the air above stands for it [m]: the equations then have no
+ * beginning and no end of a layer. It is a thousandth of the least depth that is reported.
+ */
+export const FILM_DEPTH_M = 1e-6;
 /** Depth below which a layer counts as this deep for the smear [m]. */
 const LEAST_SMEAR_DEPTH_M = 1e-3;
 /** Depth over which what is drawn from a thin layer fades, and over which mouths enter it [m]. */
@@ -85,16 +88,9 @@ export function readZones(
   for (let z = layers + groups - 1; z >= 0; z--) {
     const offset = zoneOffset(layout, z);
     const volume = volumes[z] ?? 0;
-    const layer = network.layers[z];
-    const empty = layer !== undefined && z < layers && volume <= EMPTY_DEPTH_M * layer.basin.areaM2;
     let molar = network.airMolarMassKgPerMol;
     for (let c = 0; c < k; c++) {
-      // An empty layer has no composition of its own: that of the air above it.
-      const x = empty
-        ? (fractions[(layers + layer.group) * k + c] ?? 0)
-        : volume > 0
-          ? (state[offset + c] ?? 0) / volume
-          : 0;
+      const x = volume > 0 ? (state[offset + c] ?? 0) / volume : 0;
       fractions[z * k + c] = x;
       molar += x * (network.components[c]?.excessKgPerMol ?? 0);
     }
@@ -244,14 +240,17 @@ export function layerRates(
     const sign = network.layers[layer]?.side === 'ceiling' ? -1 : 1;
     return Math.max(0, sign * ((molarMasses[layer] ?? air) - (molarMasses[upper] ?? air)));
   };
-  const isEmpty = (layer: number): boolean =>
-    (volumes[layer] ?? 0) <= EMPTY_DEPTH_M * (network.layers[layer]?.basin.areaM2 ?? 1);
+  /** 0 for a film, 1 from twice its depth on. */
+  const presence = (layer: number): number => {
+    const film = FILM_DEPTH_M * (network.layers[layer]?.basin.areaM2 ?? 1);
+    return Math.min(1, Math.max(0, (volumes[layer] ?? 0) / film - 1));
+  };
   /** Air that leaves a space without a unit: from above, or by choice from the floor layer. */
   const leave = (space: number, to: number, flow: number): void => {
     if (flow <= 0) return;
     const layer = floorLayer[space] ?? -1;
     let low = 0;
-    if (layer >= 0 && parameters.surplusFromLayer > 0 && !isEmpty(layer)) {
+    if (layer >= 0 && parameters.surplusFromLayer > 0) {
       low = flow * parameters.surplusFromLayer * Math.min(1, (depths[layer] ?? 0) / RAMP_M);
       move(layer, to, low);
     }
@@ -297,7 +296,7 @@ export function layerRates(
   const addMixing = (): void => {
     for (let l = 0; l < layers; l++) {
       const layer = network.layers[l];
-      if (!layer || isEmpty(l)) continue;
+      if (!layer || joined.has(layer.space)) continue;
       const upper = layers + layer.group;
       const depth = depths[l] ?? 0;
       const area = basinArea(layer.basin, depth);
@@ -305,7 +304,7 @@ export function layerRates(
       if (parameters.diffusion > 0) {
         const smear =
           (area * Math.PI * layer.diffusivityM2PerS) / (2 * Math.max(mean, LEAST_SMEAR_DEPTH_M));
-        move(upper, l, smear);
+        move(upper, l, smear * presence(l));
       }
       const gPrime = (GRAVITY_M_PER_S2 * excess(l, upper)) / air;
       // A film thinner than a millimetre has nothing to exchange yet; the ramp keeps it tame.
@@ -324,7 +323,7 @@ export function layerRates(
       if (!first) continue;
       if (weir.b < 0) {
         const head = Math.min((depths[weir.a] ?? 0) - weir.sillA, weir.heightM);
-        if (head <= 0 || isEmpty(weir.a) || joined.has(first.space)) continue;
+        if (head <= 0 || joined.has(first.space)) continue;
         const sign = first.side === 'ceiling' ? -1 : 1;
         const outside = network.outdoorMolarMassKgPerMol;
         const difference = Math.max(0, sign * ((molarMasses[weir.a] ?? air) - outside));
@@ -343,7 +342,7 @@ export function layerRates(
       const upperA = layers + first.group;
       const upperB = layers + second.group;
       const own = (layer: number, upper: number, head: number): number => {
-        if (head <= 0 || isEmpty(layer)) return 0;
+        if (head <= 0) return 0;
         const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
         return smoothRoot(gravity) * head ** 1.5;
       };
@@ -384,7 +383,7 @@ export function layerRates(
             ? (ceilingLayer[intake.space] ?? -1)
             : -1;
       let fromLayer = 0;
-      if (layer >= 0 && !isEmpty(layer)) {
+      if (layer >= 0) {
         const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
         fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0);
       }
@@ -411,7 +410,9 @@ export function layerRates(
     for (const supply of segment.units.supplies) {
       const layer = floorLayer[supply.space] ?? -1;
       const to =
-        supply.level === 'low' && layer >= 0 && !isEmpty(layer) ? layer : upperOf(supply.space);
+        supply.level === 'low' && layer >= 0 && presence(layer) >= 1
+          ? layer
+          : upperOf(supply.space);
       breatheOutdoors(to, supply.freshM3PerS);
       const around = systemFlows[supply.system] ?? 0;
       if (around <= 0 || supply.recirculatedM3PerS <= 0) continue;
@@ -427,7 +428,7 @@ export function layerRates(
     for (const one of segment.breath) {
       const layer = floorLayer[one.space] ?? -1;
       const inside =
-        layer >= 0 && one.heightM !== undefined && !isEmpty(layer)
+        layer >= 0 && one.heightM !== undefined
           ? Math.min(1, Math.max(0, ((depths[layer] ?? 0) - one.heightM) / RAMP_M))
           : 0;
       const parts = [

@@ -1,11 +1,12 @@
-import { hermiteValue, integratedState, type AcceptedStep } from '../numerics/runge-kutta.js';
+import { stiffState } from '../numerics/rosenbrock.js';
+import { hermiteValue, type AcceptedStep } from '../numerics/runge-kutta.js';
 import { flowSegment } from './air-flows.js';
 import type { AirModel } from './air-model.js';
 import { basinLevel } from './layer-geometry.js';
 import type { LayerNetwork } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import {
-  EMPTY_DEPTH_M,
+  FILM_DEPTH_M,
   emptyZoneState,
   layerLayout,
   layerRates,
@@ -89,7 +90,7 @@ export function layeredTrack(
     const options = { relative: RELATIVE, absolute: ABSOLUTE, maxStepS: MAX_STEP_S };
     const rates = layerRates(network, segment, parameters, joined);
     state = Float64Array.from(
-      integratedState(rates, state, from, to, options, (step) => {
+      stiffState(rates, state, from, to, options, (step) => {
         emit(step);
         return afterJoins(network, layout, step.y1, fed, joined, parameters.joinContrast);
       }),
@@ -124,6 +125,17 @@ function startState(
       state[base + to] = (state[base + to] ?? 0) + amount;
       state[into + to] = (state[into + to] ?? 0) + amount;
     }
+  }
+  for (const [l, layer] of network.layers.entries()) {
+    const film = FILM_DEPTH_M * layer.basin.areaM2;
+    const from = zoneOffset(layout, layout.layers + layer.group);
+    const share = film / (network.groupVolumesM3[layer.group] ?? 1);
+    for (let c = 0; c < layout.k; c++) {
+      const amount = (state[from + c] ?? 0) * share;
+      state[zoneOffset(layout, l) + c] = amount;
+      state[from + c] = (state[from + c] ?? 0) - amount;
+    }
+    state[l * (layout.k + 1)] = film;
   }
   return state;
 }
@@ -167,16 +179,20 @@ function afterJoins(
     next ??= Float64Array.from(state);
     const from = zoneOffset(layout, l);
     const to = zoneOffset(layout, layers + layer.group);
+    const film = FILM_DEPTH_M * layer.basin.areaM2;
+    const volume = (volumes[layers + layer.group] ?? 0) + (volumes[l] ?? 0);
     for (let c = 0; c < k; c++) {
-      next[to + c] = (next[to + c] ?? 0) + (next[from + c] ?? 0);
-      next[from + c] = 0;
+      const all = (next[to + c] ?? 0) + (next[from + c] ?? 0);
+      next[from + c] = (all * film) / volume;
+      next[to + c] = all - (all * film) / volume;
     }
-    next[l * (k + 1)] = 0;
+    next[l * (k + 1)] = film;
   };
   for (const [l, layer] of network.layers.entries()) {
     const volume = volumes[l] ?? 0;
-    if (volume <= EMPTY_DEPTH_M * layer.basin.areaM2) {
-      if (volume < 0) join(l);
+    const film = FILM_DEPTH_M * layer.basin.areaM2;
+    if (joined.has(layer.space) || volume <= 2 * film) {
+      if (volume < 0.5 * film) join(l);
       continue;
     }
     const g = layers + layer.group;
