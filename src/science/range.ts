@@ -19,6 +19,8 @@ export interface Range {
  * @throws {OutOfRange} when outside the range; the range stands in the details
  */
 export function inRange(value: number, range: Range, path: string): number {
+  // First of all the usual case: this guard stands in every inner loop.
+  if (value >= range.min && value <= range.max) return value;
   const subject = range.name.charAt(0).toUpperCase() + range.name.slice(1);
   if (!Number.isFinite(value)) {
     throw new InvalidInput(
@@ -27,16 +29,13 @@ export function inRange(value: number, range: Range, path: string): number {
       [{ path, problem: `not a finite number: ${String(value)}` }],
     );
   }
-  if (value < range.min || value > range.max) {
-    const limits = `${String(range.min)} to ${String(range.max)} ${range.unit}`.trim();
-    throw new OutOfRange(
-      `${subject} ${String(value)} ${range.unit} is outside the range of the model.`.replace(
-        '  ',
-        ' ',
-      ),
-      `Use a value from ${limits}.`,
-      [{ path, problem: `outside ${limits}` }],
-    );
-  }
-  return value;
+  const limits = `${String(range.min)} to ${String(range.max)} ${range.unit}`.trim();
+  throw new OutOfRange(
+    `${subject} ${String(value)} ${range.unit} is outside the range of the model.`.replace(
+      '  ',
+      ' ',
+    ),
+    `Use a value from ${limits}.`,
+    [{ path, problem: `outside ${limits}` }],
+  );
 }

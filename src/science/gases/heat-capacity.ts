@@ -12,11 +12,8 @@ import type { GasSpecies } from './gas-library.js';
  * Accuracy: 0.12 % at 260 to 320 K against the reference equations, 0.4 % for propane.
  */
 export function idealHeatCapacity(gas: GasSpecies, T: number): number {
-  // Horner's rule over T^-2 ... T^4.
-  let sum = 0;
-  const { coefficients } = gas.heatCapacity;
-  for (let index = coefficients.length - 1; index >= 0; index -= 1) {
-    sum = sum * T + (coefficients[index] ?? 0);
-  }
-  return sum / (T * T);
+  // Horner's rule, written out: this stands in the innermost loop of every mixture.
+  const a = gas.heatCapacity.coefficients;
+  const upper = (a[3] ?? 0) + T * ((a[4] ?? 0) + T * ((a[5] ?? 0) + T * (a[6] ?? 0)));
+  return ((a[0] ?? 0) + T * ((a[1] ?? 0) + T * ((a[2] ?? 0) + T * upper))) / (T * T);
 }

@@ -2,17 +2,12 @@ import { inRange } from '../range.js';
 import type { GasLibrary } from './gas-library.js';
 import { relativeHumidityRange, roomPressure, roomTemperature } from './ranges.js';
 
-/** Sum of coefficient times power of T from `first` on, the last coefficient going with ln T. */
-function exponentSum(coefficients: readonly number[], T: number, first: number): number {
-  let power = T ** first;
+/** Polynomial of T over its first power of T, plus the last coefficient times ln T. */
+function exponent(coefficients: readonly number[], T: number, firstPower: number): number {
+  const last = coefficients.length - 1;
   let sum = 0;
-  let left = coefficients.length;
-  for (const coefficient of coefficients) {
-    left -= 1;
-    sum += coefficient * (left === 0 ? Math.log(T) : power);
-    power *= T;
-  }
-  return sum;
+  for (let index = last - 1; index >= 0; index -= 1) sum = sum * T + (coefficients[index] ?? 0);
+  return sum / firstPower + (coefficients[last] ?? 0) * Math.log(T);
 }
 
 /**
@@ -30,7 +25,7 @@ function exponentSum(coefficients: readonly number[], T: number, first: number):
  */
 export function waterSaturationPressure(library: GasLibrary, T: number): number {
   inRange(T, roomTemperature, '/temperatureK');
-  return Math.exp(exponentSum(library.humidAir.saturationPressureWater.coefficients, T, -2));
+  return Math.exp(exponent(library.humidAir.saturationPressureWater.coefficients, T, T * T));
 }
 
 /**
@@ -53,7 +48,7 @@ export function iceSaturationPressure(library: GasLibrary, T: number): number {
     { min: temperatureMinK, max: temperatureMaxK, unit: 'K', name: 'temperature of ice' },
     '/temperatureK',
   );
-  return Math.exp(exponentSum(coefficients, T, -1));
+  return Math.exp(exponent(coefficients, T, T));
 }
 
 /**

@@ -1,7 +1,7 @@
 import { inRange } from '../range.js';
 import type { Composition, GasLibrary } from './gas-library.js';
 import { waterFractionOfAir } from './humid-air.js';
-import { mixtureTerms } from './mixture-terms.js';
+import { dryAirMolarMass, dryAirVirial, mixtureTerms } from './mixture-terms.js';
 import { roomPressure, roomTemperature } from './ranges.js';
 
 export interface MixtureInput {
@@ -31,31 +31,10 @@ export interface MixtureState {
   readonly idealSpeedOfSoundMPerS: number;
 }
 
-const pureAir: Composition = { air: 1 };
-
 /** rho of p = rho R T (1 + B rho), in the form that stays stable for B near 0 [mol/m^3]. */
 function amountDensity(b: number, RT: number, p: number): number {
   const ideal = p / RT;
   return (2 * ideal) / (1 + Math.sqrt(1 + 4 * b * ideal));
-}
-
-interface AirDensityMemo {
-  temperatureK: number;
-  pressurePa: number;
-  densityKgPerM3: number;
-}
-
-/** Last dry-air density per library: most runs stay at one temperature and pressure. */
-const airDensities = new WeakMap<GasLibrary, AirDensityMemo>();
-
-function dryAirDensity(library: GasLibrary, T: number, p: number): number {
-  const last = airDensities.get(library);
-  if (last?.temperatureK === T && last.pressurePa === p) return last.densityKgPerM3;
-  const terms = mixtureTerms(library, pureAir, T, 0);
-  const RT = library.gasConstant.jPerMolK * T;
-  const densityKgPerM3 = amountDensity(terms.b, RT, p) * terms.molarMassKgPerMol;
-  airDensities.set(library, { temperatureK: T, pressurePa: p, densityKgPerM3 });
-  return densityKgPerM3;
 }
 
 /**
@@ -79,11 +58,11 @@ export function mixtureState(library: GasLibrary, input: MixtureInput): MixtureS
   const T = inRange(input.temperatureK, roomTemperature, '/temperatureK');
   const p = inRange(input.pressurePa, roomPressure, '/pressurePa');
   const waterOfAir = waterFractionOfAir(library, T, p, input.relativeHumidity ?? 0);
-  const airKgPerM3 = dryAirDensity(library, T, p);
   const terms = mixtureTerms(library, input.composition, T, waterOfAir);
   const { b, tb1, t2b2, heatCapacity: cp, molarMassKgPerMol: M } = terms;
   const RT = library.gasConstant.jPerMolK * T;
   const rho = amountDensity(b, RT, p);
+  const airKgPerM3 = amountDensity(dryAirVirial(library, T), RT, p) * dryAirMolarMass(library);
   const cv = cp - 1 - rho * (2 * tb1 + t2b2);
   const slope = 1 + (b + tb1) * rho;
   const gamma = cp / (cp - 1);

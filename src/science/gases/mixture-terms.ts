@@ -3,42 +3,34 @@ import { inRange } from '../range.js';
 import type { Composition, GasLibrary, GasSpecies } from './gas-library.js';
 import { idealHeatCapacity } from './heat-capacity.js';
 import { compositionSumTolerance, moleFractionRange } from './ranges.js';
-import {
-  crossVirial,
-  gasPair,
-  pureVirial,
-  type GasPair,
-  type VirialTerms,
-} from './second-virial.js';
+import { writeCrossVirial, gasPair, writePureVirial, type GasPair } from './second-virial.js';
 
 /*
- * The work space of one library: a slot per species, with the constants of its pairs and the terms
- * of the last temperature asked for. It exists for speed only; what is returned depends on the
- * arguments alone, because every temperature-dependent term is checked against its own temperature.
+ * The work space of one library: constants by species and pair, and the terms of the last temperature
+ * asked for. It exists for speed only; what is returned depends on the arguments alone, because every
+ * temperature-dependent term is kept beside its own temperature, and nothing in here is handed out.
  */
-interface Cross {
-  readonly other: Slot;
-  readonly pair: GasPair;
-  temperatureK: number;
-  terms: VirialTerms;
-}
-
-interface Slot {
-  readonly gas: GasSpecies;
-  readonly molarMassKgPerMol: number;
-  readonly isOxygen: boolean;
-  readonly crosses: Cross[];
-  fraction: number;
-  temperatureK: number;
-  heatCapacity: number;
-  terms: VirialTerms;
-}
-
 interface Workspace {
-  readonly slots: readonly Slot[];
-  readonly byId: ReadonlyMap<string, Slot>;
-  readonly air: readonly { readonly slot: Slot; readonly fraction: number }[];
-  readonly water: Slot;
+  readonly gases: readonly GasSpecies[];
+  readonly indexOf: ReadonlyMap<string, number>;
+  /** Pair of species i and j at i times the stride plus j, i below j. */
+  readonly pairs: readonly (GasPair | undefined)[];
+  readonly stride: number;
+  readonly molarMasses: Float64Array;
+  readonly fractions: Float64Array;
+  /** Species of the mixture at hand, ascending. */
+  readonly present: Int32Array;
+  /** Temperature, cp/R, B, T B', T^2 B'' by species. */
+  readonly pureTerms: Float64Array;
+  /** Temperature, B, T B', T^2 B'' by pair. */
+  readonly crossTerms: Float64Array;
+  readonly airIndices: Int32Array;
+  readonly airFractions: Float64Array;
+  readonly airMolarMass: number;
+  /** Temperature and B of dry air. */
+  readonly airTerms: Float64Array;
+  readonly oxygen: number;
+  readonly water: number;
 }
 
 /** Sums over a mixture at one temperature; cp and B need no pressure. */
@@ -53,45 +45,67 @@ export interface MixtureTerms {
   readonly waterFraction: number;
 }
 
-const noTerms: VirialTerms = { b: 0, tb1: 0, t2b2: 0 };
+const pureWidth = 5;
+const crossWidth = 4;
 const workspaces = new WeakMap<GasLibrary, Workspace>();
 
-function workspaceOf(library: GasLibrary): Workspace {
-  const known = workspaces.get(library);
-  if (known) return known;
-  const slots: Slot[] = Object.values(library.species).map((gas) => ({
-    gas,
-    molarMassKgPerMol: gas.molarMass.molarMassKgPerMol,
-    isOxygen: gas.id === 'O2',
-    crosses: [],
-    fraction: 0,
-    temperatureK: 0,
-    heatCapacity: 0,
-    terms: noTerms,
-  }));
-  slots.forEach((slot, index) => {
-    for (const other of slots.slice(index + 1)) {
-      const pair = gasPair(library, slot.gas, other.gas);
-      slot.crosses.push({ other, pair, temperatureK: 0, terms: noTerms });
-    }
-  });
-  const byId = new Map(slots.map((slot) => [slot.gas.id, slot]));
-  const slotOf = (id: string): Slot => {
-    const slot = byId.get(id);
-    if (slot) return slot;
+/** The species with coefficients of its own: reading a frozen list of numbers takes twice the time. */
+function thawed(gas: GasSpecies): GasSpecies {
+  const { heatCapacity, secondVirial } = gas;
+  return {
+    ...gas,
+    heatCapacity: { ...heatCapacity, coefficients: [...heatCapacity.coefficients] },
+    secondVirial: {
+      ...secondVirial,
+      coefficientsM3PerMol: [...secondVirial.coefficientsM3PerMol],
+    },
+  };
+}
+
+function freshWorkspace(library: GasLibrary): Workspace {
+  const gases = Object.values(library.species).map(thawed);
+  const count = gases.length;
+  const indexOf = new Map(gases.map(({ id }, index) => [id, index]));
+  const placeOf = (id: string): number => {
+    const index = indexOf.get(id);
+    if (index !== undefined) return index;
     throw new InvalidInput(`The gas data lack ${id}.`, 'Restore its species file.', [
       { path: `/species/${id}`, problem: 'is missing' },
     ]);
   };
-  const fresh: Workspace = {
-    slots,
-    byId,
-    air: Object.entries(library.dryAir.composition.moleFractions).map(([id, fraction]) => ({
-      slot: slotOf(id),
-      fraction,
-    })),
-    water: slotOf('H2O'),
+  // Ascending, as the pairs are.
+  const air = Object.entries(library.dryAir.composition.moleFractions)
+    .map(([id, fraction]) => ({ index: placeOf(id), fraction }))
+    .sort((one, other) => one.index - other.index);
+  return {
+    gases,
+    indexOf,
+    pairs: gases.flatMap((one, i) =>
+      gases.map((other, j) => (i < j ? gasPair(library, one, other) : undefined)),
+    ),
+    stride: count,
+    molarMasses: Float64Array.from(gases, (gas) => gas.molarMass.molarMassKgPerMol),
+    fractions: new Float64Array(count),
+    present: new Int32Array(count),
+    pureTerms: new Float64Array(pureWidth * count),
+    crossTerms: new Float64Array(crossWidth * count * count),
+    airIndices: Int32Array.from(air, ({ index }) => index),
+    airFractions: Float64Array.from(air, ({ fraction }) => fraction),
+    airMolarMass: air.reduce(
+      (sum, { index, fraction }) =>
+        sum + fraction * (gases[index]?.molarMass.molarMassKgPerMol ?? 0),
+      0,
+    ),
+    airTerms: new Float64Array(2),
+    oxygen: placeOf('O2'),
+    water: placeOf('H2O'),
   };
+}
+
+function workspaceOf(library: GasLibrary): Workspace {
+  const known = workspaces.get(library);
+  if (known) return known;
+  const fresh = freshWorkspace(library);
   workspaces.set(library, fresh);
   return fresh;
 }
@@ -104,14 +118,15 @@ function refuseUnknownGas(library: GasLibrary, id: string): never {
   );
 }
 
-/** Fills the slots from a checked composition whose air share holds the given part of water. */
-function fillSlots(
+/** Sets the fractions by species from a composition whose air share holds the given part of water. */
+function setFractions(
   library: GasLibrary,
   workspace: Workspace,
   composition: Composition,
   waterOfAir: number,
 ): void {
-  for (const slot of workspace.slots) slot.fraction = 0;
+  const { fractions, indexOf, airIndices, airFractions, water } = workspace;
+  for (let index = 0; index < fractions.length; index += 1) fractions[index] = 0;
   let sum = 0;
   for (const id in composition) {
     const fraction = composition[id] ?? Number.NaN;
@@ -119,6 +134,18 @@ function fillSlots(
       inRange(fraction, moleFractionRange, `/composition/${id}`);
     }
     sum += fraction;
+    if (id === 'air') {
+      const dry = fraction * (1 - waterOfAir);
+      for (let part = 0; part < airIndices.length; part += 1) {
+        const index = airIndices[part] ?? 0;
+        fractions[index] = (fractions[index] ?? 0) + dry * (airFractions[part] ?? 0);
+      }
+      fractions[water] = (fractions[water] ?? 0) + fraction * waterOfAir;
+    } else {
+      const index = indexOf.get(id);
+      if (index === undefined) refuseUnknownGas(library, id);
+      else fractions[index] = (fractions[index] ?? 0) + fraction;
+    }
   }
   if (Math.abs(sum - 1) > compositionSumTolerance) {
     throw new InvalidInput(
@@ -127,18 +154,27 @@ function fillSlots(
       [{ path: '/composition', problem: `sums to ${String(sum)}` }],
     );
   }
-  for (const id in composition) {
-    const fraction = (composition[id] ?? 0) / sum;
-    if (id === 'air') {
-      const dry = fraction * (1 - waterOfAir);
-      for (const part of workspace.air) part.slot.fraction += dry * part.fraction;
-      workspace.water.fraction += fraction * waterOfAir;
-    } else {
-      const slot = workspace.byId.get(id);
-      if (slot === undefined) refuseUnknownGas(library, id);
-      else slot.fraction += fraction;
-    }
+  if (sum === 1) return;
+  for (let index = 0; index < fractions.length; index += 1) {
+    fractions[index] = (fractions[index] ?? 0) / sum;
   }
+}
+
+function setPureTerms({ gases, pureTerms }: Workspace, index: number, T: number): void {
+  const gas = gases[index];
+  if (gas === undefined) return;
+  const at = index * pureWidth;
+  pureTerms[at] = T;
+  pureTerms[at + 1] = idealHeatCapacity(gas, T);
+  writePureVirial(gas, T, pureTerms, at + 2);
+}
+
+function setCrossTerms({ pairs, crossTerms }: Workspace, index: number, T: number): void {
+  const pair = pairs[index];
+  if (pair === undefined) return;
+  const at = index * crossWidth;
+  crossTerms[at] = T;
+  writeCrossVirial(pair, T, crossTerms, at + 1);
 }
 
 /**
@@ -162,39 +198,38 @@ export function mixtureTerms(
   waterOfAir: number,
 ): MixtureTerms {
   const workspace = workspaceOf(library);
-  fillSlots(library, workspace, composition, waterOfAir);
+  setFractions(library, workspace, composition, waterOfAir);
+  const { fractions, present, molarMasses, pureTerms, crossTerms } = workspace;
+  const count = fractions.length;
+  let presentCount = 0;
   let molarMassKgPerMol = 0;
   let heatCapacity = 0;
   let b = 0;
   let tb1 = 0;
   let t2b2 = 0;
-  let oxygenFraction = 0;
-  for (const slot of workspace.slots) {
-    const x = slot.fraction;
+  for (let i = 0; i < count; i += 1) {
+    const x = fractions[i] ?? 0;
     if (x === 0) continue;
-    if (slot.temperatureK !== T) {
-      slot.heatCapacity = idealHeatCapacity(slot.gas, T);
-      slot.terms = pureVirial(slot.gas, T);
-      slot.temperatureK = T;
+    const at = i * pureWidth;
+    if (pureTerms[at] !== T) setPureTerms(workspace, i, T);
+    molarMassKgPerMol += x * (molarMasses[i] ?? 0);
+    heatCapacity += x * (pureTerms[at + 1] ?? 0);
+    b += x * x * (pureTerms[at + 2] ?? 0);
+    tb1 += x * x * (pureTerms[at + 3] ?? 0);
+    t2b2 += x * x * (pureTerms[at + 4] ?? 0);
+    // The pairs with the species met before.
+    for (let k = 0; k < presentCount; k += 1) {
+      const j = present[k] ?? 0;
+      const pair = j * count + i;
+      const crossAt = pair * crossWidth;
+      if (crossTerms[crossAt] !== T) setCrossTerms(workspace, pair, T);
+      const weight = 2 * x * (fractions[j] ?? 0);
+      b += weight * (crossTerms[crossAt + 1] ?? 0);
+      tb1 += weight * (crossTerms[crossAt + 2] ?? 0);
+      t2b2 += weight * (crossTerms[crossAt + 3] ?? 0);
     }
-    molarMassKgPerMol += x * slot.molarMassKgPerMol;
-    heatCapacity += x * slot.heatCapacity;
-    if (slot.isOxygen) oxygenFraction = x;
-    b += x * x * slot.terms.b;
-    tb1 += x * x * slot.terms.tb1;
-    t2b2 += x * x * slot.terms.t2b2;
-    for (const cross of slot.crosses) {
-      const y = cross.other.fraction;
-      if (y === 0) continue;
-      if (cross.temperatureK !== T) {
-        cross.terms = crossVirial(cross.pair, T);
-        cross.temperatureK = T;
-      }
-      const weight = 2 * x * y;
-      b += weight * cross.terms.b;
-      tb1 += weight * cross.terms.tb1;
-      t2b2 += weight * cross.terms.t2b2;
-    }
+    present[presentCount] = i;
+    presentCount += 1;
   }
   return {
     molarMassKgPerMol,
@@ -202,9 +237,56 @@ export function mixtureTerms(
     b,
     tb1,
     t2b2,
-    oxygenFraction,
-    waterFraction: workspace.water.fraction,
+    oxygenFraction: fractions[workspace.oxygen] ?? 0,
+    waterFraction: fractions[workspace.water] ?? 0,
   };
+}
+
+/**
+ * Second virial coefficient of dry air [m^3/mol].
+ *
+ *   B = sum_i sum_j x_i x_j B_ij over nitrogen, oxygen, argon and carbon dioxide
+ *
+ * @param library  gas data [data]
+ * @param T  temperature [K], 240 to 330
+ * @returns  B [m^3/mol]
+ * Source: prausnitz-mixing-rules. Assumes: dry air of four components.
+ * Accuracy: that of the pure and cross coefficients.
+ * @example 1e6 * dryAirVirial(library, 300) // -7.2
+ */
+export function dryAirVirial(library: GasLibrary, T: number): number {
+  const workspace = workspaceOf(library);
+  const { airIndices, airFractions, airTerms, pureTerms, crossTerms, stride } = workspace;
+  if (airTerms[0] === T) return airTerms[1] ?? 0;
+  let b = 0;
+  for (let one = 0; one < airIndices.length; one += 1) {
+    const i = airIndices[one] ?? 0;
+    const x = airFractions[one] ?? 0;
+    if (pureTerms[i * pureWidth] !== T) setPureTerms(workspace, i, T);
+    b += x * x * (pureTerms[i * pureWidth + 2] ?? 0);
+    for (let other = 0; other < one; other += 1) {
+      const pair = (airIndices[other] ?? 0) * stride + i;
+      if (crossTerms[pair * crossWidth] !== T) setCrossTerms(workspace, pair, T);
+      b += 2 * x * (airFractions[other] ?? 0) * (crossTerms[pair * crossWidth + 1] ?? 0);
+    }
+  }
+  airTerms[0] = T;
+  airTerms[1] = b;
+  return b;
+}
+
+/**
+ * Molar mass of dry air as every mixture here counts it [kg/mol].
+ *
+ *   M = sum of x_i M_i over nitrogen, oxygen, argon and carbon dioxide
+ *
+ * @param library  gas data [data]
+ * @returns  molar mass [kg/mol]
+ * Source: iupac-atomic-weights. Assumes: dry air of four components. Accuracy: 1e-5 of itself.
+ * @example dryAirMolarMass(library) // 0.0289657
+ */
+export function dryAirMolarMass(library: GasLibrary): number {
+  return workspaceOf(library).airMolarMass;
 }
 
 /**
@@ -224,7 +306,11 @@ export function speciesFractions(
   waterOfAir: number,
 ): Composition {
   const workspace = workspaceOf(library);
-  fillSlots(library, workspace, composition, waterOfAir);
-  const present = workspace.slots.filter(({ fraction }) => fraction > 0);
-  return Object.fromEntries(present.map(({ gas, fraction }) => [gas.id, fraction]));
+  setFractions(library, workspace, composition, waterOfAir);
+  return Object.fromEntries(
+    workspace.gases.flatMap(({ id }, index) => {
+      const fraction = workspace.fractions[index] ?? 0;
+      return fraction > 0 ? [[id, fraction]] : [];
+    }),
+  );
 }
