@@ -4,6 +4,7 @@ import type { FormFields } from '../web/forms/form-fields.js';
 import { planTexts as words } from '../web/texts/en-plans.js';
 import type { ChoiceLists, Option } from '../web/views/field-spec.js';
 import { rowNumbersIn } from '../web/views/form-value.js';
+import { sentence } from '../web/views/sentence.js';
 import { postureOptions } from './breathing-heights.js';
 
 /** Rows of the form that other rows can name: their ids with their titles as typed. */
@@ -30,7 +31,10 @@ export function planLists(
       { value: 'lift', label: words.stock.lift },
       { value: 'vehicle', label: words.stock.vehicle },
     ],
-    gases: Object.values(gases.species).map(({ id, name }) => ({ value: id, label: name })),
+    gases: Object.values(gases.species).map(({ id, name }) => ({
+      value: id,
+      label: sentence(name),
+    })),
     breathingHeights: postureOptions(catalogue.policy),
     acts: namedRows(fields, 'acts'),
     stock: namedRows(fields, 'stock'),

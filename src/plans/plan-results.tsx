@@ -25,7 +25,7 @@ function Decision({ assessment }: { readonly assessment: Assessment }): VNode {
   const { decision, governing } = assessment;
   const same = decision.asFiled === decision.withControls;
   return (
-    <section aria-label={words.decision}>
+    <>
       <DecisionBox
         word={decision.asFiled}
         label={same ? words.decision : words.asFiled}
@@ -37,7 +37,7 @@ function Decision({ assessment }: { readonly assessment: Assessment }): VNode {
           <dt>{words.governing}</dt>
           <dd>
             {governing.zoneTitle}, {words.cases[governing.caseName]},{' '}
-            {words.answers[governing.answer].toLowerCase()}
+            {words.answers[governing.answer].toLowerCase()}{' '}
             <OpenableFigure figure={governing.figure} />
             {words.governingLevel} <OpenableFigure figure={governing.limit} />
           </dd>
@@ -45,7 +45,7 @@ function Decision({ assessment }: { readonly assessment: Assessment }): VNode {
           <dd>{governing.row}</dd>
         </dl>
       )}
-    </section>
+    </>
   );
 }
 
@@ -145,7 +145,7 @@ export function PlanResults(props: {
           <h2 id="section-title">{words.section}</h2>
           <figure class="drawn" tabIndex={0} aria-label={words.section}>
             <SectionDrawing view={assessment.section} />
-            <figcaption>{assessment.section.moment}</figcaption>
+            <figcaption>{sentence(assessment.section.moment)}</figcaption>
           </figure>
         </section>
       )}

@@ -173,7 +173,8 @@ function Row(
     const field = spec.fields.find((entry) => entry.key === key);
     return field === undefined ? '' : fieldText(field, row, state, lists);
   });
-  const [own = '', ...rest] = texts;
+  const [own = '', ...others] = texts;
+  const facts = others.filter((text) => text !== '');
   const title = own === '' ? `${spec.noun} ${String(number)}` : own;
   const problem = problemOf(state, row);
   const isWrong =
@@ -208,13 +209,16 @@ function Row(
     <details class={isWrong ? 'row row-wrong' : 'row'} id={fieldId(row)} open={isOpen}>
       <summary>
         <span class="row-title">{title}</span>
-        {rest
-          .filter((text) => text !== '')
-          .map((text) => (
-            <span key={text} class="row-fact">
-              {text}
-            </span>
-          ))}
+        {facts.length > 0 && (
+          <span class={facts.length > 3 ? 'row-facts long' : 'row-facts'}>
+            {facts.map((text, at) => (
+              <span key={at}>
+                {at > 0 && ' \u00b7 '}
+                {text}
+              </span>
+            ))}
+          </span>
+        )}
       </summary>
       {content}
     </details>

@@ -106,7 +106,8 @@ function readOne(
       spec.kind === 'figure' ? spec : spec.units.find(({ key }) => key === fields[`${name}-unit`]);
     if (chosen === undefined) {
       // Taking the first unit for granted could be wrong by a factor of a thousand.
-      if (text !== undefined) complain(`${name}-unit`, `${spec.label}: choose the unit`);
+      const isStated = text !== undefined || fields[`${name}-origin`] !== undefined;
+      if (isStated) complain(`${name}-unit`, `${spec.label}: choose the unit`);
       return;
     }
     const read = readFigure(fields, name, {
