@@ -305,6 +305,27 @@ export const sources = {
       'Straight displacement, the formula of British trade guidance GN 11 as used by universities',
     seen: 'second-hand',
   },
+  plan: {
+    title: 'As entered in the plan, with the origin its entry names',
+    seen: 'first-hand',
+  },
+  'acklam-2003': {
+    title: 'Acklam 2003: rational approximation of the normal quantile',
+    seen: 'from memory',
+  },
+  'mckay-1979': {
+    title: 'McKay, Beckman and Conover, Technometrics 21 (1979) 239: Latin hypercube sampling',
+    seen: 'from memory',
+  },
+  'hyndman-fan-1996': {
+    title: 'Hyndman and Fan, American Statistician 50 (1996) 361: sample quantiles',
+    seen: 'from memory',
+  },
+  'spearman-1904': { title: 'Spearman 1904: rank correlation', seen: 'from memory' },
+  'rang-angermann-2005': {
+    title: 'Rang and Angermann, BIT 45 (2005) 761: new Rosenbrock W-methods, ROS34PW2',
+    seen: 'from memory',
+  },
 } as const satisfies Record<string, Source>;
 
 export type SourceKey = keyof typeof sources;

@@ -2,6 +2,7 @@ import type { AirGasTable } from '../../src/science/room-air/air-gases.js';
 import type { AirInput } from '../../src/science/room-air/air-input.js';
 import { airModel } from '../../src/science/room-air/air-model.js';
 import { layerNetwork, withoutPulses } from '../../src/science/room-air/layer-network.js';
+import { distributionValue } from '../../src/science/room-air/input-distributions.js';
 import { usualLayers, type LayerParameters } from '../../src/science/room-air/layer-parameters.js';
 import { layeredTrack, type LayerTrack } from '../../src/science/room-air/layered-track.js';
 import { boundReleases } from '../../src/science/room-air/zone-bound.js';
@@ -391,6 +392,32 @@ export const layerAnswers: Answers = {
       layer_gas_fraction: each((at) => fraction(track, at, 0, 'CO2')),
       upper_gas_fraction: each((at) => fraction(track, at, 1, 'CO2')),
       second_room_gas_fraction: each((at) => fraction(track, at, 2, 'CO2')),
+    };
+  },
+  'AC-U01': (inputs) => {
+    const i = read<{
+      release_m3_per_s: number;
+      flow_median_m3_per_s: number;
+      flow_gsd: number;
+    }>(inputs);
+    const flow = (p: number): number =>
+      distributionValue(
+        { kind: 'lognormal', median: i.flow_median_m3_per_s, geometricDeviation: i.flow_gsd },
+        p,
+      );
+    // The mean of a quotient of a lognormal by the midpoints of equal strata.
+    const strata = 200_000;
+    let mean = 0;
+    for (let k = 0; k < strata; k++) {
+      mean += i.release_m3_per_s / flow((k + 0.5) / strata) / strata;
+    }
+    // The tail beyond the last midpoints, from the exact mean of the lognormal ratio.
+    const exact = (i.release_m3_per_s / flow(0.5)) * Math.exp(0.5 * Math.log(i.flow_gsd) ** 2);
+    return {
+      p05: i.release_m3_per_s / flow(0.95),
+      p50: i.release_m3_per_s / flow(0.5),
+      p95: i.release_m3_per_s / flow(0.05),
+      mean: Math.abs(mean / exact - 1) < 1e-5 ? exact : mean,
     };
   },
   'AC-P02': (inputs) => {

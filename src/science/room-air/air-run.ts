@@ -26,6 +26,7 @@ import {
 } from './layered-answer.js';
 import { adverseLayers, usualLayers, type LayerParameters } from './layer-parameters.js';
 import type { LayerTrack } from './layered-track.js';
+import { layeredBands, type Band, type BandMouth } from './layered-band.js';
 import { mixedTrack } from './mixed-track.js';
 import {
   pieceRows,
@@ -133,7 +134,9 @@ export function airRun(
     };
   }
   crossings.sort((a, b) => a.atS - b.atS);
-  return { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
+  const answer = { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
+  if (!wantsLayers || !input.uncertainty) return answer;
+  return { ...answer, ...withBands(model, gases, runs, releases, zones, timesS) };
 }
 
 function outputTimes(input: AirInput): readonly number[] {
@@ -183,6 +186,68 @@ interface ZonePlace {
   readonly mixedSeries: AirSeries;
   readonly timesS: readonly number[];
   readonly layers: LayerRuns | undefined;
+}
+
+/** The zones with the band of their layered answer, and what drives it. */
+function withBands(
+  model: AirModel,
+  gases: AirGasTable,
+  runs: MixedRuns,
+  releases: readonly BoundRelease[],
+  zones: Readonly<Record<string, ZoneAir>>,
+  timesS: readonly number[],
+): Pick<AirResult, 'zones' | 'drivers'> {
+  const input = model.input;
+  const places = (input.zones ?? []).flatMap((zone) =>
+    [zone.heightM, FALLEN_HEIGHT_M].map((heightM) => ({ zone, heightM })),
+  );
+  const mouths = places.map(({ zone, heightM }): BandMouth => {
+    const space = model.indexOf.get(zone.space) ?? 0;
+    const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
+    const bound = boundAnswer({ model, runs, releases }, mouth);
+    return {
+      zone: heightM === zone.heightM ? zone.id : '',
+      at: layerMouth(model, mouth, zone.floorLevelM),
+      bounds: bound.pieces.flatMap((piece) => piece.rows),
+    };
+  });
+  const { bands, drivers } = layeredBands(input, gases, mouths, timesS, model.gases);
+  const seriesAt = (rows: readonly Float64Array[]): AirSeries =>
+    seriesOf(
+      model,
+      {
+        pieces: [
+          {
+            rows: rows.map((values, i) => ({ t: timesS[i] ?? 0, values, slopes: undefined })),
+            valuesAt: () => new Float64Array(0),
+          },
+        ],
+      },
+      timesS,
+    );
+  const banded = (height: HeightAir, band: Band | undefined): HeightAir =>
+    band && height.layered
+      ? {
+          ...height,
+          layered: {
+            ...height.layered,
+            p05: seriesAt(band.p05),
+            p50: seriesAt(band.p50),
+            p95: seriesAt(band.p95),
+          },
+        }
+      : height;
+  return {
+    zones: Object.fromEntries(
+      (input.zones ?? []).flatMap((zone, i) => {
+        const air = zones[zone.id];
+        if (!air) return [];
+        const at02M = banded(air.at02M, bands[2 * i + 1]);
+        return [[zone.id, { ...air, ...banded(air, bands[2 * i]), at02M }]];
+      }),
+    ),
+    drivers: drivers.filter((driver) => driver.zone !== ''),
+  };
 }
 
 interface LayerRun {
@@ -239,7 +304,10 @@ function layersOfSpace(
   };
 }
 
-function boundAnswer(place: ZonePlace, mouth: BoundMouth): AnswerTrack {
+function boundAnswer(
+  place: Pick<ZonePlace, 'model' | 'runs' | 'releases'>,
+  mouth: BoundMouth,
+): AnswerTrack {
   const { model, runs, releases } = place;
   const width = model.gases.length + 1;
   const boundOf = (t: number, fractions: Float64Array): Float64Array => {

@@ -329,7 +329,11 @@ export function layerRates(
         const difference = Math.max(0, sign * ((molarMasses[weir.a] ?? air) - outside));
         const gPrime = (GRAVITY_M_PER_S2 * difference) / air;
         const flow =
-          (weir.dischargeCoefficient / 3) * weir.widthM * smoothRoot(gPrime) * head ** 1.5;
+          (weir.dischargeCoefficient / 3) *
+          weir.widthM *
+          smoothRoot(gPrime) *
+          head ** 1.5 *
+          presence(weir.a);
         // What leaves through the lower part of an opening comes back as air through the rest.
         move(weir.a, OUT, flow);
         breatheOutdoors(layers + first.group, flow);
@@ -344,7 +348,7 @@ export function layerRates(
       const own = (layer: number, upper: number, head: number): number => {
         if (head <= 0) return 0;
         const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
-        return smoothRoot(gravity) * head ** 1.5;
+        return smoothRoot(gravity) * head ** 1.5 * presence(layer);
       };
       const flow =
         WEIR_CONSTANT * weir.widthM * (own(weir.a, upperB, headA) - own(weir.b, upperA, headB));
@@ -385,7 +389,7 @@ export function layerRates(
       let fromLayer = 0;
       if (layer >= 0) {
         const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
-        fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0);
+        fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0) * presence(layer);
       }
       const outdoorShare = intake.outdoorM3PerS / total;
       const parts = [

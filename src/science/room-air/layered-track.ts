@@ -3,7 +3,7 @@ import { hermiteValue, type AcceptedStep } from '../numerics/runge-kutta.js';
 import { flowSegment } from './air-flows.js';
 import type { AirModel } from './air-model.js';
 import { basinLevel } from './layer-geometry.js';
-import type { LayerNetwork } from './layer-network.js';
+import type { LayerNetwork, LayerWeir } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import {
   FILM_DEPTH_M,
@@ -68,11 +68,14 @@ export function layeredTrack(
     const from = edges[e] ?? 0;
     const to = edges[e + 1] ?? 0;
     const segment = layerSegment(network, flowSegment(model, from, to, 'pushOut'));
-    const fed = new Set(
-      network.sources
-        .filter(({ plan }) => plan.startS <= from && plan.endS >= to)
-        .map((source) => source.layer),
-    );
+    const feeding: Feeding = {
+      sources: new Set(
+        network.sources
+          .filter(({ plan }) => plan.startS <= from && plan.endS >= to)
+          .map((source) => source.layer),
+      ),
+      weirs: segment.weirs,
+    };
     const emit = (step: AcceptedStep): void => {
       while (wanted < timesS.length && (timesS[wanted] ?? Infinity) <= step.t1) {
         const t = timesS[wanted] ?? step.t1;
@@ -92,7 +95,7 @@ export function layeredTrack(
     state = Float64Array.from(
       stiffState(rates, state, from, to, options, (step) => {
         emit(step);
-        return afterJoins(network, layout, step.y1, fed, joined, parameters.joinContrast);
+        return afterJoins(network, layout, step.y1, feeding, joined, parameters.joinContrast);
       }),
     );
   }
@@ -159,12 +162,37 @@ function unit(x: number): number {
   return Math.min(1, Math.max(0, x));
 }
 
+/** What keeps a layer in being: sources into it, and edges over which another layer pours. */
+interface Feeding {
+  readonly sources: ReadonlySet<number>;
+  readonly weirs: readonly LayerWeir[];
+}
+
+/** Whether a source or another layer still feeds a layer. */
+function isFed(
+  network: LayerNetwork,
+  feeding: Feeding,
+  volumes: Float64Array,
+  layer: number,
+): boolean {
+  if (feeding.sources.has(layer)) return true;
+  return feeding.weirs.some(({ a, b, sillA, sillB }) => {
+    if (b < 0 || (a !== layer && b !== layer)) return false;
+    const other = a === layer ? b : a;
+    const basin = network.layers[other]?.basin;
+    if (!basin) return false;
+    const volume = volumes[other] ?? 0;
+    if (volume <= 2 * FILM_DEPTH_M * basin.areaM2) return false;
+    return basinLevel(basin, volume) > (other === a ? sillA : sillB);
+  });
+}
+
 /** The state after layers have joined the air above them; undefined when none did. */
 function afterJoins(
   network: LayerNetwork,
   layout: LayerLayout,
   state: Float64Array,
-  fed: ReadonlySet<number>,
+  feeding: Feeding,
   joined: Set<number>,
   joinContrast: number,
 ): Float64Array | undefined {
@@ -211,7 +239,7 @@ function afterJoins(
       }
       return next;
     }
-    if (heavier < 0 || (!fed.has(l) && contrast < joinContrast)) join(l);
+    if (heavier < 0 || (contrast < joinContrast && !isFed(network, feeding, volumes, l))) join(l);
   }
   return next;
 }
