@@ -5,6 +5,13 @@ import type { ZoneOutcome } from './zone-outcomes.js';
 /** An act with a smaller share of the gas than this is not named as its cause. */
 const smallestShare = 0.1;
 
+/** Acts that let gas out of a container, planned or by a slip. */
+export function actsUsing(plan: ResolvedPlan, stock: string): readonly string[] {
+  return plan.acts
+    .filter((act) => [...act.planned, ...act.worstCredible].some((one) => one.stock === stock))
+    .map((act) => act.id);
+}
+
 /** Spaces that air can reach from each other, by openings, transfers or a shared air system. */
 export function connectedSpaces(plan: ResolvedPlan, from: string): ReadonlySet<string> {
   const links = new Map<string, Set<string>>();
@@ -58,5 +65,8 @@ export function actsBehind(
     byAct.set(one.release.act, (byAct.get(one.release.act) ?? 0) + amountOf(one, outcome));
   }
   const total = [...byAct.values()].reduce((sum, amount) => sum + amount, 0);
-  return [...byAct].filter(([, amount]) => amount >= smallestShare * total).map(([act]) => act);
+  const named = [...byAct]
+    .filter(([, amount]) => amount >= smallestShare * total)
+    .flatMap(([act]) => (act.startsWith('stock:') ? actsUsing(plan, act.slice(6)) : [act]));
+  return [...new Set(named)];
 }

@@ -6,10 +6,12 @@ import type {
   AirSystem,
 } from '../science/room-air/air-input.js';
 import type {
+  ResolvedAirSystem,
   ResolvedGroup,
   ResolvedPlan,
   ResolvedRelease,
   ResolvedSpace,
+  ResolvedStock,
 } from './resolved-plan.js';
 
 /** People are in their places this long before a performance begins. */
@@ -41,6 +43,8 @@ export interface AirCase {
   readonly input: AirInput;
   readonly window: DayWindow;
   readonly placed: readonly PlacedRelease[];
+  /** Length of the shortest performance [s]: what a mean over the show is taken over. */
+  readonly shortestShowS: number;
 }
 
 const optional = <K extends string, V>(key: K, value: V | null): Partial<Record<K, V>> =>
@@ -70,11 +74,56 @@ export function plannedReleases(plan: ResolvedPlan): readonly PlacedRelease[] {
   );
 }
 
+const isCold = (item: ResolvedStock) => item.idleLossPerHour > 0 && item.amountMol > 0;
+
+/**
+ * What cold stock gives off in the spaces where it stands, lid on, from when it arrives until it
+ * leaves or is gone: a small steady source that belongs to the day as planned.
+ */
+export function idleReleases(plan: ResolvedPlan, window: DayWindow): readonly PlacedRelease[] {
+  const spaces = new Set(plan.spaces.map((space) => space.id));
+  return plan.stock
+    .filter((item) => isCold(item) && spaces.has(item.place))
+    .flatMap((item): PlacedRelease[] => {
+      const startS = Math.max(item.fromS ?? window.startS, window.startS);
+      const standsS = Math.min(item.toS ?? window.endS, window.endS) - startS;
+      const durationS = Math.min(standsS, 3600 / item.idleLossPerHour);
+      if (durationS <= 0) return [];
+      const share = (item.idleLossPerHour * durationS * item.count) / 3600;
+      return [
+        {
+          release: {
+            act: `stock:${item.id}`,
+            title: `${item.title}, idle loss`,
+            space: item.place,
+            composition: item.composition,
+            amountMol: item.amountMol * share,
+            massKg: item.massKg * share,
+            startS: 0,
+            durationS,
+            profile: 'steady',
+            timeConstantS: null,
+            heightM: null,
+            temperatureK: null,
+            manner: 'gentle',
+            burned: false,
+            episode: null,
+            stock: item.id,
+          },
+          startS,
+          episode: episodeAt(plan, startS),
+        },
+      ];
+    });
+}
+
 /** From the first doors or act of the day until the air has been followed after the last. */
 export function dayWindow(plan: ResolvedPlan): DayWindow {
   const starts = [
     ...plan.performances.map((performance) => performance.startS - doorsBeforeS),
     ...plan.acts.flatMap((act) => act.startsS),
+    // Cold stock has been giving off gas since it came.
+    ...plan.stock.flatMap((item) => (isCold(item) && item.fromS !== null ? [item.fromS] : [])),
   ];
   const ends = [
     ...plan.performances.map((performance) => performance.endS),
@@ -88,7 +137,7 @@ export function dayWindow(plan: ResolvedPlan): DayWindow {
 
 /** The window of a worst credible release that begins at a given time. */
 export function worstWindow(day: DayWindow, startS: number): DayWindow {
-  return { startS: day.startS, endS: startS + afterWorstS };
+  return { startS: Math.min(day.startS, startS), endS: startS + afterWorstS };
 }
 
 function ambientOf(plan: ResolvedPlan): AirAmbient {
@@ -130,8 +179,25 @@ function timedWithin(
   return { ...optional('fromS', fromS), ...optional('toS', toS) };
 }
 
-function systemsOf(plan: ResolvedPlan, window: DayWindow): readonly AirSystem[] {
-  return plan.airSystems.flatMap((system): AirSystem[] => {
+/** How the air of the venue is run: as planned, nothing running, or plant that only returns air. */
+export type AirMode = 'planned' | 'fansOff' | 'airReturned';
+
+/** A plant that recirculates, in the mode in which all of its air is returned and none is fresh. */
+const returningAll = (system: ResolvedAirSystem): ResolvedAirSystem =>
+  system.recirculatedM3PerS === 0
+    ? system
+    : {
+        ...system,
+        drive: 'supply',
+        freshAirM3PerS: 0,
+        recirculatedM3PerS:
+          system.recirculatedM3PerS + system.freshAirM3PerS + (system.supplyM3PerS ?? 0),
+      };
+
+function systemsOf(plan: ResolvedPlan, window: DayWindow, mode: AirMode): readonly AirSystem[] {
+  if (mode === 'fansOff') return [];
+  const systems = mode === 'planned' ? plan.airSystems : plan.airSystems.map(returningAll);
+  return systems.flatMap((system): AirSystem[] => {
     const timed = timedWithin(system, window);
     if (!timed) return [];
     return [
@@ -189,14 +255,14 @@ export function outputInterval(window: DayWindow): number {
 /**
  * The input of the air model for one case of a plan.
  *
- * @param placed  what is let out, and when
- * @param fansOff true: no air system runs, only infiltration and openings remain
+ * @param placed what is let out, and when
+ * @param mode   how the air is run; with fans off only infiltration and openings remain
  */
 export function airCase(
   plan: ResolvedPlan,
   placed: readonly PlacedRelease[],
   window: DayWindow,
-  fansOff: boolean,
+  mode: AirMode,
 ): AirCase {
   const within = placed.filter(({ startS }) => startS >= window.startS && startS <= window.endS);
   const input: AirInput = {
@@ -236,9 +302,10 @@ export function airCase(
         },
       ];
     }),
-    airSystems: fansOff ? [] : systemsOf(plan, window),
+    airSystems: systemsOf(plan, window, mode),
     infiltration: plan.infiltration,
-    transfers: plan.transfers,
+    // What moves air from room to room stands still with the fans.
+    transfers: mode === 'fansOff' ? [] : plan.transfers,
     releases: within.map((one) => releaseOf(one, window)),
     occupants: occupantsOf(plan, window, plan.groups),
     zones: plan.groups.map((group) => ({
@@ -248,5 +315,8 @@ export function airCase(
       floorLevelM: group.floorLevelM,
     })),
   };
-  return { input, window, placed: within };
+  const shortestShowS = Math.min(
+    ...plan.performances.map((performance) => performance.endS - performance.startS),
+  );
+  return { input, window, placed: within, shortestShowS };
 }

@@ -1,8 +1,12 @@
 import { InvalidInput } from '../errors.js';
 import { airGasTable } from '../science/room-air/air-gases.js';
+import { oxygenPartialPressure, vapourPressure } from '../science/room-air/water-vapour.js';
+import { airAnswers } from './air-answers.js';
 import type {
   ActResult,
+  Answer,
   Assessment,
+  Condition,
   ControlResult,
   DayEvent,
   DecisionPair,
@@ -24,7 +28,7 @@ import {
   type Hit,
 } from './decision-table.js';
 import type { Evaluation } from './evaluation.js';
-import { freshAirOf, levelFigure, outcomeFigure, plainFigure } from './figures.js';
+import { freshAirOf, levelFigure, statisticFigure, plainFigure, sourceText } from './figures.js';
 import { planFindings } from './findings.js';
 import { holdTimes } from './hold-times.js';
 import { atNineDigits, canonicalHash } from './input-hash.js';
@@ -39,8 +43,12 @@ import { fitting } from './schema-check.js';
 import { sectionView } from './section-view.js';
 import { soundResults } from './sound-results.js';
 import { zoneResults } from './zone-results.js';
+import type { LevelName } from './levels.js';
+import type { ZoneOutcome } from './zone-outcomes.js';
 
 export type { AssessmentData } from './assessment-data.js';
+
+const freshOxygen = 0.2095;
 
 /** The rule pack that a plan names, or the international one where it names none. */
 function packOf(plan: PlanFile, data: AssessmentData): RulePack {
@@ -74,57 +82,81 @@ function partWord(hits: readonly Hit[], known: Knowledge): DecisionWord {
   return known.hasUnknown ? worseWord(word, 'goWithConditions') : word;
 }
 
+/** How far a number has gone from fresh air to its level [-]; 1 at the level itself. */
+function spentShare({ level, answers }: ZoneOutcome, answer: Answer, name: LevelName): number {
+  const { statistic, value: limit } = level[name];
+  const found = answers[answer] ?? answers.mixed;
+  const value = found?.statistics[statistic] ?? found?.value ?? 0;
+  const fresh = level.quantity.startsWith('oxygen') ? freshOxygen : 0;
+  return Math.abs(value - fresh) / Math.abs(limit - fresh);
+}
+
+/** The gravest hit; of several with the same word and row the one furthest past its level. */
 function gravestHit(hits: readonly Hit[]): Hit | null {
-  const order = ['go', 'goWithConditions', 'notEnoughKnown', 'noGo'];
+  const spent = (hit: Hit) => (hit.outcome ? spentShare(hit.outcome, hit.answer, hit.level) : 0);
   return hits.reduce<Hit | null>((gravest, hit) => {
     if (!gravest) return hit;
-    return order.indexOf(hit.word) > order.indexOf(gravest.word) ? hit : gravest;
+    if (hit.word !== gravest.word) {
+      return worseWord(hit.word, gravest.word) === hit.word ? hit : gravest;
+    }
+    return hit.row === gravest.row && spent(hit) > spent(gravest) ? hit : gravest;
   }, null);
 }
 
-function governingOf(evaluation: Evaluation, nameOf: (gas: string) => string): Governing | null {
-  const { resolved, hits, planned } = evaluation;
-  const hit = gravestHit(hits.filter((candidate) => candidate.outcome !== null));
-  if (hit?.outcome) {
-    const figure =
-      outcomeFigure(hit.outcome, hit.answer, resolved) ??
-      outcomeFigure(hit.outcome, 'mixed', resolved);
-    const limit = levelFigure(hit.outcome.level, hit.level);
-    if (!figure) return null;
-    return {
-      zone: hit.outcome.zone,
-      zoneTitle: hit.outcome.floorCheck
-        ? `${hit.outcome.group.title}, 0.2 m above the floor`
-        : hit.outcome.group.title,
-      quantity: quantityWords(hit.outcome.level, nameOf),
-      answer: hit.answer,
-      caseName: hit.caseName,
-      figure,
-      limit,
-      row: hit.row,
-      reason: hitReason(hit, figure, limit),
-    };
-  }
-  // Nothing fails: the number that comes closest to its aim is the one to watch.
+/** The number nearest to its aim on the planned day: the one to watch where nothing fails. */
+function closestToAim(
+  { planned, resolved }: Evaluation,
+  nameOf: (gas: string) => string,
+): Omit<Governing, 'row' | 'reason'> | null {
   const closest = planned
-    .filter((outcome) => !outcome.floorCheck && outcome.answers.mixed)
-    .map((outcome) => {
-      const value = outcome.answers.mixed?.value ?? 0;
-      const fresh = outcome.level.failsWhen === 'below' ? 0.2095 : 0;
-      const aim = outcome.level.aim.value;
-      return { outcome, used: Math.abs(value - fresh) / Math.abs(aim - fresh) };
-    })
-    .sort((a, b) => b.used - a.used)[0]?.outcome;
-  const figure = closest ? outcomeFigure(closest, 'mixed', resolved) : null;
+    .filter((outcome) => outcome.judgedFully && outcome.answers.mixed)
+    .map((outcome) => ({ outcome, spent: spentShare(outcome, 'mixed', 'aim') }))
+    .sort((one, other) => other.spent - one.spent)[0]?.outcome;
+  const figure = closest ? statisticFigure(closest, 'mixed', 'aim', resolved) : null;
   if (!closest || !figure) return null;
   return {
     zone: closest.zone,
-    zoneTitle: closest.group.title,
+    zoneTitle: zoneTitle(closest),
     quantity: quantityWords(closest.level, nameOf),
     answer: 'mixed',
     caseName: 'planned',
     figure,
     limit: levelFigure(closest.level, 'aim'),
+  };
+}
+
+const zoneTitle = ({ floorCheck, group }: ZoneOutcome): string =>
+  floorCheck ? `${group.title}, 0.2 m above the floor` : group.title;
+
+function governingOf(known: Knowledge, nameOf: (gas: string) => string): Governing | null {
+  const { resolved, hits } = known.shown;
+  const hit = gravestHit(hits);
+  if (hit?.outcome) {
+    const answer = hit.outcome.answers[hit.answer] ? hit.answer : 'mixed';
+    const figure = statisticFigure(hit.outcome, answer, hit.level, resolved);
+    const limit = levelFigure(hit.outcome.level, hit.level);
+    if (!figure) return null;
+    return {
+      zone: hit.outcome.zone,
+      zoneTitle: zoneTitle(hit.outcome),
+      quantity: quantityWords(hit.outcome.level, nameOf),
+      answer,
+      caseName: hit.caseName,
+      figure,
+      limit,
+      row: hit.row,
+      reason: hitReason({ ...hit, answer }, figure, limit),
+    };
+  }
+  const closest = closestToAim(known.shown, nameOf);
+  if (!closest) return null;
+  // What decides is no number of a zone: the number nearest to its aim stands beside the reason.
+  if (hit) return { ...closest, row: hit.row, reason: hitReason(hit, null, null) };
+  if (known.word !== 'go') {
+    return { ...closest, row: 10, reason: 'a figure that nobody knows has to be confirmed' };
+  }
+  return {
+    ...closest,
     row: 12,
     reason: 'every level is met; this number comes closest to its aim',
   };
@@ -161,7 +193,7 @@ function actResults(
       return caution ? [caution.text] : [];
     });
     const ownWorst = worst
-      .filter((one) => one.act === act.id)
+      .filter((one) => one.acts.includes(act.id))
       .flatMap((one) => one.placed.map((placed) => placed.release));
     const line = (release: ResolvedRelease) =>
       releaseLine(release, resolved.site.molarVolumeM3PerMol);
@@ -197,13 +229,19 @@ function controlResults(
         : target.caseName === 'fansOff'
           ? known.shown.fansOff
           : known.shown.planned;
-    const found = pool.find(
-      (outcome) =>
-        outcome.zone === target.zone &&
-        outcome.floorCheck === target.floorCheck &&
-        outcome.level.quantity === target.level.quantity,
-    );
-    return found ? outcomeFigure(found, hit.answer, known.shown.resolved) : null;
+    // Of several slips the one that leaves this zone worst off.
+    const found = pool
+      .filter(
+        (outcome) =>
+          outcome.zone === target.zone &&
+          outcome.floorCheck === target.floorCheck &&
+          outcome.level.quantity === target.level.quantity,
+      )
+      .sort(
+        (one, other) =>
+          spentShare(other, hit.answer, hit.level) - spentShare(one, hit.answer, hit.level),
+      )[0];
+    return found ? statisticFigure(found, hit.answer, hit.level, known.shown.resolved) : null;
   };
   const before = number(asFiled);
   const after = number(controlled);
@@ -253,6 +291,14 @@ function controlResults(
   return [...chosen, ...offered];
 }
 
+/** Chosen controls that the numbers with controls rest on. */
+function creditedControls(plan: PlanFile, data: AssessmentData) {
+  return (plan.controls ?? []).flatMap((chosen) => {
+    const control = data.catalogue.controls.find((candidate) => candidate.id === chosen.control);
+    return control && isCredited(control) ? [{ control, chosen }] : [];
+  });
+}
+
 function dayEvents({ resolved }: Evaluation): readonly DayEvent[] {
   const shows = resolved.performances.map((performance, index) => ({
     atS: performance.startS,
@@ -273,22 +319,39 @@ function assumptionsOf({ reader }: Evaluation): readonly StatedAssumption[] {
       `${row.name} ${String(Number(row.value.toPrecision(4)))} ${row.unit}`.trim() + `: ${row.why}`,
     figure: null,
     origin: row.origin,
-    source: row.source,
+    source: sourceText(row.source),
   }));
 }
 
-function climateOf(evaluation: Evaluation, pack: RulePack): Assessment['climate'] {
+function climateOf(
+  evaluation: Evaluation,
+  pack: RulePack,
+  gases: AssessmentData['gases'],
+): Assessment['climate'] {
   const { resolved, worst } = evaluation;
   const potential = (gas: string) => pack.warmingPotentials.find((row) => row.gas === gas) ?? null;
+  const equivalent = (release: ResolvedRelease): number => {
+    const parts = Object.entries(release.composition).map(([gas, share]) => ({
+      gas,
+      kg: share * (gases.species[gas]?.molarMass.molarMassKgPerMol ?? 0),
+    }));
+    const whole = parts.reduce((total, part) => total + part.kg, 0);
+    if (whole === 0) return 0;
+    return parts.reduce(
+      (total, { gas, kg }) =>
+        total + (potential(gas)?.kgCo2ePerKg ?? 0) * release.massKg * (kg / whole),
+      0,
+    );
+  };
   const sum = (releases: readonly ResolvedRelease[], times: number) =>
-    releases.reduce((total, release) => {
-      const gases = Object.keys(release.composition);
-      const only = gases.length === 1 ? gases[0] : undefined;
-      const row = only === undefined ? null : potential(only);
-      return total + (row ? row.kgCo2ePerKg * release.massKg * times : 0);
-    }, 0);
+    releases.reduce((total, release) => total + equivalent(release) * times, 0);
   const planned = resolved.acts.reduce(
-    (total, act) => total + sum(act.planned, act.startsS.length),
+    (total, act) =>
+      total +
+      sum(
+        act.planned.filter((release) => !release.burned),
+        act.startsS.length,
+      ),
     0,
   );
   const lost = Math.max(
@@ -315,7 +378,7 @@ function climateOf(evaluation: Evaluation, pack: RulePack): Assessment['climate'
 }
 
 function tableOf(hits: readonly Hit[], known: Knowledge): Assessment['decisionTable'] {
-  const title = (hit: Hit) => hit.outcome?.group.title ?? hit.detail;
+  const title = (hit: Hit) => (hit.outcome ? zoneTitle(hit.outcome) : hit.detail);
   const rows = decisionRows.map(({ row, test }) => {
     const fired = hits.filter((hit) => hit.row === row);
     return {
@@ -350,18 +413,26 @@ function tableOf(hits: readonly Hit[], known: Knowledge): Assessment['decisionTa
 export function assess(plan: PlanFile, data: AssessmentData): Assessment {
   requireReferences(plan, data.gases);
   const pack = packOf(plan, data);
-  const gases = airGasTable(data.gases);
   const nameOf = (gas: string) => data.gases.species[gas]?.name.toLowerCase() ?? gas;
 
-  const asFiled = knowledge(plan, data, pack, gases, true);
+  const answers = airAnswers(airGasTable(data.gases));
+  const context = { data, pack, answers };
+  const asFiled = knowledge(plan, context, true);
   const withControls = controlledPlan(plan, data.catalogue.controls);
-  const controlled =
-    withControls === plan ? asFiled : knowledge(withControls, data, pack, gases, false);
+  const controlled = withControls === plan ? asFiled : knowledge(withControls, context, false);
   const { shown } = asFiled;
   const { resolved, reader } = shown;
 
-  const decision: DecisionPair = { asFiled: asFiled.word, withControls: controlled.word };
-  const governing = governingOf(shown, nameOf);
+  const credited = creditedControls(plan, data);
+  // What a control earned holds only while the control does: it is a condition of the word.
+  const decision: DecisionPair = {
+    asFiled: asFiled.word,
+    withControls:
+      asFiled.word !== 'go' && credited.length > 0
+        ? worseWord(controlled.word, 'goWithConditions')
+        : controlled.word,
+  };
+  const governing = governingOf(asFiled, nameOf);
   const lowest = Math.min(
     1,
     ...shown.planned
@@ -383,7 +454,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
   const siteWords = {
     method: 'as stated, or the standard atmosphere at the altitude',
     formula: 'p = 101325 (1 - 2.25577e-5 h)^5.25588',
-    source: 'standard-atmosphere',
+    source: 'iso-2533',
   };
   const unknownConditions = [...reader.open.values()]
     .filter((figure) => figure.kind === 'unknown')
@@ -393,10 +464,19 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     quantity: (hit) => (hit.outcome ? quantityWords(hit.outcome.level, nameOf) : ''),
     space: spaceTitle,
   });
+  const controlConditions = credited.map(({ control, chosen }, index): Condition => ({
+    number: conditions.length + index + 1,
+    row: governing?.row ?? 12,
+    act: chosen.act ?? null,
+    zone: null,
+    text: `${control.title}${chosen.space === undefined ? '' : ` (${spaceTitle(chosen.space)})`}: ${chosen.note ?? control.text}`,
+    checklistLine: `${control.title}${chosen.space === undefined ? '' : `, ${spaceTitle(chosen.space)}`}: in place`,
+    blocksStart: true,
+  }));
   const confirmations =
     decision.withControls === 'goWithConditions'
       ? unknownConditions.map(({ figure, space }, index) => ({
-          number: conditions.length + index + 1,
+          number: conditions.length + controlConditions.length + index + 1,
           row: 10,
           act: null,
           zone: null,
@@ -433,20 +513,20 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
         source: 'plan',
       }),
     })),
-    conditions: [...conditions, ...confirmations],
+    conditions: [...conditions, ...controlConditions, ...confirmations],
     findings: planFindings(plan, resolved, data.catalogue.policy),
     refusals: shown.refusals,
     zones: zoneResults(shown, nameOf),
     sound,
-    largestAmounts: largestAmounts(shown, gases),
-    holdTimes: holdTimes(resolved, shown.dayAir, shown.dayResult, gases, data.catalogue.policy),
+    largestAmounts: largestAmounts(shown, answers),
+    holdTimes: holdTimes(shown, answers, data.catalogue.policy),
     questionsThatDecide: asFiled.questions,
     controls: controlResults(asFiled, controlled, data),
     rulesCited: rulesCited(pack, facts),
     cautions: cautionsFor(data.catalogue.cautions, facts),
     assumptions: assumptionsOf(shown),
     events: dayEvents(shown),
-    section: sectionView(shown, 'highest well-mixed value of the planned day'),
+    section: sectionView(shown, drawnMoment(shown), 'when the planned day is at its worst'),
     site: {
       pressure: plainFigure(resolved.site.pressurePa, 'Pa', siteWords),
       temperature: plainFigure(resolved.site.temperatureK, 'K', {
@@ -454,13 +534,19 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
         formula: 'as stated, or the default of the policy',
       }),
       altitude: plainFigure(resolved.site.altitudeM, 'm', siteWords),
-      freshAirOxygenPressure: plainFigure(0.2095 * resolved.site.pressurePa, 'Pa', {
-        ...siteWords,
-        formula: 'p(O2) = 0.2095 p, dry',
-      }),
+      freshAirOxygenPressure: plainFigure(
+        oxygenPartialPressure(
+          freshOxygen,
+          0,
+          resolved.site.pressurePa,
+          vapourPressure(resolved.site.temperatureK, resolved.site.relativeHumidity),
+        ),
+        'Pa',
+        { ...siteWords, formula: 'p(O2) = 0.2095 (p - water vapour), wet' },
+      ),
     },
     carriage: null,
-    climate: climateOf(shown, pack),
+    climate: climateOf(shown, pack, data.gases),
     decisionTable: tableOf(shown.hits, asFiled),
     engineVersion: data.engineVersion,
     inputHash: canonicalHash({
@@ -473,8 +559,16 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
   return atNineDigits(assessment);
 }
 
+/** The moment of the planned day worth drawing: of the gravest hit, else of the closest number. */
+function drawnMoment({ hits, planned, dayAir }: Evaluation): number {
+  const hit = gravestHit(hits.filter((one) => one.outcome?.caseName === 'planned'));
+  const outcome = hit?.outcome ?? planned[0];
+  const answer = hit?.answer ?? 'mixed';
+  return outcome?.answers[answer]?.atS ?? outcome?.answers.mixed?.atS ?? dayAir.window.startS;
+}
+
 const hitsIn = (hits: readonly Hit[], space: string): readonly Hit[] =>
-  hits.filter((hit) => hit.outcome?.group.space === space);
+  hits.filter((hit) => hit.space === space);
 
 /** " of (space)" where a path lies within a space of the venue, else nothing. */
 function statedPlace(path: string, plan: PlanFile): string {

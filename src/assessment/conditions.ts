@@ -1,7 +1,7 @@
 import type { Condition, Figure } from './assessment.js';
 import type { Hit, HitReason } from './decision-table.js';
 import { levelFigure } from './figures.js';
-import { answerWords, shortText } from './quantity-words.js';
+import { answerWords, shortText, stopText } from './quantity-words.js';
 
 interface Wording {
   readonly text: (where: string, quantity: string, stop: string, mouth: string) => string;
@@ -88,7 +88,7 @@ export function conditionsOf(
         : outcome.group.title
       : 'Everywhere';
     const level = outcome ? levelFigure(outcome.level, 'limit') : null;
-    const stop = level ? shortText(level) : '';
+    const stop = level ? stopText(level) : '';
     const mouth = outcome ? mouthWords(outcome.heightM, outcome.floorCheck) : '';
     const quantity = names.quantity(hit);
     const text = wording.text(where, quantity, stop, mouth);

@@ -3,6 +3,10 @@ import type { ChosenControl, PlanAct, PlanFile, PlanRelease, PlanStock } from '.
 
 /** Seat height where chairs take the place of the floor [m], when the plan names none. */
 const chairHeightM = 1.1;
+/** No chair puts a mouth higher than this [m]. */
+const highestSeatedM = 1.3;
+/** People above this height sit on a chair already, or stand [m]. */
+const floorSeatedBelowM = 0.7;
 
 type Change = (plan: PlanFile, chosen: ChosenControl) => PlanFile;
 
@@ -63,13 +67,16 @@ const changes: Partial<Record<Control['effect'], Change>> = {
           },
         },
   seatsRaised: (plan, chosen) => {
-    const heightM = chosen.value ?? chairHeightM;
+    const heightM = Math.min(chosen.value ?? chairHeightM, highestSeatedM);
     return {
       ...plan,
       event: {
         ...plan.event,
         audience: plan.event.audience.map((group) =>
           (chosen.space === undefined || group.zone.space === chosen.space) &&
+          // Seats are given to the audience on the floor; crew who kneel go on kneeling.
+          group.kind === 'public' &&
+          group.zone.heightM <= floorSeatedBelowM &&
           group.zone.heightM < heightM
             ? { ...group, zone: { ...group.zone, heightM } }
             : group,

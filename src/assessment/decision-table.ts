@@ -8,7 +8,11 @@ export interface DecisionFacts {
   readonly fansOff: readonly ZoneOutcome[];
   readonly worst: readonly WorstCase[];
   /** Refusals and releases without lawful authority, by act. */
-  readonly refused: readonly { readonly act: string; readonly reason: string }[];
+  readonly refused: readonly {
+    readonly act: string;
+    readonly space: string;
+    readonly reason: string;
+  }[];
   /** Stores, lifts and vehicles whose straight displacement fails the limit. */
   readonly places: readonly PlaceFailure[];
   /** True when no figure the result rests on was measured, drawn or supplied. */
@@ -23,16 +27,19 @@ export interface DecisionFacts {
 }
 
 export interface WorstCase {
-  /** Act whose slip it is, or null for a container that belongs to no act. */
-  readonly act: string | null;
+  /** Acts whose slip it is: none for a container that no act uses. */
+  readonly acts: readonly string[];
   readonly title: string;
+  /** When the first gas of the slip comes out. */
   readonly startS: number;
   readonly outcomes: readonly ZoneOutcome[];
 }
 
 export interface PlaceFailure {
+  /** Id of a space, or of a leg of transport. */
   readonly place: string;
-  readonly act: string | null;
+  /** Every act that uses the container. */
+  readonly acts: readonly string[];
   readonly reason: string;
 }
 
@@ -42,6 +49,8 @@ export interface Hit {
   readonly word: DecisionWord;
   readonly acts: readonly string[];
   readonly outcome: ZoneOutcome | null;
+  /** Where it is, when it is in a space of the venue. */
+  readonly space: string | null;
   readonly answer: Answer;
   readonly level: LevelName;
   readonly caseName: CaseName;
@@ -86,8 +95,9 @@ const layeredOf = (outcome: ZoneOutcome): Answer => (outcome.answers.layered ? '
 const medianOf = (outcome: ZoneOutcome): Answer =>
   outcome.answers.layeredP50 ? 'layeredP50' : 'mixed';
 
+/** Outcomes that every row judges: declared heights, and 0.2 m where toddlers are. */
 const declared = (outcomes: readonly ZoneOutcome[]) =>
-  outcomes.filter((outcome) => !outcome.floorCheck);
+  outcomes.filter((outcome) => outcome.judgedFully);
 const atFloor = (outcomes: readonly ZoneOutcome[]) =>
   outcomes.filter((outcome) => outcome.floorCheck);
 
@@ -99,14 +109,14 @@ function hit(
   answer: Answer,
   level: LevelName,
   reason: HitReason,
-  act?: string | null,
+  acts: readonly string[] = facts.culprits(outcome, answer),
 ): Hit {
-  const acts = act === undefined ? facts.culprits(outcome, answer) : act === null ? [] : [act];
   return {
     row,
     word,
     acts,
     outcome,
+    space: outcome.group.space,
     answer,
     level,
     caseName: outcome.caseName,
@@ -124,22 +134,24 @@ export const decisionRows: readonly DecisionRow[] = [
     row: 1,
     test: 'refused, unlawful without authority, a person riding with cold stock, or a store, lift or vehicle whose mixed value fails the limit',
     hits: (facts) => [
-      ...facts.refused.map(({ act, reason }): Hit => ({
+      ...facts.refused.map(({ act, space, reason }): Hit => ({
         row: 1,
         word: 'noGo',
         acts: [act],
         outcome: null,
+        space,
         answer: 'mixed',
         level: 'limit',
         caseName: 'planned',
         reason: 'refused',
         detail: reason,
       })),
-      ...facts.places.map(({ act, reason }): Hit => ({
+      ...facts.places.map(({ place, acts, reason }): Hit => ({
         row: 1,
         word: 'noGo',
-        acts: act === null ? [] : [act],
+        acts,
         outcome: null,
+        space: place,
         answer: 'mixed',
         level: 'limit',
         caseName: 'worstCredible',
@@ -157,10 +169,11 @@ export const decisionRows: readonly DecisionRow[] = [
           return [hit(2, 'noGo', facts, outcome, 'mixed', 'aim', 'mixedPastAim')];
         }
         if (failsAt(outcome, layeredOf(outcome), 'limit')) {
-          return [hit(2, 'noGo', facts, outcome, 'layered', 'limit', 'layeredPastLimit')];
+          const answer = layeredOf(outcome);
+          return [hit(2, 'noGo', facts, outcome, answer, 'limit', 'layeredPastLimit')];
         }
         if (failsAt(outcome, medianOf(outcome), 'aim')) {
-          return [hit(2, 'noGo', facts, outcome, 'layeredP50', 'aim', 'medianPastAim')];
+          return [hit(2, 'noGo', facts, outcome, medianOf(outcome), 'aim', 'medianPastAim')];
         }
         return [];
       }),
@@ -174,7 +187,8 @@ export const decisionRows: readonly DecisionRow[] = [
           (outcome) =>
             failsAt(outcome, layeredOf(outcome), 'aim') &&
             !failsAt(outcome, layeredOf(outcome), 'limit') &&
-            !failsAt(outcome, medianOf(outcome), 'aim'),
+            !failsAt(outcome, medianOf(outcome), 'aim') &&
+            !failsAt(outcome, 'mixed', 'aim'),
         )
         .map((outcome) =>
           facts.meterFits(outcome)
@@ -184,10 +198,11 @@ export const decisionRows: readonly DecisionRow[] = [
   },
   {
     row: 4,
-    test: 'planned: layered meets the aim, the bound fails the limit',
+    // A layer between aim and limit earns the meter of row 3 and is not spared the bound.
+    test: 'planned: layered meets the limit, the bound fails the limit',
     hits: (facts) =>
       declared(facts.planned)
-        .filter((outcome) => !failsAt(outcome, layeredOf(outcome), 'aim'))
+        .filter((outcome) => !failsAt(outcome, layeredOf(outcome), 'limit'))
         .flatMap((outcome) => {
           if (failsAt(outcome, 'bound', 'never')) {
             return [hit(4, 'goWithConditions', facts, outcome, 'bound', 'never', 'boundPastNever')];
@@ -203,16 +218,18 @@ export const decisionRows: readonly DecisionRow[] = [
     test: '0.2 m above a floor: layered or bound fails never, planned or worst credible',
     hits: (facts) =>
       [
-        ...atFloor(facts.planned).map((outcome) => ({ outcome, act: undefined })),
+        ...atFloor(facts.planned).map((outcome) => ({ outcome, acts: undefined })),
         ...facts.worst.flatMap((one) =>
-          atFloor(one.outcomes).map((outcome) => ({ outcome, act: one.act })),
+          atFloor(one.outcomes).map((outcome) => ({ outcome, acts: one.acts })),
         ),
-      ].flatMap(({ outcome, act }) => {
+      ].flatMap(({ outcome, acts }) => {
         const failed = [layeredOf(outcome), 'bound' as const].find((answer) =>
           failsAt(outcome, answer, 'never'),
         );
         if (!failed) return [];
-        return [hit(5, 'goWithConditions', facts, outcome, failed, 'never', 'floorPastNever', act)];
+        return [
+          hit(5, 'goWithConditions', facts, outcome, failed, 'never', 'floorPastNever', acts),
+        ];
       }),
   },
   {
@@ -221,8 +238,8 @@ export const decisionRows: readonly DecisionRow[] = [
     hits: (facts) =>
       worstDeclared(facts)
         .filter(({ outcome }) => failsAt(outcome, 'mixed', 'limit'))
-        .map(({ outcome, act }) =>
-          hit(6, 'noGo', facts, outcome, 'mixed', 'limit', 'worstMixedPastLimit', act),
+        .map(({ outcome, acts }) =>
+          hit(6, 'noGo', facts, outcome, 'mixed', 'limit', 'worstMixedPastLimit', acts),
         ),
   },
   {
@@ -231,15 +248,15 @@ export const decisionRows: readonly DecisionRow[] = [
     hits: (facts) =>
       worstDeclared(facts)
         .filter(({ outcome }) => failsAt(outcome, layeredOf(outcome), 'never'))
-        .map(({ outcome, act, startS }) => {
+        .map(({ outcome, acts, startS }) => {
           const past = answerOf(outcome, layeredOf(outcome))?.firstPast.never ?? startS;
           const inTime =
             facts.escapeTimeS !== null &&
             past - startS >= facts.escapeTimeFactor * facts.escapeTimeS;
           const answer = layeredOf(outcome);
           return inTime
-            ? hit(7, 'goWithConditions', facts, outcome, answer, 'never', 'worstNeverInTime', act)
-            : hit(7, 'noGo', facts, outcome, answer, 'never', 'worstNeverTooSoon', act);
+            ? hit(7, 'goWithConditions', facts, outcome, answer, 'never', 'worstNeverInTime', acts)
+            : hit(7, 'noGo', facts, outcome, answer, 'never', 'worstNeverTooSoon', acts);
         }),
   },
   {
@@ -252,12 +269,12 @@ export const decisionRows: readonly DecisionRow[] = [
             !failsAt(outcome, layeredOf(outcome), 'never') &&
             (failsAt(outcome, layeredOf(outcome), 'limit') || failsAt(outcome, 'bound', 'never')),
         )
-        .map(({ outcome, act }) => {
+        .map(({ outcome, acts }) => {
           const answer = failsAt(outcome, layeredOf(outcome), 'limit')
             ? layeredOf(outcome)
             : 'bound';
           const level = answer === 'bound' ? 'never' : 'limit';
-          return hit(8, 'goWithConditions', facts, outcome, answer, level, 'worstPastLimit', act);
+          return hit(8, 'goWithConditions', facts, outcome, answer, level, 'worstPastLimit', acts);
         }),
   },
   {
@@ -305,6 +322,7 @@ export function decisionHits(facts: DecisionFacts): readonly Hit[] {
         word: 'goWithConditions',
         acts: [],
         outcome: null,
+        space: null,
         answer: 'mixed',
         level: 'aim',
         caseName: 'planned',

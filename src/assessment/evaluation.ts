@@ -1,9 +1,16 @@
-import { InvalidInput } from '../errors.js';
-import type { AirGasTable } from '../science/room-air/air-gases.js';
 import type { AirResult } from '../science/room-air/air-result.js';
-import { airRun } from '../science/room-air/air-run.js';
 import { actsBehind } from './act-attribution.js';
-import { airCase, dayWindow, plannedReleases, worstWindow, type AirCase } from './air-case.js';
+import type { AirAnswers } from './air-answers.js';
+import {
+  airCase,
+  dayWindow,
+  idleReleases,
+  plannedReleases,
+  worstWindow,
+  type AirCase,
+  type DayWindow,
+  type PlacedRelease,
+} from './air-case.js';
 import type { DecisionWord, Refusal } from './assessment.js';
 import type { FactValues } from './condition-holds.js';
 import type { AssessmentData } from './assessment-data.js';
@@ -34,6 +41,8 @@ export interface Evaluation {
   readonly reader: PlanReader;
   readonly resolved: ResolvedPlan;
   readonly dayAir: AirCase;
+  /** Everything let out on the planned day, idle loss of cold stock included. */
+  readonly dayReleases: readonly PlacedRelease[];
   readonly dayResult: AirResult;
   readonly planned: readonly ZoneOutcome[];
   readonly fansOff: readonly ZoneOutcome[];
@@ -46,34 +55,49 @@ export interface Evaluation {
   readonly levelsOf: (group: ResolvedGroup) => readonly JudgedLevel[];
 }
 
-/** The air model on one case; what it refuses is told with the place in the plan. */
-function airAnswer(air: AirCase, gases: AirGasTable, displacement?: 'straight'): AirResult {
-  try {
-    return airRun(air.input, gases, displacement ? { displacement } : {});
-  } catch (thrown) {
-    if (!(thrown instanceof InvalidInput)) throw thrown;
-    const details = thrown.details.map(({ path, problem }) => ({ path: `/venue${path}`, problem }));
-    const [first] = details;
-    throw new InvalidInput(
-      first
-        ? `The venue does not hold together at ${first.path}: ${first.problem}.`
-        : thrown.message,
-      thrown.hint,
-      details,
-    );
-  }
-}
-
 function outcomesOf(
   air: AirCase,
-  exact: AirResult,
-  gases: AirGasTable,
+  answers: AirAnswers,
   caseName: 'planned' | 'fansOff' | 'worstCredible',
   resolved: ResolvedPlan,
   levelsOf: Evaluation['levelsOf'],
 ): readonly ZoneOutcome[] {
-  const straight = airAnswer(air, gases, 'straight');
-  return zoneOutcomes(air, exact, straight, caseName, resolved.groups, levelsOf);
+  const full = answers(air.input, 'full');
+  const straight = answers(air.input, 'straight');
+  return zoneOutcomes(air, full, straight, caseName, resolved.groups, levelsOf);
+}
+
+/** Of two runs of the same zones, outcome by outcome the one whose mixed value is worse. */
+function worseOutcomes(
+  one: readonly ZoneOutcome[],
+  other: readonly ZoneOutcome[],
+): readonly ZoneOutcome[] {
+  return one.map((outcome, index) => {
+    const second = other[index];
+    const a = outcome.answers.mixed?.value;
+    const b = second?.answers.mixed?.value;
+    if (!second || a === undefined || b === undefined) return outcome;
+    const isWorse = outcome.level.failsWhen === 'below' ? b < a : b > a;
+    return isWorse ? second : outcome;
+  });
+}
+
+/** The planned day with nothing running, and where plant recirculates also with no fresh air in it. */
+function fansOffOutcomes(
+  resolved: ResolvedPlan,
+  releases: readonly PlacedRelease[],
+  day: DayWindow,
+  planned: readonly ZoneOutcome[],
+  outcomes: (air: AirCase) => readonly ZoneOutcome[],
+): readonly ZoneOutcome[] {
+  if (resolved.airSystems.length === 0 && resolved.transfers.length === 0) {
+    return planned.map((outcome) => ({ ...outcome, caseName: 'fansOff' as const }));
+  }
+  const still = outcomes(airCase(resolved, releases, day, 'fansOff'));
+  const recirculates = resolved.airSystems.some((system) => system.recirculatedM3PerS > 0);
+  return recirculates
+    ? worseOutcomes(still, outcomes(airCase(resolved, releases, day, 'airReturned')))
+    : still;
 }
 
 /** Whether everything the air depends on is assumed: nobody measured, drew or supplied a figure. */
@@ -87,18 +111,23 @@ function restsOnAssumptions(reader: PlanReader, resolved: ResolvedPlan): boolean
   return deciding.every(([, origin]) => origin === 'assumed' || origin === 'unknown');
 }
 
+/** What an evaluation draws on besides the plan. */
+export interface EvaluationContext {
+  readonly data: AssessmentData;
+  readonly pack: RulePack;
+  readonly answers: AirAnswers;
+}
+
 /**
  * Works a plan through: planned day, planned day with fans off, every worst credible release, and
  * the table from numbers to a word.
  */
 export function evaluation(
   plan: PlanFile,
-  data: AssessmentData,
-  pack: RulePack,
-  gases: AirGasTable,
+  { data, pack, answers }: EvaluationContext,
   endOf: (path: string) => End,
 ): Evaluation {
-  const { policy, commonRules } = data.catalogue;
+  const { policy, commonRules, demonstrations } = data.catalogue;
   const reader = planReader(endOf);
   const resolved = resolvedPlan(plan, {
     reader,
@@ -109,48 +138,46 @@ export function evaluation(
   const released = releasableGases(plan);
   const { houseRules, region } = plan.venue.site;
   const context = { policy, pack, common: commonRules, houseRules, region };
+  const knowsGas = (gas: string) => gas in data.gases.species;
   const levels = {
-    public: judgedLevels(context, released, 'public'),
-    crew: judgedLevels(context, released, 'crew'),
+    public: judgedLevels(context, released, 'public', knowsGas),
+    crew: judgedLevels(context, released, 'crew', knowsGas),
   };
   const levelsOf = (group: ResolvedGroup) => levels[group.kind];
 
   const day = dayWindow(resolved);
-  const dayReleases = plannedReleases(resolved);
-  const dayAir = airCase(resolved, dayReleases, day, false);
-  const dayResult = airAnswer(dayAir, gases);
-  const planned = outcomesOf(dayAir, dayResult, gases, 'planned', resolved, levelsOf);
-
-  const hasFans = resolved.airSystems.length > 0;
-  const stillAir = airCase(resolved, dayReleases, day, true);
-  const fansOff = hasFans
-    ? outcomesOf(stillAir, airAnswer(stillAir, gases), gases, 'fansOff', resolved, levelsOf)
-    : planned.map((outcome) => ({ ...outcome, caseName: 'fansOff' as const }));
+  const idle = idleReleases(resolved, day);
+  const dayReleases = [...idle, ...plannedReleases(resolved)];
+  const dayAir = airCase(resolved, dayReleases, day, 'planned');
+  const dayResult = answers(dayAir.input, 'full');
+  const planned = outcomesOf(dayAir, answers, 'planned', resolved, levelsOf);
+  const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air) =>
+    outcomesOf(air, answers, 'fansOff', resolved, levelsOf),
+  );
 
   const worst = worstReleases(resolved, policy).map((one) => {
-    const before = dayReleases.filter(
-      ({ release, startS }) => startS < one.startS && release.act !== one.act,
-    );
-    const air = airCase(resolved, [...before, ...one.placed], worstWindow(day, one.startS), false);
-    const outcomes = outcomesOf(
-      air,
-      airAnswer(air, gases),
-      gases,
-      'worstCredible',
-      resolved,
-      levelsOf,
-    );
-    return { ...one, outcomes };
+    // The show stops at the slip: what was let out before it is in the air, its own act included.
+    const before = dayReleases.filter(({ startS }) => startS < one.startS);
+    const window = worstWindow(day, one.startS);
+    const air = airCase(resolved, [...before, ...one.placed], window, 'planned');
+    return { ...one, outcomes: outcomesOf(air, answers, 'worstCredible', resolved, levelsOf) };
   });
 
   const places = placeFailures(plan, resolved, levels.crew);
   const facts = planFacts(plan, resolved);
-  const refusals = planRefusals(plan, policy, pack, facts);
+  const refusals = planRefusals(plan, {
+    policy,
+    pack,
+    demonstrations,
+    gases: data.gases,
+    facts,
+  });
+  const spaceOf = (act: string) => resolved.acts.find((one) => one.id === act)?.space ?? '';
   const decisionFacts: DecisionFacts = {
     planned,
     fansOff,
     worst,
-    refused: refusals.map(({ act, reason }) => ({ act, reason })),
+    refused: refusals.map(({ act, reason }) => ({ act, space: spaceOf(act), reason })),
     places,
     onlyAssumed: restsOnAssumptions(reader, resolved),
     meterFits: (outcome) => meterFits(plan, outcome, policy, facts),
@@ -165,6 +192,7 @@ export function evaluation(
     reader,
     resolved,
     dayAir,
+    dayReleases,
     dayResult,
     planned,
     fansOff,

@@ -49,9 +49,9 @@ const plainSources: Readonly<Record<string, string | undefined>> = {
   'plan-default': 'default of this planner where the plan is silent',
 };
 
-/** The unit in which a judged quantity is told. */
+/** The unit in which a judged quantity is told; too much oxygen is rounded up like any gas. */
 export function unitOf(level: JudgedLevel): FigureUnit {
-  return level.gas === null ? 'oxygenFraction' : 'gasFraction';
+  return level.failsWhen === 'below' ? 'oxygenFraction' : 'gasFraction';
 }
 
 function roomInputs(outcome: ZoneOutcome, plan: ResolvedPlan): readonly FigureInput[] {
@@ -103,10 +103,15 @@ export function statisticFigure(
   name: LevelName,
   plan: ResolvedPlan,
 ): Figure | null {
-  const value = outcome.answers[answer]?.statistics[outcome.level[name].statistic];
+  const { statistic } = outcome.level[name];
+  const value = outcome.answers[answer]?.statistics[statistic];
   const base = outcomeFigure(outcome, answer, plan);
   if (value === undefined || !base) return null;
-  return { ...base, value: value * outcome.level.scale };
+  return {
+    ...base,
+    value: value * outcome.level.scale,
+    method: `${base.method}; ${statisticWords[statistic]}`,
+  };
 }
 
 /** A level as a figure, with the source that set it. */
@@ -128,7 +133,7 @@ const statisticWords = {
   peak: 'highest value',
   mean1Min: 'highest mean over 1 minute',
   mean15Min: 'highest mean over 15 minutes',
-  meanShow: 'highest mean over 60 minutes',
+  meanShow: 'highest mean over the show, an hour at most',
 } as const satisfies Record<JudgedLevel['aim']['statistic'], string>;
 
 /** A figure that needs no more than its own words. */

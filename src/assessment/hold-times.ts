@@ -1,12 +1,11 @@
-import type { AirGasTable } from '../science/room-air/air-gases.js';
 import type { AirResult } from '../science/room-air/air-result.js';
-import { airRun } from '../science/room-air/air-run.js';
-import type { AirCase } from './air-case.js';
+import type { AirAnswers } from './air-answers.js';
 import type { HoldTime } from './assessment.js';
 import type { Policy } from './catalogue-types.js';
+import type { Evaluation } from './evaluation.js';
 import { plainFigure } from './figures.js';
+import type { JudgedLevel } from './levels.js';
 import { policyDefault } from './policy-rows.js';
-import type { ResolvedPlan } from './resolved-plan.js';
 
 const followedS = 12 * 3600;
 const stepS = 60;
@@ -29,21 +28,62 @@ function fractionsAt(result: AirResult, atS: number): Record<string, Record<stri
   );
 }
 
+interface Criterion {
+  readonly quantity: string;
+  readonly value: number;
+  readonly why: string;
+  readonly source: string;
+}
+
+/** Levels before the next house: oxygen and carbon dioxide of the policy, the aim of any other gas. */
+function criteriaOf(policy: Policy, levels: readonly JudgedLevel[]): readonly Criterion[] {
+  const oxygen = policyDefault(policy, 'holdOxygenFraction');
+  const carbonDioxide = policyDefault(policy, 'holdCarbonDioxideFraction');
+  const others = new Map<string, Criterion>();
+  for (const { gas, aim, scale, title } of levels) {
+    if (gas === null || gas === 'CO2') continue;
+    const value = aim.value * scale;
+    if (value >= (others.get(gas)?.value ?? Infinity)) continue;
+    others.set(gas, { quantity: gas, value, why: `aim: ${title}`, source: aim.source });
+  }
+  return [
+    { quantity: 'oxygenFraction', ...oxygen },
+    { quantity: 'CO2', ...carbonDioxide },
+    ...others.values(),
+  ];
+}
+
+/** The moment from which a series meets its level for good, or null. */
+function metFrom(
+  timesS: readonly number[],
+  series: readonly number[],
+  isMet: (value: number) => boolean,
+): number | null {
+  const lastFailing = series.findLastIndex((value) => !isMet(value));
+  return timesS[lastFailing + 1] ?? null;
+}
+
 /**
- * How long each space with an act needs, empty and with its planned air, until the next house may
- * enter. The clock never releases a house: a reading does.
+ * How long each space that takes part needs, empty and with its planned air, until the next house
+ * may enter. The clock never releases a house: a reading does.
  */
 export function holdTimes(
-  plan: ResolvedPlan,
-  air: AirCase,
-  result: AirResult,
-  gases: AirGasTable,
+  { resolved: plan, dayAir: air, dayResult: result, levelsOf }: Evaluation,
+  answers: AirAnswers,
   policy: Policy,
 ): readonly HoldTime[] {
-  const lastEndS = Math.max(...plan.performances.map((performance) => performance.endS));
+  const lastEndS = Math.min(
+    air.window.endS,
+    Math.max(
+      ...plan.performances.map((performance) => performance.endS),
+      ...air.placed.flatMap(({ release, startS }) =>
+        release.act.startsWith('stock:') ? [] : [startS + release.durationS],
+      ),
+    ),
+  );
   const start = fractionsAt(result, lastEndS - air.window.startS);
   const { occupants: _people, releases: _gas, thresholds: _levels, ...still } = air.input;
-  const cleared = airRun(
+  const cleared = answers(
     {
       ...still,
       durationS: followedS,
@@ -59,56 +99,45 @@ export function holdTimes(
       }),
       zones: [],
     },
-    gases,
+    'mixed',
   );
-  const oxygen = policyDefault(policy, 'holdOxygenFraction');
-  const carbonDioxide = policyDefault(policy, 'holdCarbonDioxideFraction');
+  const criteria = criteriaOf(policy, plan.groups.flatMap(levelsOf));
   const actSpaces = new Set(plan.acts.flatMap((act) => act.planned.map((one) => one.space)));
-  return plan.spaces
-    .filter((space) => actSpaces.has(space.id))
-    .flatMap((space) => {
-      const mixed = cleared.spaces[space.id]?.mixed;
-      if (!mixed) return [];
-      const time = (series: readonly number[] | undefined, met: (value: number) => boolean) => {
-        const at = series?.findIndex(met) ?? -1;
-        return at < 0 ? null : (cleared.timesS[at] ?? null);
-      };
-      const rows = [
-        {
-          quantity: 'oxygenFraction',
-          level: oxygen,
-          unit: 'oxygenFraction' as const,
-          at: time(mixed.oxygenFraction, (value) => value >= oxygen.value),
-        },
-        {
-          quantity: 'CO2',
-          level: carbonDioxide,
-          unit: 'gasFraction' as const,
-          at: time(mixed.gasFraction.CO2, (value) => value <= carbonDioxide.value),
-        },
-      ];
-      return rows.map(({ quantity, level, unit, at }): HoldTime => ({
-        space: space.id,
-        spaceTitle: space.title,
-        quantity,
-        toLevel: plainFigure(level.value, unit, {
-          method: 'level before the next house',
-          formula: level.why,
-          source: level.source,
-        }),
-        time:
-          at === null
-            ? null
-            : plainFigure(at, 's', {
-                method: 'empty space, planned air, well mixed',
-                formula: 'time until the mixed value meets the level',
-                source: 'own-room-air',
-                range: 'a pit or a floor layer clears more slowly: read it there',
-              }),
-        words:
-          at === null
-            ? 'Not reached within 12 hours with the planned air. Open doors or raise the fresh air.'
-            : 'Then take the reading at the lowest places; the clock alone releases nobody.',
-      }));
+  return plan.spaces.flatMap((space) => {
+    const mixed = cleared.spaces[space.id]?.mixed;
+    if (!mixed) return [];
+    const times = criteria.flatMap((criterion) => {
+      const isOxygen = criterion.quantity === 'oxygenFraction';
+      const series = isOxygen ? mixed.oxygenFraction : mixed.gasFraction[criterion.quantity];
+      if (!series) return [];
+      const isMet = (value: number) =>
+        isOxygen ? value >= criterion.value : value <= criterion.value;
+      return [{ criterion, isOxygen, at: metFrom(cleared.timesS, series, isMet) }];
     });
+    // A space without an act is told of only where something of the day has reached it.
+    if (!actSpaces.has(space.id) && times.every(({ at }) => at === 0)) return [];
+    return times.map(({ criterion, isOxygen, at }): HoldTime => ({
+      space: space.id,
+      spaceTitle: space.title,
+      quantity: criterion.quantity,
+      toLevel: plainFigure(criterion.value, isOxygen ? 'oxygenFraction' : 'gasFraction', {
+        method: 'level before the next house',
+        formula: criterion.why,
+        source: criterion.source,
+      }),
+      time:
+        at === null
+          ? null
+          : plainFigure(at, 's', {
+              method: 'empty space, planned air, well mixed',
+              formula: 'time from which the mixed value meets the level',
+              source: 'own-room-air',
+              range: 'a pit or a floor layer clears more slowly: read it there',
+            }),
+      words:
+        at === null
+          ? 'Not reached within 12 hours with the planned air. Open doors or raise the fresh air.'
+          : 'Then take the reading at the lowest places; the clock alone releases nobody.',
+    }));
+  });
 }

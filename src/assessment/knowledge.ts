@@ -1,12 +1,9 @@
-import type { AirGasTable } from '../science/room-air/air-gases.js';
-import type { AssessmentData } from './assessment-data.js';
-import type { DecidingQuestion, DecisionWord } from './assessment.js';
-import type { RulePack } from './catalogue-types.js';
-import { worseWord } from './decision-table.js';
-import { evaluation, type Evaluation } from './evaluation.js';
+import type { DecidingQuestion, DecisionWord, Figure, FigureUnit } from './assessment.js';
+import { worseWord, worstWord } from './decision-table.js';
+import { evaluation, type Evaluation, type EvaluationContext } from './evaluation.js';
 import { plainFigure } from './figures.js';
 import type { PlanFile } from './plan-file.js';
-import type { OpenFigure } from './plan-reader.js';
+import type { End, OpenFigure } from './plan-reader.js';
 
 /** The word at both ends of what is not known, and what would settle it. */
 export interface Knowledge {
@@ -20,36 +17,35 @@ export interface Knowledge {
 }
 
 /** Halvings when looking for the value that would suffice. */
-const halvings = 7;
+const halvings = 5;
+/** More questions than this are asked without a value that would suffice. */
+const mostSearched = 4;
 
-function question(
-  figure: OpenFigure,
-  worst: Evaluation,
-  evaluate: (endOf: (path: string) => number | 'worst' | 'best') => DecisionWord,
-): DecidingQuestion | null {
-  const aloneBest = evaluate((path) => (path === figure.path ? 'best' : 'worst'));
-  if (aloneBest === worst.word) return null;
-  const [bad, good] =
-    figure.worse === 'low' ? [figure.low, figure.high] : [figure.high, figure.low];
-  let failing = bad;
-  let sufficing = good;
-  for (let i = 0; i < halvings; i += 1) {
-    const middle = (failing + sufficing) / 2;
-    const word = evaluate((path) => (path === figure.path ? middle : 'worst'));
-    if (word === aloneBest) sufficing = middle;
-    else failing = middle;
-  }
-  return {
-    path: figure.path,
-    question: `What is the ${figure.name}? Somewhere between ${String(figure.low)} and ${String(figure.high)} ${figure.unit} is assumed.`,
-    wordAtBest: aloneBest,
-    wordAtWorst: worst.word,
-    suffices: plainFigure(sufficing, figure.unit === 'm3/s' ? 'm3PerS' : 'ratio', {
-      method: `${figure.name} that would be enough, in ${figure.unit === '' ? 'its own unit' : figure.unit}`,
-      formula: 'halving between the worst and the best credible value',
-      source: 'own-derivation',
-    }),
-  };
+const unitOfSymbol: Readonly<Record<string, FigureUnit>> = {
+  'm3/s': 'm3PerS',
+  '1/h': 'perHour',
+  m: 'm',
+  m2: 'm2',
+  m3: 'm3',
+  s: 's',
+  K: 'K',
+  Pa: 'Pa',
+  kg: 'kg',
+  mol: 'mol',
+  people: 'people',
+  '': 'ratio',
+};
+
+const threeDigits = (value: number): string => String(Number(value.toPrecision(3)));
+
+/** A value at three digits, moved towards the good end and never past it. */
+function towards(value: number, good: number): number {
+  if (value === 0 || value === good) return value;
+  const step = 10 ** (Math.floor(Math.log10(Math.abs(value))) - 2);
+  const steps = value / step;
+  const moved = (good > value ? Math.ceil(steps - 1e-9) : Math.floor(steps + 1e-9)) * step;
+  const tidy = Number(moved.toPrecision(3));
+  return good > value ? Math.min(tidy, good) : Math.max(tidy, good);
 }
 
 /** The plan with one open figure replaced by a number. */
@@ -59,53 +55,117 @@ function withFigure(plan: PlanFile, path: string, value: number): PlanFile {
   const last = keys.pop();
   let at = copy as Record<string, unknown>;
   for (const key of keys) at = at[key] as Record<string, unknown>;
-  if (last !== undefined) at[last] = { value, origin: 'supplied' };
+  if (last !== undefined) at[last] = { value, origin: 'measured' };
   return copy as PlanFile;
 }
 
-/** Row 10 of the table: runs the credible worst and best of everything left open. */
+/** The least answer that would be enough with everything else at its worst. */
+function sufficing(figure: OpenFigure, isEnough: (value: number) => boolean): Figure {
+  const [bad, good] =
+    figure.worse === 'high' ? [figure.high, figure.low] : [figure.low, figure.high];
+  let failing = bad;
+  let enough = good;
+  for (let i = 0; i < halvings; i += 1) {
+    const middle = (failing + enough) / 2;
+    if (isEnough(middle)) enough = middle;
+    else failing = middle;
+  }
+  return plainFigure(towards(enough, good), unitOfSymbol[figure.unit] ?? 'ratio', {
+    method: `${figure.name} that would be enough`,
+    formula: 'halving between the worst and the best credible value, rounded to the safe side',
+    source: 'own-derivation',
+  });
+}
+
+function questionsOf(
+  plan: PlanFile,
+  context: EvaluationContext,
+  open: readonly OpenFigure[],
+  worst: Evaluation,
+  wordAtBest: DecisionWord,
+): readonly DecidingQuestion[] {
+  const asked = (figure: OpenFigure, best: DecisionWord, suffices: Figure | null) => ({
+    path: figure.path,
+    question:
+      `What is the ${figure.name}? Somewhere between ${threeDigits(figure.low)} and ${threeDigits(figure.high)} ${figure.unit} is assumed.`.replace(
+        '  ',
+        ' ',
+      ),
+    wordAtBest: best,
+    wordAtWorst: worst.word,
+    suffices,
+  });
+  const worstButFor = (figure: OpenFigure) => (path: string) =>
+    path === figure.path ? 'best' : 'worst';
+  const alone = open.flatMap((figure) => {
+    const word = evaluation(plan, context, worstButFor(figure)).word;
+    return word === worst.word ? [] : [{ figure, word }];
+  });
+  // No single answer settles it: all of them are needed together.
+  if (alone.length === 0) return open.map((figure) => asked(figure, wordAtBest, null));
+  return alone.map(({ figure, word }, index) =>
+    asked(
+      figure,
+      word,
+      index < mostSearched
+        ? sufficing(
+            figure,
+            (value) =>
+              evaluation(withFigure(plan, figure.path, value), context, () => 'worst').word ===
+              word,
+          )
+        : null,
+    ),
+  );
+}
+
+/**
+ * Row 10 of the table: runs the credible worst and best of everything left open. A figure that is
+ * worse for one space at its low end and for the next at its high end is run at both.
+ */
 export function knowledge(
   plan: PlanFile,
-  data: AssessmentData,
-  pack: RulePack,
-  gases: AirGasTable,
+  context: EvaluationContext,
   withQuestions: boolean,
 ): Knowledge {
-  const worst = evaluation(plan, data, pack, gases, () => 'worst');
-  const open = [...worst.reader.open.values()];
-  const unknown = open.filter((figure) => figure.kind === 'unknown');
+  const atLow = evaluation(plan, context, () => 'worst');
+  const open = [...atLow.reader.open.values()];
   if (open.length === 0) {
     return {
-      word: worst.word,
+      word: atLow.word,
       hasUnknown: false,
-      wordAtWorst: worst.word,
-      wordAtBest: worst.word,
-      shown: worst,
+      wordAtWorst: atLow.word,
+      wordAtBest: atLow.word,
+      shown: atLow,
       questions: [],
     };
   }
-  const best = evaluation(plan, data, pack, gases, () => 'best');
-  const same = best.word === worst.word;
-  const atBestConditions: DecisionWord =
-    unknown.length > 0 ? worseWord(worst.word, 'goWithConditions') : worst.word;
-  const evaluate = (endOf: (path: string) => number | 'worst' | 'best'): DecisionWord => {
-    const fixed = open.find((figure) => typeof endOf(figure.path) === 'number');
-    const value = fixed ? endOf(fixed.path) : null;
-    const changed = fixed && typeof value === 'number' ? withFigure(plan, fixed.path, value) : plan;
-    return evaluation(changed, data, pack, gases, (path) => {
-      const end = endOf(path);
-      return end === 'best' ? 'best' : 'worst';
-    }).word;
-  };
+  const cutsBothWays = new Set(
+    open.filter((figure) => figure.worse === 'either').map((figure) => figure.path),
+  );
+  const runs = (others: End): readonly Evaluation[] =>
+    cutsBothWays.size === 0
+      ? [evaluation(plan, context, () => others)]
+      : (['worst', 'best'] as const).map((end) =>
+          evaluation(plan, context, (path) => (cutsBothWays.has(path) ? end : others)),
+        );
+  const atWorst = runs('worst');
+  const wordAtWorst = worstWord(atWorst.map((one) => one.word));
+  const shown = atWorst.find((one) => one.word === wordAtWorst) ?? atLow;
+  const bestWords = runs('best').map((one) => one.word);
+  const wordAtBest = bestWords.reduce((best, word) =>
+    worseWord(best, word) === best ? word : best,
+  );
+  const same = [...atWorst.map((one) => one.word), ...bestWords].every(
+    (word) => word === wordAtWorst,
+  );
+  const hasUnknown = open.some((figure) => figure.kind === 'unknown');
   return {
-    word: same ? atBestConditions : 'notEnoughKnown',
-    hasUnknown: unknown.length > 0,
-    wordAtWorst: worst.word,
-    wordAtBest: best.word,
-    shown: worst,
-    questions:
-      withQuestions && !same
-        ? open.flatMap((figure) => question(figure, worst, evaluate) ?? [])
-        : [],
+    word: same ? worseWord(wordAtWorst, hasUnknown ? 'goWithConditions' : 'go') : 'notEnoughKnown',
+    hasUnknown,
+    wordAtWorst,
+    wordAtBest,
+    shown,
+    questions: withQuestions && !same ? questionsOf(plan, context, open, shown, wordAtBest) : [],
   };
 }

@@ -1,108 +1,179 @@
-import type { AirGasTable } from '../science/room-air/air-gases.js';
-import { airRun } from '../science/room-air/air-run.js';
-import { airCase, plannedReleases, type PlacedRelease } from './air-case.js';
+import type { AirAnswers } from './air-answers.js';
+import { airCase, type AirCase } from './air-case.js';
 import type { LargestAmount } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { plainFigure } from './figures.js';
+import { fails } from './levels.js';
+import type { ResolvedAct } from './resolved-plan.js';
 import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 
 /** An act is never scaled up beyond this many times what is planned. */
 const largestFactor = 100;
-/** Bisection stops at this relative width. */
-const width = 0.01;
+/** Halvings of the whole answer, once the mixed one has given a first guess. */
+const halvings = 5;
+/** Corrections of the guess by the mixed answer alone. */
+const corrections = 4;
 
-const passes = (outcomes: readonly ZoneOutcome[]): ZoneOutcome | null =>
+/** The first outcome that fails row 2 of the table. */
+const failing = (outcomes: readonly ZoneOutcome[]): ZoneOutcome | null =>
   outcomes.find(
-    (outcome) =>
-      !outcome.floorCheck &&
-      ((outcome.answers.mixed?.fails.aim ?? false) ||
-        (outcome.answers.layered?.fails.limit ?? false) ||
-        (outcome.answers.layeredP50?.fails.aim ?? false)),
+    ({ judgedFully, answers }) =>
+      judgedFully &&
+      ((answers.mixed?.fails.aim ?? false) ||
+        (answers.layered?.fails.limit ?? false) ||
+        (answers.layeredP50?.fails.aim ?? false)),
   ) ?? null;
 
-function scaled(
-  releases: readonly PlacedRelease[],
-  act: string,
-  factor: number,
-): readonly PlacedRelease[] {
-  return releases.map((placed) =>
-    placed.release.act === act
-      ? { ...placed, release: { ...placed.release, amountMol: placed.release.amountMol * factor } }
-      : placed,
-  );
+/**
+ * Where the aim would be met exactly, were the mixed answer a straight line through two amounts [-].
+ * Straight displacement is linear in the amount up to where the worst moment changes.
+ */
+function lineCrossing(
+  at: readonly [number, readonly ZoneOutcome[]],
+  to: readonly [number, readonly ZoneOutcome[]],
+): number {
+  const [from, first] = at;
+  const [until, second] = to;
+  return first.reduce((least, outcome, index) => {
+    const { level, judgedFully } = outcome;
+    const { statistic, value: aim } = level.aim;
+    const a = outcome.answers.mixed?.statistics[statistic];
+    const b = second[index]?.answers.mixed?.statistics[statistic];
+    if (!judgedFully || a === undefined || b === undefined) return least;
+    const slope = (b - a) / (until - from);
+    const worsens = level.failsWhen === 'below' ? slope < 0 : slope > 0;
+    return worsens ? Math.min(least, from + (aim - a) / slope) : least;
+  }, Infinity);
+}
+
+/** Three significant digits, downwards: a printed largest amount is never above the true one. */
+function roundedDown(value: number): number {
+  if (value <= 0) return 0;
+  const step = 10 ** (Math.floor(Math.log10(value)) - 2);
+  const tidy = Number((Math.floor(value / step) * step).toPrecision(3));
+  return tidy <= value ? tidy : Number((tidy - step).toPrecision(3));
+}
+
+interface Search {
+  readonly factor: number;
+  readonly blocker: ZoneOutcome | null;
+  readonly failsWithoutAct: boolean;
+}
+
+function search(evaluation: Evaluation, act: string, answers: AirAnswers): Search {
+  const { resolved, dayAir, dayReleases, levelsOf, planned } = evaluation;
+  const caseAt = (factor: number): AirCase => {
+    const releases = dayReleases.map((placed) =>
+      placed.release.act === act
+        ? {
+            ...placed,
+            release: { ...placed.release, amountMol: placed.release.amountMol * factor },
+          }
+        : placed,
+    );
+    // No gas at all is no release; the air model takes amounts above nothing.
+    const some = releases.filter((placed) => placed.release.amountMol > 0);
+    return airCase(resolved, some, dayAir.window, 'planned');
+  };
+  const outcomesAt = (factor: number, form: 'full' | 'straight') => {
+    const air = caseAt(factor);
+    const straight = answers(air.input, 'straight');
+    const full = form === 'full' ? answers(air.input, 'full') : straight;
+    return zoneOutcomes(air, full, straight, 'planned', resolved.groups, levelsOf);
+  };
+
+  const withoutAct = failing(outcomesAt(0, 'full'));
+  if (withoutAct) return { factor: 0, blocker: withoutAct, failsWithoutAct: true };
+
+  const none = outcomesAt(0, 'straight');
+  let guess = Math.min(largestFactor, lineCrossing([0, none], [1, planned]));
+  for (let i = 0; i < corrections; i += 1) {
+    const there = outcomesAt(guess, 'straight');
+    const passes = !there.some(
+      ({ judgedFully, answers: found, level }) =>
+        judgedFully &&
+        found.mixed &&
+        fails(level, 'aim', found.mixed.statistics[level.aim.statistic] ?? found.mixed.value),
+    );
+    if (passes) break;
+    const corrected = lineCrossing([0, none], [guess, there]);
+    guess = Math.min(0.999 * guess, corrected);
+  }
+
+  const plannedBlocker = failing(planned);
+  let low = plannedBlocker ? 0 : 1;
+  let high = Math.max(low, guess);
+  let blocker = failing(outcomesAt(high, 'full'));
+  if (!blocker) {
+    const isWhole = high >= largestFactor;
+    return {
+      factor: high,
+      blocker: isWhole ? null : (failing(outcomesAt(high * 1.01 + 1e-9, 'full')) ?? plannedBlocker),
+      failsWithoutAct: false,
+    };
+  }
+  for (let i = 0; i < halvings; i += 1) {
+    const middle = (low + high) / 2;
+    const failed = failing(outcomesAt(middle, 'full'));
+    if (failed) {
+      high = middle;
+      blocker = failed;
+    } else low = middle;
+  }
+  return { factor: low, blocker, failsWithoutAct: false };
 }
 
 /**
  * The largest amount of each act that still passes row 2 of the table, the other acts as planned.
  *
- * The factor is found by halving between what passes and what fails; gas added never helps, so the
- * first failure bounds all larger amounts.
+ * A first guess comes from the mixed answer, which is a straight line in the amount; the whole answer
+ * then confirms it or halves the way to what passes. Gas added never helps, so what passes at an
+ * amount passes below it.
  */
 export function largestAmounts(
   evaluation: Evaluation,
-  gases: AirGasTable,
+  answers: AirAnswers,
 ): readonly LargestAmount[] {
-  const { resolved, dayAir, levelsOf } = evaluation;
-  const releases = plannedReleases(resolved);
-  const failureAt = (act: string, factor: number): ZoneOutcome | null => {
-    const air = airCase(resolved, scaled(releases, act, factor), dayAir.window, false);
-    const straight = airRun(air.input, gases, { displacement: 'straight' });
-    const exact = airRun(air.input, gases);
-    return passes(zoneOutcomes(air, exact, straight, 'planned', resolved.groups, levelsOf));
-  };
-  return resolved.acts
-    .filter((act) => act.planned.some((release) => !release.burned && release.amountMol > 0))
-    .map((act): LargestAmount => {
-      let low = 0;
-      let high = 1;
-      let blocker = failureAt(act.id, high);
-      while (!blocker && high < largestFactor) {
-        low = high;
-        high = Math.min(largestFactor, high * 4);
-        blocker = failureAt(act.id, high);
-      }
-      const withoutAct = blocker ? failureAt(act.id, 0) : null;
-      if (withoutAct) {
-        blocker = withoutAct;
-        high = 0;
-      }
-      while (blocker && high - low > width * high) {
-        const middle = (low + high) / 2;
-        const failed = failureAt(act.id, middle);
-        if (failed) {
-          high = middle;
-          blocker = failed;
-        } else low = middle;
-      }
-      const factor = blocker ? low : high;
-      const massKg = act.planned.reduce((sum, release) => sum + release.massKg, 0);
-      const mol = act.planned.reduce((sum, release) => sum + release.amountMol, 0);
-      const words = {
-        method: 'largest amount that passes row 2, other acts as planned',
-        formula: 'planned amount times the largest factor that meets aim and limit',
-        source: 'own-derivation',
-        range: blocker
-          ? 'for this room, these people and this air only'
-          : 'no failure found up to 100 times the planned amount',
-        inputs: [{ name: 'factor on the planned amount', value: factor, unit: '' }],
-      };
-      const gasNames = new Set(act.planned.flatMap((release) => Object.keys(release.composition)));
-      return {
-        act: act.id,
-        gas: [...gasNames].join(', '),
-        zone: blocker?.group.title ?? '',
-        limitedBy: blocker
-          ? withoutAct
-            ? `${blocker.level.title}: fails without this act already`
-            : blocker.level.title
-          : 'no level reached',
-        mass: plainFigure(massKg * factor, 'kg', words),
-        volume: plainFigure(mol * factor * resolved.site.molarVolumeM3PerMol, 'm3', words),
-        planned: plainFigure(massKg, 'kg', {
-          method: 'as planned for one showing',
-          formula: 'sum of the planned releases of the act',
-          source: 'plan',
-        }),
-      };
-    });
+  const { resolved } = evaluation;
+  const letsGasOut = (act: ResolvedAct) =>
+    act.planned.some((release) => !release.burned && release.amountMol > 0);
+  return resolved.acts.filter(letsGasOut).map((act): LargestAmount => {
+    const { factor, blocker, failsWithoutAct } = search(evaluation, act.id, answers);
+    const released = act.planned.filter((release) => !release.burned);
+    const massKg = released.reduce((sum, release) => sum + release.massKg, 0);
+    const mol = released.reduce((sum, release) => sum + release.amountMol, 0);
+    const words = {
+      method: 'largest amount that passes row 2, other acts as planned; rounded down',
+      formula: 'planned amount times the largest factor that meets aim and limit',
+      source: 'own-derivation',
+      range: blocker
+        ? 'for this room, these people and this air only'
+        : 'no failure found up to 100 times the planned amount',
+      inputs: [{ name: 'factor on the planned amount', value: factor, unit: '' }],
+    };
+    const gasNames = new Set(released.flatMap((release) => Object.keys(release.composition)));
+    const level = blocker?.level.title;
+    return {
+      act: act.id,
+      gas: [...gasNames].join(', '),
+      zone: blocker?.group.title ?? '',
+      limitedBy:
+        level === undefined
+          ? 'no level reached'
+          : failsWithoutAct
+            ? `${level}: fails without this act already`
+            : level,
+      mass: plainFigure(roundedDown(massKg * factor), 'kg', words),
+      volume: plainFigure(
+        roundedDown(mol * factor * resolved.site.molarVolumeM3PerMol),
+        'm3',
+        words,
+      ),
+      planned: plainFigure(massKg, 'kg', {
+        method: 'as planned for one showing',
+        formula: 'sum of the planned releases of the act',
+        source: 'plan',
+      }),
+    };
+  });
 }

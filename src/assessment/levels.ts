@@ -1,3 +1,4 @@
+import { InvalidInput } from '../errors.js';
 import type {
   CommonRules,
   ExposureLimit,
@@ -32,6 +33,9 @@ export interface JudgedLevel {
   readonly limit: LevelValue;
   readonly never: LevelValue;
 }
+
+/** Dry fresh air, against which a house rule has to make sense. */
+const freshAir = { oxygen: 0.2095, carbonDioxide: 420e-6 } as const;
 
 interface Context {
   readonly policy: Policy;
@@ -95,10 +99,23 @@ function tightened(
   candidates: readonly (LevelValue | null)[],
 ): LevelValue {
   const row = level[name];
-  let value = ownValue(row, row.value ?? row.whenMissing ?? 0);
-  if (!row.stricterOfPack) return value;
-  for (const candidate of candidates) value = stricter(level.failsWhen, value, candidate);
-  return value;
+  const ofPack = row.stricterOfPack ? candidates.filter((one) => one !== null) : [];
+  const own = ownValue(row, row.value ?? row.whenMissing ?? 0);
+  // Where the pack is silent the value for a missing row stands, if it is the stricter one.
+  const silent =
+    row.stricterOfPack && ofPack.length === 0 && row.whenMissing !== undefined
+      ? ownValue(row, row.whenMissing)
+      : null;
+  return [silent, ...ofPack].reduce<LevelValue>(
+    (value, candidate) => stricter(level.failsWhen, value, candidate),
+    own,
+  );
+}
+
+/** Nobody aims past a limit, and no limit lies past never: a level takes the stricter of those behind it. */
+function ordered(level: JudgedLevel): JudgedLevel {
+  const limit = stricter(level.failsWhen, level.limit, level.never);
+  return { ...level, limit, aim: stricter(level.failsWhen, level.aim, limit) };
 }
 
 function oxygenLevel(context: Context): JudgedLevel | null {
@@ -221,37 +238,83 @@ function fuelLevel(context: Context, gas: string): JudgedLevel | null {
         source: `${row.instrument}, ${row.edition}`,
         checked: row.checked,
       }));
-  const limit = tightened(level, 'limit', rows('limit'));
   return {
     quantity: `fuel:${gas}`,
     title: `${gas}, share of its lower flammable limit`,
     gas,
     failsWhen: 'above',
     scale: limits.lowerFraction,
-    // A limit below the aim lowers the aim too: nobody aims past a limit.
-    aim: stricter('above', tightened(level, 'aim', []), limit),
-    limit,
+    aim: tightened(level, 'aim', []),
+    limit: tightened(level, 'limit', rows('limit')),
     never: tightened(level, 'never', rows('never')),
   };
 }
 
+type HouseRule = NonNullable<Context['houseRules']>[number];
+
+/** Fresh air itself would fail such a rule, so it says nothing about a plan. */
+function requireUsableRule(rule: HouseRule, index: number, level: JudgedLevel | null): void {
+  const fresh =
+    rule.quantity === 'oxygenFraction' || rule.quantity === 'oxygenEnrichment'
+      ? freshAir.oxygen
+      : rule.quantity === 'CO2'
+        ? freshAir.carbonDioxide
+        : 0;
+  const isBelow = rule.quantity === 'oxygenFraction';
+  const usable = isBelow
+    ? rule.limit > 0 && rule.limit < fresh
+    : rule.limit > fresh && rule.limit <= 1;
+  if (usable && level) return;
+  const path = `/venue/site/houseRules/${String(index)}`;
+  throw new InvalidInput(
+    `The house rule ${rule.title} cannot be used.`,
+    'Name oxygenFraction, oxygenEnrichment, a gas id, or fuel: and a gas id; give the limit as a mole fraction (fuel: share of the lower flammable limit) that fresh air meets.',
+    [
+      level
+        ? { path: `${path}/limit`, problem: 'is not a fraction that fresh air meets' }
+        : { path: `${path}/quantity`, problem: 'is not a quantity that a plan is judged by' },
+    ],
+  );
+}
+
+const houseValue = (rule: HouseRule, statistic: Statistic): LevelValue => ({
+  value: rule.limit,
+  statistic,
+  source: `house rule: ${rule.title}`,
+  checked: 'first-hand',
+});
+
 /** A house rule takes the place of the limit, and of the aim behind it, only where it is stricter. */
-function withHouseRules(level: JudgedLevel, houseRules: Context['houseRules']): JudgedLevel {
-  return (houseRules ?? [])
+function withHouseRules(level: JudgedLevel, houseRules: readonly HouseRule[]): JudgedLevel {
+  return houseRules
     .filter((rule) => rule.quantity === level.quantity)
-    .reduce((current, rule) => {
-      const value: LevelValue = {
-        value: rule.limit,
-        statistic: current.limit.statistic,
-        source: `house rule: ${rule.title}`,
-        checked: 'first-hand',
-      };
-      return {
+    .reduce(
+      (current, rule) => ({
         ...current,
-        aim: stricter(current.failsWhen, current.aim, value),
-        limit: stricter(current.failsWhen, current.limit, value),
-      };
-    }, level);
+        aim: stricter(current.failsWhen, current.aim, houseValue(rule, current.aim.statistic)),
+        limit: stricter(
+          current.failsWhen,
+          current.limit,
+          houseValue(rule, current.limit.statistic),
+        ),
+      }),
+      level,
+    );
+}
+
+/** A gas that only the house limits: its rule is every level, held at every moment. */
+function houseGasLevel(rule: HouseRule): JudgedLevel {
+  const value = houseValue(rule, 'peak');
+  return {
+    quantity: rule.quantity,
+    title: `${rule.quantity} where people breathe`,
+    gas: rule.quantity,
+    failsWhen: 'above',
+    scale: 1,
+    aim: value,
+    limit: value,
+    never: value,
+  };
 }
 
 /**
@@ -259,21 +322,41 @@ function withHouseRules(level: JudgedLevel, houseRules: Context['houseRules']): 
  * house rules, never loosened. For crew the aim is the limit.
  *
  * @param gases the gases that the plan can let out
+ * @param knowsGas whether an id is in the gas data
+ * @throws {InvalidInput} for a house rule that names nothing, or that fresh air would fail
  */
 export function judgedLevels(
   context: Context,
   gases: readonly string[],
   kind: 'public' | 'crew',
+  knowsGas: (gas: string) => boolean,
 ): readonly JudgedLevel[] {
-  const found: (JudgedLevel | null)[] = [oxygenLevel(context), carbonDioxideLevel(context)];
-  for (const gas of gases) {
-    if (gas === 'O2') found.push(enrichmentLevel(context));
-    if (gas !== 'CO2' && gas !== 'O2') found.push(limitedGasLevel(context, gas));
-    found.push(fuelLevel(context, gas));
-  }
+  const ofPolicy = (gas: string): readonly (JudgedLevel | null)[] => [
+    ...(gas === 'O2' ? [enrichmentLevel(context)] : []),
+    ...(gas !== 'CO2' && gas !== 'O2' ? [limitedGasLevel(context, gas)] : []),
+    fuelLevel(context, gas),
+  ];
+  const present = (level: JudgedLevel | null): level is JudgedLevel => level !== null;
+  const found = [
+    oxygenLevel(context),
+    carbonDioxideLevel(context),
+    ...gases.flatMap(ofPolicy),
+  ].filter(present);
+  const houseRules = context.houseRules ?? [];
+  houseRules.forEach((rule, index) => {
+    const known = found.find((level) => level.quantity === rule.quantity);
+    const gas = rule.quantity.replace(/^fuel:/, '');
+    const couldBe =
+      known ??
+      [enrichmentLevel(context), ...(knowsGas(gas) ? ofPolicy(gas) : [])]
+        .filter(present)
+        .find((level) => level.quantity === rule.quantity) ??
+      (knowsGas(rule.quantity) ? houseGasLevel(rule) : null);
+    requireUsableRule(rule, index, couldBe);
+    if (!known && couldBe && gases.includes(rule.quantity)) found.push(couldBe);
+  });
   return found
-    .filter((level): level is JudgedLevel => level !== null)
-    .map((level) => withHouseRules(level, context.houseRules))
+    .map((level) => ordered(withHouseRules(level, houseRules)))
     .map((level) => (kind === 'crew' ? { ...level, aim: { ...level.limit } } : level));
 }
 

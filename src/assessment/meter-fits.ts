@@ -3,8 +3,10 @@ import { conditionHolds, type FactValues } from './condition-holds.js';
 import type { PlanFile } from './plan-file.js';
 import type { ZoneOutcome } from './zone-outcomes.js';
 
-/** A meter stands for a mouth height when it hangs within this of it [m]. */
-const heightToleranceM = 0.4;
+/** A meter stands for a mouth height when it hangs within this of it [m]: the smear of a layer. */
+const heightToleranceM = 0.3;
+/** From here an infrared head that nobody compensated reads low by more than a twentieth [m]. */
+const compensateFromM = 500;
 
 /**
  * Whether the plan lists a meter that can see the quantity of an outcome, in its space, at its
@@ -22,7 +24,11 @@ export function meterFits(
       : (outcome.level.gas ?? 'O2');
   const rows = policy.meters.filter((row) => row.gas === gas && conditionHolds(row.when, facts));
   const refused = new Set(rows.flatMap((row) => row.refusedCells));
-  const isAccepted = (cell: string) => rows.every((row) => row.acceptedCells.includes(cell));
+  // A gas for which the policy knows no meter has no right one.
+  const isAccepted = (cell: string) =>
+    rows.length > 0 && rows.every((row) => row.acceptedCells.includes(cell));
+  const { altitudeM } = facts;
+  const isHigh = typeof altitudeM !== 'number' || altitudeM >= compensateFromM;
   return (plan.meters ?? []).some((meter) => {
     const height = meter.heightM;
     return (
@@ -33,7 +39,8 @@ export function meterFits(
       meter.cellType !== undefined &&
       meter.cellType !== 'unknown' &&
       isAccepted(meter.cellType) &&
-      !refused.has(meter.cellType)
+      !refused.has(meter.cellType) &&
+      !(isHigh && meter.cellType === 'infrared' && meter.altitudeCompensated !== true)
     );
   });
 }

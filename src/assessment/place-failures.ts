@@ -1,11 +1,14 @@
 import { siteVolumeFactor } from '../science/room-air/site-volume.js';
-import type { PlanFile } from './plan-file.js';
+import { actsUsing } from './act-attribution.js';
 import type { PlaceFailure } from './decision-table.js';
-import type { JudgedLevel } from './levels.js';
+import { fails, type JudgedLevel } from './levels.js';
+import type { PlanFile } from './plan-file.js';
 import type { ResolvedPlan, ResolvedStock } from './resolved-plan.js';
 
 const freshOxygen = 0.2095;
 const referenceMolarVolumeM3 = 0.0240551;
+
+type Leg = NonNullable<PlanFile['transport']>[number];
 
 /**
  * Gas of one container at the site over the air volume of a closed place [-]: the straight
@@ -15,7 +18,21 @@ function displacedShare(item: ResolvedStock, volumeM3: number, plan: ResolvedPla
   const { temperatureK, pressurePa } = plan.site;
   const gasM3 =
     item.amountMol * referenceMolarVolumeM3 * siteVolumeFactor(temperatureK, pressurePa);
-  return gasM3 / volumeM3;
+  return Math.min(1, gasM3 / volumeM3);
+}
+
+/** What a level judges, once a share of the air has given way to the content of a container. */
+function valueAfter(
+  level: JudgedLevel,
+  share: number,
+  item: ResolvedStock,
+  plan: ResolvedPlan,
+): number {
+  const part = (gas: string) => share * (item.composition[gas] ?? 0);
+  if (level.gas === null) return freshOxygen * (1 - share) + part('O2');
+  // Carbon dioxide is judged as a total: outdoor air holds some already.
+  const background = level.gas === 'CO2' ? plan.site.carbonDioxideFraction * (1 - share) : 0;
+  return (background + part(level.gas)) / level.scale;
 }
 
 function failureIn(
@@ -27,66 +44,66 @@ function failureIn(
   levels: readonly JudgedLevel[],
 ): PlaceFailure | null {
   const share = displacedShare(item, volumeM3, plan);
-  const oxygen = freshOxygen * Math.max(0, 1 - share * (1 - (item.composition.O2 ?? 0)));
-  for (const level of levels) {
-    const value =
-      level.quantity === 'oxygenFraction'
-        ? oxygen
-        : level.gas === null
-          ? null
-          : (Math.min(1, share) * (item.composition[level.gas] ?? 0)) / level.scale;
-    if (value === null) continue;
-    const failed =
-      level.failsWhen === 'below' ? value < level.limit.value : value > level.limit.value;
-    if (!failed) continue;
-    return {
-      place,
-      act: plan.acts.find((act) => act.planned.some((one) => one.stock === item.id))?.id ?? null,
-      reason: `${item.title} let go in ${title} would pass the limit for ${level.title.toLowerCase()}.`,
-    };
-  }
-  return null;
+  const failed = levels.find((level) =>
+    fails(level, 'limit', valueAfter(level, share, item, plan)),
+  );
+  if (!failed) return null;
+  return {
+    place,
+    acts: actsUsing(plan, item.id),
+    reason: `${item.title} let go in ${title} would pass the limit for ${failed.title.toLowerCase()}.`,
+  };
 }
 
-/** Spaces nobody may occupy with stock in them, lifts with people and vehicles, where a leak fails. */
+/** Stock in spaces in which it is no worst credible release of its own: closed, or with nobody named. */
+function storeFailures(
+  resolved: ResolvedPlan,
+  levels: readonly JudgedLevel[],
+): readonly PlaceFailure[] {
+  return resolved.stock.flatMap((item) => {
+    const space = resolved.spaces.find((candidate) => candidate.id === item.place);
+    const isJudgedByZones =
+      item.open && resolved.groups.some((group) => group.space === item.place);
+    if (!space || isJudgedByZones) return [];
+    return failureIn(item, space.title, space.id, space.volumeM3, resolved, levels) ?? [];
+  });
+}
+
+function legFailures(
+  leg: Leg,
+  resolved: ResolvedPlan,
+  levels: readonly JudgedLevel[],
+): readonly PlaceFailure[] {
+  // A vehicle has a driver, and a lift a rider, until the plan says that nobody is in it.
+  const ridesAlong = leg.kind !== 'hand' && (leg.people ?? 1) > 0 && leg.sealedBulkhead !== true;
+  if (!ridesAlong) return [];
+  const air = leg.airVolumeM3;
+  const volumeM3 = typeof air === 'number' ? air : (air?.low ?? air?.value);
+  return leg.load.flatMap((id): readonly PlaceFailure[] => {
+    const item = resolved.stock.find((candidate) => candidate.id === id);
+    if (!item) return [];
+    const failure = (reason: string): readonly PlaceFailure[] => [
+      { place: leg.id, acts: actsUsing(resolved, id), reason },
+    ];
+    if (item.form === 'dryIce' || item.form === 'cryogen') {
+      return failure(`${item.title} and a person in ${leg.title}: nobody rides with cold stock.`);
+    }
+    if (volumeM3 === undefined || volumeM3 <= 0) {
+      return failure(`${leg.title}: the air volume that load and people share is not known.`);
+    }
+    const found = failureIn(item, leg.title, leg.id, volumeM3, resolved, levels);
+    return found ? [found] : [];
+  });
+}
+
+/** Stores, lifts with people and vehicles in which a container let go would fail the limit. */
 export function placeFailures(
   plan: PlanFile,
   resolved: ResolvedPlan,
   levels: readonly JudgedLevel[],
 ): readonly PlaceFailure[] {
-  const failures: PlaceFailure[] = [];
-  for (const item of resolved.stock) {
-    const space = resolved.spaces.find((candidate) => candidate.id === item.place);
-    // An open container in an occupied space is a worst credible release of its own.
-    if (!space || (item.open && space.occupied)) continue;
-    const failure = failureIn(item, space.title, space.id, space.volumeM3, resolved, levels);
-    if (failure) failures.push(failure);
-  }
-  for (const leg of plan.transport ?? []) {
-    if ((leg.people ?? 0) === 0 || leg.sealedBulkhead === true) continue;
-    const air = leg.airVolumeM3;
-    const volumeM3 = typeof air === 'number' ? air : (air?.low ?? air?.value);
-    for (const id of leg.load) {
-      const item = resolved.stock.find((candidate) => candidate.id === id);
-      if (!item) continue;
-      const cold = item.form === 'dryIce' || item.form === 'cryogen';
-      if (cold && leg.kind === 'lift') {
-        failures.push({
-          place: leg.id,
-          act: null,
-          reason: `${item.title} and a person in ${leg.title}: nobody rides with cold stock.`,
-        });
-      } else if (volumeM3 === undefined) {
-        failures.push({
-          place: leg.id,
-          act: null,
-          reason: `${leg.title}: the air volume that load and people share is not known.`,
-        });
-      } else {
-        const failure = failureIn(item, leg.title, leg.id, volumeM3, resolved, levels);
-        if (failure) failures.push(failure);
-      }
-    }
-  }
-  return failures;
+  return [
+    ...storeFailures(resolved, levels),
+    ...(plan.transport ?? []).flatMap((leg) => legFailures(leg, resolved, levels)),
+  ];
 }

@@ -1,9 +1,12 @@
+import { InvalidInput } from '../errors.js';
 import { inRange, type Range } from '../science/range.js';
 import type { Origin, PhysicalFigure } from './plan-file.js';
-import { statedFigure } from './stated-figure.js';
+import { statedFigure, type StatedFigure } from './stated-figure.js';
 
 /** Which end of an uncertain figure is taken: as stated, or the end that is worst or best for people. */
 export type End = 'stated' | 'worst' | 'best';
+
+export type WorseEnd = 'low' | 'high' | 'either';
 
 /** What stands in when the plan is silent, and between which ends when it says "don't know". */
 export interface Fallback {
@@ -17,8 +20,8 @@ export interface Fallback {
 /** How one kind of figure is read. */
 export interface FigureSpec {
   readonly range: Range;
-  /** The end of the range that is worse for people. */
-  readonly worse: 'low' | 'high';
+  /** The end of the range that is worse for people; `either` where it depends on where they are. */
+  readonly worse: WorseEnd;
   readonly fallback?: Fallback;
 }
 
@@ -29,7 +32,7 @@ export interface OpenFigure {
   readonly unit: string;
   readonly low: number;
   readonly high: number;
-  readonly worse: 'low' | 'high';
+  readonly worse: WorseEnd;
   readonly kind: 'unknown' | 'range';
 }
 
@@ -52,6 +55,21 @@ export interface PlanReader {
   readonly origins: Map<string, Origin>;
 }
 
+/** Nothing can be run at the ends of a figure of which nobody can say where they are. */
+function requireCredibleEnds(
+  stated: StatedFigure,
+  fallback: Fallback | undefined,
+  path: string,
+  name: string,
+): void {
+  if (fallback !== undefined || (stated.low !== null && stated.high !== null)) return;
+  throw new InvalidInput(
+    `The ${name} at ${path} is not known and has no credible range.`,
+    'Give low and high for it; for a space, its kind fills in what is usual.',
+    [{ path, problem: 'is unknown without low and high' }],
+  );
+}
+
 /**
  * Reads the figures of a plan at chosen ends. The same plan read at its worst and at its best gives
  * the two ends of every answer; `endOf` may differ figure by figure to ask what one answer decides.
@@ -61,14 +79,14 @@ export function planReader(endOf: (path: string) => End): PlanReader {
   const assumed = new Map<string, AssumedFigure>();
   const origins = new Map<string, Origin>();
 
-  const pick = (path: string, stated: number, low: number, high: number, worse: 'low' | 'high') => {
+  const pick = (path: string, stated: number, low: number, high: number, worse: WorseEnd) => {
     switch (endOf(path)) {
       case 'stated':
         return stated;
       case 'worst':
-        return worse === 'low' ? low : high;
+        return worse === 'high' ? high : low;
       case 'best':
-        return worse === 'low' ? high : low;
+        return worse === 'high' ? low : high;
     }
   };
 
@@ -87,11 +105,12 @@ export function planReader(endOf: (path: string) => End): PlanReader {
     const stated = statedFigure(raw, path);
     origins.set(path, stated.origin);
     if (stated.value === null) {
-      const low = stated.low ?? fallback?.low ?? range.min;
-      const high = stated.high ?? fallback?.high ?? range.max;
+      requireCredibleEnds(stated, fallback, path, name);
+      const low = stated.low ?? Math.min(fallback?.low ?? range.min, stated.high ?? Infinity);
+      const high = stated.high ?? Math.max(fallback?.high ?? range.max, low);
       open.set(path, { path, name, unit, low, high, worse, kind: 'unknown' });
       // Where nothing is known the cautious end stands in for the stated value.
-      const cautious = worse === 'low' ? low : high;
+      const cautious = worse === 'high' ? high : low;
       assume(
         cautious,
         'unknown',

@@ -128,6 +128,9 @@ export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly E
         }
       });
     }
+    act.inhaled?.forEach((inhalation, at) => {
+      contents(inhalation, `${path}/inhaled/${String(at)}`, false);
+    });
     act.sound?.forEach((sound, at) => {
       contents(sound, `${path}/sound/${String(at)}`, false);
     });

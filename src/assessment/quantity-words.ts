@@ -12,6 +12,17 @@ export function shortText(figure: Figure): string {
   return `${String(Number(value.toPrecision(3)))} ${unit}`;
 }
 
+/** A number at which to stop, rounded to the side that stops earlier. */
+export function stopText(figure: Figure): string {
+  const { value, unit } = figure;
+  if (unit === 'oxygenFraction') return `${(Math.ceil(value * 1000 - 1e-9) / 10).toFixed(1)} %`;
+  if (unit === 'gasFraction') {
+    if (value < 0.01) return `${String(Math.floor(value * 1e5 + 1e-9) * 10)} ppm`;
+    return `${(Math.floor(value * 1000 + 1e-9) / 10).toFixed(1)} %`;
+  }
+  return shortText(figure);
+}
+
 export const answerWords = {
   mixed: 'well-mixed',
   layered: 'layered, upper end',

@@ -127,17 +127,41 @@ function grossVolume(
   return floorAreaM2 * (heightM - floorRiseM / 2) - raised + pockets;
 }
 
+/** Plan area and height of a kind of room, where a plan admits that nobody knows them. */
+function roomFallback(policy: Policy, kind: string | undefined, of: 'area' | 'height') {
+  const row = policy.roomTypes.find((candidate) => candidate.id === kind);
+  const { lengthM: length, widthM: width, heightM: height } = row ?? {};
+  const spread =
+    of === 'height'
+      ? height
+      : length && width
+        ? {
+            low: length.low * width.low,
+            typical: length.typical * width.typical,
+            high: length.high * width.high,
+          }
+        : undefined;
+  if (!row || !spread) return undefined;
+  const { low, typical, high } = spread;
+  return { value: typical, low, high, source: row.source, why: `usual for: ${row.title}` };
+}
+
 function resolvedSpace(space: PlanSpace, index: number, context: ResolveContext): ResolvedSpace {
   const { reader, policy } = context;
   const path = `/venue/spaces/${String(index)}`;
   const read = (raw: PhysicalFigure | undefined, key: string, how: FigureSpec) =>
     reader.number(raw, `${path}/${key}`, how);
-  const floorAreaM2 = read(space.floorAreaM2, 'floorAreaM2', spec(planRanges.floorAreaM2, 'low'));
-  const heightM = read(space.heightM, 'heightM', spec(planRanges.heightM, 'low'));
+  const usual = (of: 'area' | 'height') => roomFallback(policy, space.kind, of);
+  const floorAreaM2 = read(
+    space.floorAreaM2,
+    'floorAreaM2',
+    spec(planRanges.floorAreaM2, 'low', usual('area')),
+  );
+  const heightM = read(space.heightM, 'heightM', spec(planRanges.heightM, 'low', usual('height')));
   const floorLevelM = read(
     space.floorLevelM,
     'floorLevelM',
-    spec(planRanges.floorLevelM, 'low', constant(0, 'floor at the datum of the venue')),
+    spec(planRanges.floorLevelM, 'either', constant(0, 'floor at the datum of the venue')),
   );
   const floorRiseM = read(
     space.floorRiseM,
@@ -191,25 +215,33 @@ function resolvedOpening(
   const floors = [levels.get(opening.from), levels.get(opening.to)].filter(
     (level): level is number => level !== undefined,
   );
+  // A way to the open air only helps; a way to the next space helps one and harms the other.
+  const worse = opening.from === 'outside' || opening.to === 'outside' ? 'low' : 'either';
   return {
     from: opening.from,
     to: opening.to,
     kind: opening.kind,
-    widthM: read(opening.widthM, 'widthM', spec(planRanges.openingWidthM, 'low')),
-    heightM: read(opening.heightM, 'heightM', spec(planRanges.openingHeightM, 'low')),
+    widthM: read(opening.widthM, 'widthM', spec(planRanges.openingWidthM, worse)),
+    heightM: read(opening.heightM, 'heightM', spec(planRanges.openingHeightM, worse)),
     sillLevelM: read(
       opening.sillLevelM,
       'sillLevelM',
       spec(
         planRanges.floorLevelM,
-        'high',
+        'either',
         constant(Math.max(...floors, -100), 'sill at the higher floor'),
       ),
     ),
     openFraction: read(
       opening.openFraction,
       'openFraction',
-      spec(planRanges.openFraction, 'low', constant(1, 'fully open')),
+      spec(planRanges.openFraction, worse, {
+        value: 1,
+        low: 0,
+        high: 1,
+        source: 'plan-default',
+        why: 'fully open',
+      }),
     ),
     dischargeCoefficient:
       opening.dischargeCoefficient === undefined
@@ -217,47 +249,90 @@ function resolvedOpening(
         : read(
             opening.dischargeCoefficient,
             'dischargeCoefficient',
-            spec(planRanges.dischargeCoefficient, 'low'),
+            spec(planRanges.dischargeCoefficient, worse),
           ),
     fromS: opening.fromS ?? null,
     toS: opening.toS ?? null,
   };
 }
 
+/** A measured flow holds for two years; dates as yyyy-mm-dd. */
+function isOld(measuredOn: string | undefined, eventOn: string | undefined): boolean {
+  if (measuredOn === undefined || eventOn === undefined) return false;
+  const [year = '0', ...rest] = eventOn.split('-');
+  const twoYearsBefore = [String(Number(year) - 2).padStart(4, '0'), ...rest].join('-');
+  return measuredOn < twoYearsBefore;
+}
+
+/** People who may be in the spaces that a plant serves: what it may have been built for. */
+function peopleServed(plan: PlanFile, system: PlanAirSystem): number {
+  const spaces = new Set(system.serves?.map((served) => served.space) ?? [system.space]);
+  return plan.event.audience
+    .filter((group) => spaces.has(group.zone.space))
+    .reduce((sum, { count }) => {
+      const people = typeof count === 'number' ? count : (count.high ?? count.value ?? 0);
+      return sum + people;
+    }, 0);
+}
+
 function resolvedAirSystem(
   system: PlanAirSystem,
   index: number,
+  plan: PlanFile,
   { reader, policy }: ResolveContext,
 ): ResolvedAirSystem {
   const path = `/venue/airSystems/${String(index)}`;
+  const perPerson = Math.max(...policy.outdoorAirPerPerson.map((row) => row.m3PerS));
   const flow = spec(planRanges.flowM3PerS, 'low', {
     value: 0,
     low: 0,
-    high: 0,
-    source: 'plan-default',
-    why: 'no flow stated: none is credited',
+    high: Math.min(planRanges.flowM3PerS.max, perPerson * peopleServed(plan, system)),
+    source: 'policy',
+    why: 'no flow stated: none is credited; at best what is built for so many people',
   });
   const read = (raw: PhysicalFigure | undefined, key: string, how: FigureSpec = flow) =>
     reader.number(raw, `${path}/${key}`, how);
+  /** Air that nobody measured in the last two years is credited in part. */
+  const delivered = (raw: PhysicalFigure | undefined, key: string): number => {
+    const stated = read(raw, key);
+    const origin = reader.origins.get(`${path}/${key}`);
+    const on = typeof raw === 'object' ? raw.on : undefined;
+    const isMeasured = origin === 'measured' && !isOld(on, plan.event.date);
+    if (isMeasured || origin === 'unknown' || stated === 0) return stated;
+    const share = policyDefault(policy, 'deliveredShareOfDesign');
+    reader.assumed.set(`${path}/${key} delivered`, {
+      path: `${path}/${key}`,
+      name: 'delivered share of an air flow not measured in two years',
+      unit: '',
+      value: share.value,
+      origin: 'assumed',
+      source: share.source,
+      why: share.why,
+    });
+    return stated * share.value;
+  };
   const balanced = system.drive === 'balanced';
   return {
     title: system.title ?? system.id ?? `air system ${String(index + 1)}`,
     serves:
       system.serves ?? (system.space === undefined ? [] : [{ space: system.space, share: 1 }]),
-    freshAirM3PerS: balanced ? 0 : read(system.freshAirM3PerS, 'freshAirM3PerS'),
+    freshAirM3PerS: balanced ? 0 : delivered(system.freshAirM3PerS, 'freshAirM3PerS'),
     drive: system.drive,
-    supplyM3PerS: balanced ? read(system.supplyM3PerS, 'supplyM3PerS') : null,
-    extractM3PerS: balanced ? read(system.extractM3PerS, 'extractM3PerS') : null,
+    supplyM3PerS: balanced ? delivered(system.supplyM3PerS, 'supplyM3PerS') : null,
+    extractM3PerS: balanced ? delivered(system.extractM3PerS, 'extractM3PerS') : null,
     recirculatedM3PerS:
       system.recirculatedM3PerS === undefined
         ? 0
-        : read(system.recirculatedM3PerS, 'recirculatedM3PerS'),
+        : read(system.recirculatedM3PerS, 'recirculatedM3PerS', {
+            ...flow,
+            worse: 'either',
+          }),
     supplyLevel: system.supplyLevel ?? null,
     extractLevel: system.extractLevel ?? null,
     extractTopM:
       system.extractTopM === undefined
         ? null
-        : read(system.extractTopM, 'extractTopM', spec(planRanges.extractTopM, 'high')),
+        : read(system.extractTopM, 'extractTopM', spec(planRanges.extractTopM, 'either')),
     effectiveness: read(
       system.effectiveness,
       'effectiveness',
@@ -460,7 +535,7 @@ export function resolvedPlan(plan: PlanFile, context: ResolveContext): ResolvedP
       resolvedOpening(opening, index, levels, context),
     ),
     airSystems: (plan.venue.airSystems ?? []).map((system, index) =>
-      resolvedAirSystem(system, index, context),
+      resolvedAirSystem(system, index, plan, context),
     ),
     infiltration: spaces.map((space, index) => {
       const at = stated.get(space.id);
@@ -484,7 +559,7 @@ export function resolvedPlan(plan: PlanFile, context: ResolveContext): ResolvedP
       flowM3PerS: reader.number(
         row.flowM3PerS,
         `/venue/transfers/${String(index)}/flowM3PerS`,
-        spec(planRanges.flowM3PerS, 'low'),
+        spec(planRanges.flowM3PerS, 'either'),
       ),
     })),
     groups: plan.event.audience.map((group, index) => resolvedGroup(group, index, levels, context)),

@@ -1,15 +1,24 @@
 import type { Policy } from './catalogue-types.js';
 import type { PlacedRelease } from './air-case.js';
+import { actsUsing } from './act-attribution.js';
 import { episodeAt } from './air-case.js';
 import { policyDefault } from './policy-rows.js';
 import type { ResolvedAct, ResolvedPlan, ResolvedRelease, ResolvedStock } from './resolved-plan.js';
 
 /** One thing that can go wrong, when, and what it lets out. */
 export interface WorstRelease {
-  readonly act: string | null;
+  /** Acts whose slip it is, or that use the container. */
+  readonly acts: readonly string[];
   readonly title: string;
+  /** When its first gas comes out. */
   readonly startS: number;
   readonly placed: readonly PlacedRelease[];
+}
+
+function faultManner(form: string): ResolvedRelease['manner'] {
+  if (form === 'dryIce') return 'fog';
+  if (form === 'cryogen') return 'spill';
+  return form === 'compressed' || form === 'liquefied' ? 'jet' : 'burst';
 }
 
 /** The content of a container let go at once; dry ice as a whole box tipped into warm water. */
@@ -28,7 +37,7 @@ function containerRelease(item: ResolvedStock, policy: Policy): ResolvedRelease 
     timeConstantS: null,
     heightM: null,
     temperatureK: null,
-    manner: isDryIce ? 'fog' : item.form === 'cryogen' ? 'spill' : 'jet',
+    manner: faultManner(item.form),
     burned: false,
     episode: null,
     stock: item.id,
@@ -47,10 +56,14 @@ function slipsOf(act: ResolvedAct): readonly (readonly ResolvedRelease[])[] {
   return [...slips.values()];
 }
 
+/** Stated slips of this share of a container stand for the whole of it. */
+const wholeContainer = 0.999;
+
 /**
  * The worst credible releases of a plan: what each act states, and every container that stands open
- * or connected in a space, its whole content. Each is placed in the last performance that day, when
- * the air already carries what the day has left in it.
+ * or connected in a space, its whole content. A stated slip that lets out less than the container
+ * holds stands beside the container, not in its place. Each is put in the last performance that day,
+ * when the air already carries what the day has left in it.
  */
 export function worstReleases(plan: ResolvedPlan, policy: Policy): readonly WorstRelease[] {
   const lastShow = plan.performances.reduce((latest, one) =>
@@ -58,31 +71,36 @@ export function worstReleases(plan: ResolvedPlan, policy: Policy): readonly Wors
   );
   const ofActs = plan.acts.flatMap((act) =>
     slipsOf(act).map((slip): WorstRelease => {
-      const startS = Math.max(...act.startsS);
+      const actStartS = Math.max(...act.startsS);
       return {
-        act: act.id,
+        acts: [act.id],
         title: slip.map((release) => release.title).join('; '),
-        startS,
+        startS: actStartS + Math.min(...slip.map((release) => release.startS)),
         placed: slip.map((release) => ({
           release,
-          startS: startS + release.startS,
-          episode: episodeAt(plan, startS),
+          startS: actStartS + release.startS,
+          episode: episodeAt(plan, actStartS),
         })),
       };
     }),
   );
-  const stated = new Set(
-    plan.acts.flatMap((act) => act.worstCredible.map((release) => release.stock)),
-  );
+  const isStated = (item: ResolvedStock) =>
+    plan.acts.some((act) =>
+      act.worstCredible.some(
+        (release) =>
+          release.stock === item.id &&
+          release.space === item.place &&
+          release.amountMol >= wholeContainer * item.amountMol,
+      ),
+    );
   const spaces = new Set(plan.spaces.map((space) => space.id));
   const ofStock = plan.stock
-    .filter((item) => item.open && spaces.has(item.place) && !stated.has(item.id))
+    .filter((item) => item.open && spaces.has(item.place) && !isStated(item))
     .map((item): WorstRelease => {
-      const user = plan.acts.find((act) => act.planned.some((one) => one.stock === item.id));
       const presentS = Math.min(item.toS ?? Infinity, lastShow.endS);
       const startS = Math.max(item.fromS ?? 0, Math.min(lastShow.startS + 60, presentS));
       return {
-        act: user?.id ?? null,
+        acts: actsUsing(plan, item.id),
         title: item.title,
         startS,
         placed: [

@@ -23,21 +23,31 @@ export interface ZoneOutcome {
   readonly heightM: number;
   /** True for 0.2 m above the floor: fallen, picking something up. */
   readonly floorCheck: boolean;
+  /** False where 0.2 m is judged against Never only; toddlers live at that height. */
+  readonly judgedFully: boolean;
   readonly caseName: CaseName;
   readonly level: JudgedLevel;
   readonly answers: Readonly<Partial<Record<Answer, AnswerOutcome>>>;
   readonly timesS: readonly number[];
-  /** Lowest wet partial pressure of oxygen in the mixed and bound answers [Pa]. */
+  /** Lowest wet partial pressure of oxygen by answer [Pa]. */
   readonly oxygenPressurePa: Readonly<Partial<Record<Answer, number>>>;
 }
 
-const windowOf = {
-  minimum: 0,
-  peak: 0,
-  mean1Min: 60,
-  mean15Min: 900,
-  meanShow: 3600,
-} as const satisfies Record<Statistic, number>;
+/** A show longer than this is held to its worst hour [s]. */
+const longestShowWindowS = 3600;
+
+type Windows = Readonly<Record<Statistic, number>>;
+
+/** Averaging windows [s]; 0: the momentary value. A mean over the show never thins out a short one. */
+function windowsOf(showS: number): Windows {
+  return {
+    minimum: 0,
+    peak: 0,
+    mean1Min: 60,
+    mean15Min: 900,
+    meanShow: Math.min(longestShowWindowS, showS),
+  };
+}
 
 interface Track {
   readonly series: readonly number[];
@@ -46,7 +56,12 @@ interface Track {
 }
 
 function seriesOf(air: AirSeries, level: JudgedLevel): readonly number[] | null {
-  if (level.gas === null) return air.oxygenFraction;
+  // Where oxygen is let out the bound has two ends: its lowest, and as a gas its highest total.
+  if (level.gas === null) {
+    return level.failsWhen === 'above'
+      ? (air.gasFraction.O2 ?? air.oxygenFraction)
+      : air.oxygenFraction;
+  }
   const fraction = air.gasFraction[level.gas];
   if (!fraction) return null;
   return level.scale === 1 ? fraction : fraction.map((value) => value / level.scale);
@@ -56,8 +71,9 @@ function statisticOf(
   statistic: Statistic,
   timesS: readonly number[],
   values: readonly number[],
+  windows: Windows,
 ): { value: number; atS: number } {
-  if (windowOf[statistic] > 0) return highestRollingMean(timesS, values, windowOf[statistic]);
+  if (windows[statistic] > 0) return highestRollingMean(timesS, values, windows[statistic]);
   let best = { value: values[0] ?? 0, atS: timesS[0] ?? 0 };
   values.forEach((value, i) => {
     const better = statistic === 'minimum' ? value < best.value : value > best.value;
@@ -81,6 +97,7 @@ function answerOutcome(
   { series: values, extreme }: Track,
   level: JudgedLevel,
   originS: number,
+  windows: Windows,
 ): AnswerOutcome {
   const names: readonly LevelName[] = ['aim', 'limit', 'never'];
   const statistics: Partial<Record<Statistic, number>> = {};
@@ -88,8 +105,8 @@ function answerOutcome(
   const firstPast: Partial<Record<LevelName, number>> = {};
   for (const name of names) {
     const { statistic } = level[name];
-    const sampled = statisticOf(statistic, timesS, values).value;
-    const momentary = windowOf[statistic] === 0 ? extreme?.value : undefined;
+    const sampled = statisticOf(statistic, timesS, values, windows).value;
+    const momentary = windows[statistic] === 0 ? extreme?.value : undefined;
     const value = momentary === undefined ? sampled : worseValue(sampled, momentary, level);
     statistics[statistic] = value;
     failed[name] = fails(level, name, value);
@@ -98,7 +115,12 @@ function answerOutcome(
     const time = timesS[Math.max(0, at - 1)];
     if (at >= 0 && time !== undefined) firstPast[name] = time + originS;
   }
-  const sampled = statisticOf(level.failsWhen === 'below' ? 'minimum' : 'peak', timesS, values);
+  const sampled = statisticOf(
+    level.failsWhen === 'below' ? 'minimum' : 'peak',
+    timesS,
+    values,
+    windows,
+  );
   const between = extreme ?? sampled;
   const worst =
     worseValue(between.value, sampled.value, level) === between.value ? between : sampled;
@@ -135,6 +157,7 @@ function answersAt(
   height: HeightAir,
   straight: HeightAir,
   level: JudgedLevel,
+  floorCheck: boolean,
 ): Partial<Record<Answer, Track>> {
   const found: Partial<Record<Answer, Track>> = {};
   const track = (series: readonly number[] | null, extreme: Track['extreme']): Track | null =>
@@ -146,14 +169,18 @@ function answersAt(
   if (bound) found.bound = worseTrack(bound, mixed, level);
   const { layered } = height;
   if (layered) {
-    // Without samples the single layered run stands for both the median and the upper end.
-    const end = level.failsWhen === 'below' ? layered.p05 : layered.p95;
-    const upper = track(
-      seriesOf(end ?? layered, level),
-      end ? null : extremeOf(height, 'layered', level),
-    );
-    const median = track(seriesOf(layered.p50 ?? layered, level), null);
-    if (upper) found.layered = worseTrack(upper, mixed, level);
+    const one = track(seriesOf(layered, level), extremeOf(height, 'layered', level));
+    // Either end of the band may be the bad one, by quantity; both are looked at. Where nothing was
+    // sampled the run without any mixing stands beside the usual one at the heights people have; at
+    // 0.2 m that run is the passing front, and the bound with its first pass judges it.
+    const ends = [layered.p05, layered.p95].filter((end) => end !== undefined);
+    const others = ends.length > 0 ? ends : layered.adverse && !floorCheck ? [layered.adverse] : [];
+    const tracks = [
+      ...(ends.length > 0 ? [] : [one]),
+      ...others.map((end) => track(seriesOf(end, level), null)),
+    ].filter((candidate) => candidate !== null);
+    found.layered = tracks.reduce((worst, end) => worseTrack(worst, end, level), mixed);
+    const median = layered.p50 ? track(seriesOf(layered.p50, level), null) : one;
     if (median) found.layeredP50 = median;
   }
   return found;
@@ -174,6 +201,7 @@ export function zoneOutcomes(
   levelsOf: (group: ResolvedGroup) => readonly JudgedLevel[],
 ): readonly ZoneOutcome[] {
   const originS = air.window.startS;
+  const windows = windowsOf(air.shortestShowS);
   return groups.flatMap((group) => {
     const exact = result.zones[group.id];
     const plain = straight.zones[group.id];
@@ -184,11 +212,11 @@ export function zoneOutcomes(
     ];
     return heights.flatMap(({ height, straightHeight, floorCheck }) =>
       levelsOf(group).flatMap((level): ZoneOutcome[] => {
-        const series = answersAt(height, straightHeight, level);
+        const series = answersAt(height, straightHeight, level, floorCheck);
         if (!series.mixed) return [];
         const answers: Partial<Record<Answer, AnswerOutcome>> = {};
         for (const [answer, one] of Object.entries(series) as [Answer, Track][]) {
-          answers[answer] = answerOutcome(result.timesS, one, level, originS);
+          answers[answer] = answerOutcome(result.timesS, one, level, originS, windows);
         }
         return [
           {
@@ -196,6 +224,7 @@ export function zoneOutcomes(
             group,
             heightM: height.heightM,
             floorCheck,
+            judgedFully: !floorCheck || group.ageGroup === 'toddler',
             caseName,
             level,
             answers,
@@ -205,6 +234,9 @@ export function zoneOutcomes(
                 ? {
                     mixed: Math.min(...straightHeight.mixed.oxygenPartialPressurePa),
                     bound: Math.min(...height.bound.oxygenPartialPressurePa),
+                    ...(height.layered
+                      ? { layered: Math.min(...height.layered.oxygenPartialPressurePa) }
+                      : {}),
                   }
                 : {},
           },
