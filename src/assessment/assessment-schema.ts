@@ -154,9 +154,39 @@ const schema = Type.Object(
         cents: orNull(figure),
         note: orNull(note),
         noteInAir: orNull(note),
-        smallestAudible: list(
-          object({ words: text, cents: number, gasFraction: figure, amount: orNull(figure) }),
+        isStopped: flag,
+        jet: list(
+          object({
+            supply: Type.Enum(['pressure', 'flow']),
+            speaks: Type.Enum(['speaks', 'mayNotSpeak', 'mayOverblow', 'overblows']),
+            intonation: figure,
+            words: text,
+          }),
         ),
+        voice: orNull(
+          object({
+            speaker: Type.Enum(['man', 'woman', 'child']),
+            vowel: Type.Enum(['i', 'ae', 'a', 'u']),
+            fundamentalHz: number,
+            factor: figure,
+            formantsInAir: list(figure),
+            formants: list(figure),
+          }),
+        ),
+        amount: orNull(figure),
+        amountByFlushing: orNull(figure),
+        smallestAudible: list(
+          object({
+            words: text,
+            cents: orNull(number),
+            formantChange: orNull(number),
+            gasFraction: figure,
+            amount: orNull(figure),
+            amountByFlushing: orNull(figure),
+          }),
+        ),
+        remarks: list(text),
+        refusal: orNull(object({ reason: text, alternative: text })),
         saferWay: text,
       }),
     ),

@@ -148,6 +148,43 @@ export interface ZoneResult {
   readonly notComputed: string | null;
 }
 
+export interface SoundNote {
+  readonly name: string;
+  readonly centsOff: number;
+}
+
+/** How a jet-driven pipe takes to the gas, by what its supply keeps the same as in air. */
+export interface JetAnswer {
+  readonly supply: 'pressure' | 'flow';
+  readonly speaks: 'speaks' | 'mayNotSpeak' | 'mayOverblow' | 'overblows';
+  readonly intonation: Figure;
+  readonly words: string;
+}
+
+/** A voice in a breathable mixture: what moves is the timbre. */
+export interface VoiceAnswer {
+  readonly speaker: 'man' | 'woman' | 'child';
+  readonly vowel: 'i' | 'ae' | 'a' | 'u';
+  readonly fundamentalHz: number;
+  /** Sound speed over that of air, in the tract. */
+  readonly factor: Figure;
+  readonly formantsInAir: readonly Figure[];
+  readonly formants: readonly Figure[];
+}
+
+export interface SmallestAudible {
+  readonly words: string;
+  /** Shift of the note; null for a voice. */
+  readonly cents: number | null;
+  /** Relative shift of the formants; null for a note. */
+  readonly formantChange: number | null;
+  readonly gasFraction: Figure;
+  /** Gas for the bag pressed flat first, where the bag is known. */
+  readonly amount: Figure | null;
+  /** Gas for the bag flushed while it mixes. */
+  readonly amountByFlushing: Figure | null;
+}
+
 export interface SoundResult {
   readonly act: string;
   readonly title: string;
@@ -157,14 +194,19 @@ export interface SoundResult {
   readonly frequencyInAir: Figure | null;
   readonly frequency: Figure | null;
   readonly cents: Figure | null;
-  readonly note: { readonly name: string; readonly centsOff: number } | null;
-  readonly noteInAir: { readonly name: string; readonly centsOff: number } | null;
-  readonly smallestAudible: readonly {
-    readonly words: string;
-    readonly cents: number;
-    readonly gasFraction: Figure;
-    readonly amount: Figure | null;
-  }[];
+  readonly note: SoundNote | null;
+  readonly noteInAir: SoundNote | null;
+  /** Only odd partials sound, as in a stopped pipe. */
+  readonly isStopped: boolean;
+  readonly jet: readonly JetAnswer[];
+  readonly voice: VoiceAnswer | null;
+  /** The gas that buys the effect: bag pressed flat first, and bag flushed while it mixes. */
+  readonly amount: Figure | null;
+  readonly amountByFlushing: Figure | null;
+  readonly smallestAudible: readonly SmallestAudible[];
+  readonly remarks: readonly string[];
+  /** Set where the gas may not be breathed; then nothing is computed. */
+  readonly refusal: { readonly reason: string; readonly alternative: string } | null;
   readonly saferWay: string;
 }
 

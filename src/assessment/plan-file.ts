@@ -211,10 +211,32 @@ export type PlanRelease = Static<typeof releaseSchema>;
 
 export const actSoundSchema = Type.Object(
   {
-    instrument: Type.Enum(['openPipe', 'stoppedPipe', 'fluePipe', 'helmholtz', 'tube', 'voice']),
+    instrument: Type.Enum([
+      'openPipe',
+      'stoppedPipe',
+      'fluePipe',
+      'helmholtz',
+      'tube',
+      'voice',
+      'coupledReed', // clarinet, oboe, brass
+      'freeReed', // accordion, harmonica, organ reed
+      'edgeTone', // edge-tone or pea whistle
+      'lipWhistle',
+      'solidSource', // string, bell, fork, loudspeaker
+    ]),
     frequencyInAirHz: optional(figure('pitch in room air')),
     lengthM: optional(figure('sounding length')),
     radiusM: optional(figure('inner radius')),
+    isClosedAtOneEnd: optional(Type.Boolean({ description: 'tube: one end closed' })),
+    mouthWidthM: optional(figure('width of the mouth of a flue pipe')),
+    cutUpM: optional(figure('height of the mouth of a flue pipe')),
+    flueThicknessM: optional(figure('thickness of the flue')),
+    blowingPressurePa: optional(figure('blowing pressure in air, above the room')),
+    volumeM3: optional(figure('volume of a bottle')),
+    neckLengthM: optional(figure('length of its neck')),
+    neckRadiusM: optional(figure('inner radius of its neck')),
+    speaker: optional(Type.Enum(['man', 'woman', 'child'])),
+    vowel: optional(Type.Enum(['i', 'ae', 'a', 'u'], { description: 'heed, had, hod, who’d' })),
     gas: optional(Type.String({ maxLength: 20 })),
     composition: optional(fractions),
     gasFraction: optional(figure('share of the gas inside the instrument; the rest is room air')),

@@ -7,10 +7,11 @@ import { AssessmentPool } from '../workers/assessment-pool.js';
 import { AssessmentsService } from './assessments.service.js';
 import { PlansController } from './plans.controller.js';
 import { PlansService } from './plans.service.js';
+import { SoundPreviewController } from './sound-preview.controller.js';
 
 @Module({
   imports: [VenuesModule],
-  controllers: [CalculateController, PlansController],
+  controllers: [CalculateController, PlansController, SoundPreviewController],
   providers: [
     AssessmentPool,
     AssessmentsService,

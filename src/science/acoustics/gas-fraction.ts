@@ -1,6 +1,6 @@
 import { bracketedRoot } from '../numerics/root.js';
 import { inRange } from '../range.js';
-import type { GasId, GasLibrary } from '../gases/gas-library.js';
+import type { Composition, GasId, GasLibrary } from '../gases/gas-library.js';
 import { knownGas } from '../gases/known-gas.js';
 import { mixtureState, type MixtureState } from '../gases/mixture-state.js';
 import { relativeHumidityRange, roomPressure, roomTemperature } from '../gases/ranges.js';
@@ -13,6 +13,8 @@ export type SpeedModel = 'virial' | 'ideal';
 /** One gas mixed with humid room air, sounding against the same room air. */
 export interface GasInAir {
   readonly gas: GasId;
+  /** What is let in, where it is not one gas alone; the share is then that of this mixture. */
+  readonly mixture?: Composition;
   /** Of the room air [K]. */
   readonly temperatureK: number;
   readonly pressurePa: number;
@@ -49,7 +51,8 @@ function speedOf(state: MixtureState, model: SpeedModel): number {
  */
 export function noteRatio(library: GasLibrary, given: GasInAir): (share: number) => number {
   const { gas, temperatureK, pressurePa, relativeHumidity, radiusM } = given;
-  if (gas !== 'air') knownGas(library, gas, '/gas');
+  const letIn = given.mixture ?? { [gas]: 1 };
+  if (given.mixture === undefined && gas !== 'air') knownGas(library, gas, '/gas');
   inRange(temperatureK, roomTemperature, '/temperatureK');
   inRange(pressurePa, roomPressure, '/pressurePa');
   inRange(relativeHumidity, relativeHumidityRange, '/relativeHumidity');
@@ -63,7 +66,7 @@ export function noteRatio(library: GasLibrary, given: GasInAir): (share: number)
   const air = mixtureState(library, room);
   const water = air.waterFraction;
   const stateAt = (share: number) =>
-    mixtureState(library, mixtureAt(share, gas, water, gasTemperatureK, pressurePa));
+    mixtureState(library, mixtureAt(share, letIn, water, gasTemperatureK, pressurePa));
   const airFriction = (f: number, a: number) => wallFactorOfGas(library, room, a, f);
   return (share) => {
     const state = stateAt(share);
@@ -73,7 +76,7 @@ export function noteRatio(library: GasLibrary, given: GasInAir): (share: number)
     }
     const f = given.frequencyInAirHz;
     if (radiusM !== undefined && f !== undefined) {
-      const mixture = mixtureAt(share, gas, water, gasTemperatureK, pressurePa);
+      const mixture = mixtureAt(share, letIn, water, gasTemperatureK, pressurePa);
       ratio *= wallFactorOfGas(library, mixture, radiusM, f * ratio) / airFriction(f, radiusM);
     }
     return ratio;
@@ -82,14 +85,16 @@ export function noteRatio(library: GasLibrary, given: GasInAir): (share: number)
 
 function mixtureAt(
   share: number,
-  gas: GasId,
+  letIn: Composition,
   water: number,
   temperatureK: number,
   pressurePa: number,
 ) {
   const composition: Record<string, number> = { air: (1 - share) * (1 - water) };
   composition.H2O = (composition.H2O ?? 0) + (1 - share) * water;
-  composition[gas] = (composition[gas] ?? 0) + share;
+  for (const id in letIn) {
+    composition[id] = (composition[id] ?? 0) + share * (letIn[id] ?? 0);
+  }
   return { composition, temperatureK, pressurePa };
 }
 

@@ -24,6 +24,7 @@ export async function installWeb(app: NestFastifyApplication, settings: Settings
         styleSrc: ["'self'"],
         imgSrc: ["'self'"],
         fontSrc: ["'self'"],
+        mediaSrc: ["'self'"],
         connectSrc: ["'self'"],
         manifestSrc: ["'self'"],
         workerSrc: ["'self'"],

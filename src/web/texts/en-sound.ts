@@ -1,0 +1,23 @@
+/** Words of the sound card, in English. */
+export const soundTexts = {
+  title: 'Sound',
+  inAir: 'In air',
+  inGas: 'With the gas',
+  shift: 'Shift',
+  factor: 'Timbre moves by',
+  formant: 'Resonance',
+  amount: 'Gas that buys it, bag pressed flat first',
+  amountByFlushing: 'Gas that buys it, bag flushed while it mixes',
+  jetPressure: 'Blown at equal pressure',
+  jetFlow: 'Blown at equal flow',
+  intonation: 'Intonation number',
+  smallest: 'Smallest amount that still does',
+  ofTimbre: 'of the timbre',
+  bySqueezing: 'bag pressed flat first',
+  byFlushing: 'flushed',
+  saferWay: 'The safer way to the same effect',
+  instead: 'Instead',
+  illustration: 'Illustration, made by arithmetic: shows pitch or timbre, not loudness',
+  before: 'In air',
+  after: 'With the gas',
+} as const;
