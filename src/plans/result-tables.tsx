@@ -29,10 +29,13 @@ export function Folded(props: {
 
 function SoundCard({ result }: { readonly result: SoundResult }): VNode {
   const { noteInAir, note } = result;
-  const noteText = (given: typeof note) =>
-    given === null
-      ? ''
-      : ` ${given.name}${given.centsOff < 0 ? '\u2212' : '+'}${String(Math.round(Math.abs(given.centsOff)))}`;
+  const noteText = (given: typeof note) => {
+    if (given === null) return '';
+    const off = Math.round(given.centsOff);
+    if (off === 0) return given.name;
+    const side = off > 0 ? words.above : words.below;
+    return `${given.name}, ${String(Math.abs(off))}\u00a0cents ${side}`;
+  };
   return (
     <article class="sound-card">
       <h3>{result.title}</h3>
@@ -75,7 +78,8 @@ function SoundCard({ result }: { readonly result: SoundResult }): VNode {
           <ul>
             {result.smallestAudible.map((one) => (
               <li key={one.words}>
-                {one.words}: {opened(one.gasFraction)} {one.amount && opened(one.amount)}
+                {one.words.replace(/\.$/, '')}: {opened(one.gasFraction)}{' '}
+                {one.amount && opened(one.amount)}
               </li>
             ))}
           </ul>

@@ -54,6 +54,8 @@ export const resultTexts = {
   sound: 'Sound',
   inAir: 'In air',
   inGas: 'With the gas',
+  above: 'above',
+  below: 'below',
   shift: 'Shift',
   smallest: 'Smallest amount that is heard',
   saferWay: 'Safer way',
