@@ -20,11 +20,13 @@ const WEIGHTS = [0.242123807060954, -1.22325058390451, 1.5452602553351, 0.435866
 const EMBEDDED = [0.378109031458194, -0.0960422922124232, 0.5, 0.21793326075423] as const;
 const TIMES = [0, 0.871733043016918, 0.731579957788852, 1] as const;
 
-const MAX_STEPS = 100_000;
+const MAX_STEPS = 40_000;
 /** First step tried [s]: a layer may be born at the start of the span. */
 const FIRST_STEP_S = 1e-3;
 /** Accepted steps after which the slopes matrix is taken afresh. */
 const MATRIX_LIFE = 12;
+/** A step shorter than this meets something fast: the matrix is then taken afresh every step [s]. */
+const SHORT_STEP_S = 1;
 
 /**
  * State at the end of a span of a stiff balance, by a linearly implicit method of order 3 [unit of
@@ -79,7 +81,7 @@ export function stiffState(
     }
     const last = t + step * (1 + 1e-9) >= t1;
     const h = last ? t1 - t : step;
-    if (age >= MATRIX_LIFE) {
+    if (age >= (h < SHORT_STEP_S ? 1 : MATRIX_LIFE)) {
       writeJacobian(f, t, y, slope, jacobian, options.absolute, trial, sum);
       age = 0;
       factored = 0;

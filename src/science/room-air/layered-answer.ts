@@ -1,3 +1,4 @@
+import { NotComputable } from '../../errors.js';
 import type { AirGasTable } from './air-gases.js';
 import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { spaceAt, type AirModel } from './air-model.js';
@@ -150,12 +151,23 @@ function between(rows: readonly QuantityRow[], t: number): Float64Array {
   return before.values.map((value, i) => value + share * ((after.values[i] ?? value) - value));
 }
 
+/** Tolerances tried in turn where a layer vanishes too abruptly for the finest [-]. */
+const LAYER_TOLERANCES = [1e-5, 1e-4, 1e-3] as const;
+
 /** Runs the layers once. */
 export function layersRun(
   one: LayerCase,
   parameters: LayerParameters,
   timesS: readonly number[],
 ): LayerTrack {
+  for (const relative of LAYER_TOLERANCES) {
+    try {
+      return layeredTrack(one.network, parameters, timesS, relative);
+    } catch (thrown) {
+      const isLast = relative === LAYER_TOLERANCES.at(-1);
+      if (isLast || !(thrown instanceof NotComputable)) throw thrown;
+    }
+  }
   return layeredTrack(one.network, parameters, timesS);
 }
 

@@ -55,6 +55,7 @@ export function layeredTrack(
   network: LayerNetwork,
   parameters: LayerParameters,
   timesS: readonly number[],
+  relative: number = RELATIVE,
 ): LayerTrack {
   const { model } = network;
   const layout = layerLayout(network);
@@ -90,7 +91,8 @@ export function layeredTrack(
         wanted++;
       }
     }
-    const options = { relative: RELATIVE, absolute: ABSOLUTE, maxStepS: MAX_STEP_S };
+    const absolute = (ABSOLUTE * relative) / RELATIVE;
+    const options = { relative, absolute, maxStepS: MAX_STEP_S };
     const rates = layerRates(network, segment, parameters, joined);
     state = Float64Array.from(
       stiffState(rates, state, from, to, options, (step) => {
