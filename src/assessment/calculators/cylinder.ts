@@ -2,6 +2,8 @@ import Type from 'typebox';
 import { InvalidInput } from '../../errors.js';
 import { contentByMass, contentByPressure } from '../../science/gases/container-content.js';
 import { knownGas } from '../../science/gases/known-gas.js';
+import { roomPressure, roomTemperature } from '../../science/gases/ranges.js';
+import { inRange } from '../../science/range.js';
 import type { Calculator } from './calculator.js';
 import { compositionSchema, pressureSchema, temperatureSchema } from './gas.js';
 
@@ -64,7 +66,11 @@ export const cylinderCalculator: Calculator<typeof input, typeof output> = {
   output,
   run(given, { gases }) {
     const { gas, waterVolumeM3, pressurePa, temperatureK, massKg } = given;
-    const room = { temperatureK: given.roomTemperatureK, pressurePa: given.roomPressurePa };
+    // Checked under their own names: the science knows them as any temperature and pressure.
+    const room = {
+      temperatureK: inRange(given.roomTemperatureK, roomTemperature, '/roomTemperatureK'),
+      pressurePa: inRange(given.roomPressurePa, roomPressure, '/roomPressurePa'),
+    };
     if (gas !== undefined && given.composition !== undefined) {
       throw new InvalidInput('Both gas and composition are given.', 'Give one of them.', [
         { path: '/composition', problem: 'contradicts gas' },
