@@ -130,7 +130,10 @@ const zoneTitle = ({ floorCheck, group }: ZoneOutcome): string =>
 
 function governingOf(known: Knowledge, nameOf: (gas: string) => string): Governing | null {
   const { resolved, hits } = known.shown;
-  const hit = gravestHit(hits);
+  // A number says more than a refusal of the same gravity, and refusals stand on their own.
+  const gravest = gravestHit(hits);
+  const numbered = gravestHit(hits.filter((one) => one.outcome !== null));
+  const hit = numbered?.word === gravest?.word ? numbered : gravest;
   if (hit?.outcome) {
     const answer = hit.outcome.answers[hit.answer] ? hit.answer : 'mixed';
     const figure = statisticFigure(hit.outcome, answer, hit.level, resolved);

@@ -1,3 +1,4 @@
+import { connectedSpaces } from './act-attribution.js';
 import type { AirAnswers } from './air-answers.js';
 import { airCase, type AirCase } from './air-case.js';
 import type { LargestAmount } from './assessment.js';
@@ -10,19 +11,22 @@ import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 /** An act is never scaled up beyond this many times what is planned. */
 const largestFactor = 100;
 /** Halvings of the whole answer, once the mixed one has given a first guess. */
-const halvings = 5;
+const halvings = 4;
 /** Corrections of the guess by the mixed answer alone. */
-const corrections = 4;
+const corrections = 2;
 
-/** The first outcome that fails row 2 of the table. */
-const failing = (outcomes: readonly ZoneOutcome[]): ZoneOutcome | null =>
-  outcomes.find(
-    ({ judgedFully, answers }) =>
-      judgedFully &&
-      ((answers.mixed?.fails.aim ?? false) ||
-        (answers.layered?.fails.limit ?? false) ||
-        (answers.layeredP50?.fails.aim ?? false)),
-  ) ?? null;
+/** The first outcome, in spaces that the gas of an act can reach, that fails row 2 of the table. */
+const failingIn =
+  (reached: ReadonlySet<string>) =>
+  (outcomes: readonly ZoneOutcome[]): ZoneOutcome | null =>
+    outcomes.find(
+      ({ judgedFully, answers, group }) =>
+        judgedFully &&
+        reached.has(group.space) &&
+        ((answers.mixed?.fails.aim ?? false) ||
+          (answers.layered?.fails.limit ?? false) ||
+          (answers.layeredP50?.fails.aim ?? false)),
+    ) ?? null;
 
 /**
  * Where the aim would be met exactly, were the mixed answer a straight line through two amounts [-].
@@ -82,6 +86,11 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
     return zoneOutcomes(air, full, straight, 'planned', resolved.groups, levelsOf);
   };
 
+  const sources = dayReleases.filter((placed) => placed.release.act === act);
+  const reached = new Set(
+    sources.flatMap(({ release }) => [...connectedSpaces(resolved, release.space)]),
+  );
+  const failing = failingIn(reached);
   const withoutAct = failing(outcomesAt(0, 'full'));
   if (withoutAct) return { factor: 0, blocker: withoutAct, failsWithoutAct: true };
 
@@ -108,7 +117,9 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
     const isWhole = high >= largestFactor;
     return {
       factor: high,
-      blocker: isWhole ? null : (failing(outcomesAt(high * 1.01 + 1e-9, 'full')) ?? plannedBlocker),
+      blocker: isWhole
+        ? null
+        : (failing(outcomesAt(high * 1.01 + 1e-9, 'straight')) ?? plannedBlocker),
       failsWithoutAct: false,
     };
   }
