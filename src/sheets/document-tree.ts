@@ -44,8 +44,7 @@ export type Block =
   | BulletList
   | NumberedList
   | FigureBlock
-  | SignOff
-  | PageBreak;
+  | SignOff;
 
 export interface Heading {
   readonly kind: 'heading';
@@ -118,12 +117,15 @@ export interface BulletList {
   readonly kind: 'list';
   readonly items: readonly Words[];
   readonly empty: string;
+  readonly look?: 'body' | 'note';
   /** Never divided between two pages. */
   readonly together?: true;
 }
 
 export interface NumberedList {
   readonly kind: 'numbered';
+  /** Two columns are set in smaller type. */
+  readonly columns: 1 | 2;
   readonly items: readonly {
     readonly number: string;
     readonly words: Words;
@@ -140,6 +142,8 @@ export interface FigureBlock {
   readonly caption: string;
   /** Width to height of the picture. */
   readonly aspect: number;
+  /** Greatest height, as a share of the page. */
+  readonly tallest: number;
 }
 
 export interface SignOff {
@@ -158,10 +162,4 @@ export interface SignOff {
     readonly name: string;
     readonly date: string;
   }[];
-}
-
-export interface PageBreak {
-  readonly kind: 'pageBreak';
-  /** Break only when less than this share of the page is left. */
-  readonly whenLeft: number;
 }

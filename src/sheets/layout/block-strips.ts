@@ -39,7 +39,7 @@ export function blockStrips(
     case 'paragraph': {
       const paragraph = node('P');
       parent.children.push(paragraph);
-      const strips = textStrips(block.words, looks[block.look], frame, paragraph, set, 4);
+      const strips = textStrips(block.words, looks[block.look], frame, paragraph, set, 2.5);
       return block.keepWithNext === true
         ? strips.map((strip) => ({ ...strip, keepWithNext: true }))
         : strips;
@@ -58,16 +58,6 @@ export function blockStrips(
       return figureStrips(block, frame, parent, set);
     case 'signOff':
       return signOffStrips(block, frame, parent, set);
-    case 'pageBreak':
-      return [
-        {
-          height: 0,
-          before: 0,
-          keepWithNext: true,
-          pieces: [],
-          wantsHeight: frame.pageHeight * block.whenLeft,
-        },
-      ];
   }
 }
 
@@ -89,7 +79,7 @@ function headingStrips(
   const look =
     heading.level === 1 ? looks.title : heading.level === 2 ? looks.heading2 : looks.heading3;
   if (heading.level !== 2) {
-    const before = heading.level === 1 ? 0 : 9;
+    const before = heading.level === 1 ? 0 : 5;
     strips.push(...textStrips(heading.words, look, frame, element, set, before));
   } else {
     // A rule across the page opens each numbered part; its number hangs before the title.
@@ -97,17 +87,17 @@ function headingStrips(
     const numbered = heading.number !== undefined;
     const x = numbered ? frame.x + hang : frame.x;
     const lines = setLines(heading.words, look, frame.width - hang, set);
-    const marks: Mark[] = lineMarks(lines, look, x, 5);
+    const marks: Mark[] = lineMarks(lines, look, x, 3);
     if (numbered) {
       marks.unshift(
         ...setLines(heading.number, look, frame.width, set).map((line) =>
-          lineMark(line, look, frame.x, 5),
+          lineMark(line, look, frame.x, 3),
         ),
       );
     }
     strips.push({
-      height: lines.length * look.leading + 7,
-      before: 17,
+      height: lines.length * look.leading + 4,
+      before: 8,
       keepWithNext: true,
       pieces: [
         {
@@ -161,7 +151,7 @@ function factStrips(facts: Facts, frame: Frame, parent: StructureNode, set: Type
         { node: body, marks: lineMarks(bodyLines, looks.cell, x + labelWidth, 0) },
       ];
     });
-    strips.push({ height: height + 1.6, before: index === 0 ? 7 : 0, keepWithNext: true, pieces });
+    strips.push({ height: height + 1.6, before: index === 0 ? 5 : 0, keepWithNext: true, pieces });
   }
   return strips;
 }
@@ -182,8 +172,8 @@ function bulletStrips(
     item.children.push(body);
     element.children.push(item);
     const at = { x: frame.x + indent, width: frame.width - indent };
-    const strips = textStrips(words, looks.body, at, body, set, 3);
-    const middle = baselineIn(looks.body) - 3.1;
+    const strips = textStrips(words, looks[list.look ?? 'body'], at, body, set, 2);
+    const middle = baselineIn(looks[list.look ?? 'body']) - 2.8;
     return strips.map((strip, index) =>
       index > 0
         ? strip
@@ -213,6 +203,7 @@ function bulletStrips(
   return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));
 }
 
+/** Numbered entries in one column or two; in two they run across, so that a page may end anywhere. */
 function numberedStrips(
   list: NumberedList,
   frame: Frame,
@@ -222,34 +213,53 @@ function numberedStrips(
   if (list.items.length === 0) return emptyStrips(list.empty, frame, parent, set);
   const element = node('L');
   parent.children.push(element);
-  const indent = 26;
-  return list.items.flatMap((entry) => {
+  const { columns } = list;
+  const gap = 16;
+  const width = (frame.width - gap * (columns - 1)) / columns;
+  const indent = 18;
+  const look = columns === 1 ? looks.body : looks.note;
+  const entries = list.items.map((entry, index) => {
     const item = node('LI');
     const label = node('Lbl');
     const body = node('LBody');
     item.children.push(label, body);
     element.children.push(item);
-    const at = { x: frame.x + indent, width: frame.width - indent };
-    const first = textStrips(entry.words, looks.body, at, body, set, 6);
-    const detail = textStrips(entry.detail, looks.small, at, body, set, 0);
-    const numberLook = { ...looks.body, weight: 'strong' as const };
+    const x = frame.x + (index % columns) * (width + gap);
+    const numberLook = { ...look, weight: 'strong' as const };
     const numbers = setLines(entry.number, numberLook, indent, set);
-    return [...first, ...detail].map((strip, index, all) => ({
-      ...strip,
-      keepWithNext:
-        strip.keepWithNext || index === first.length - 1 ? index < all.length - 1 : false,
-      pieces:
-        index === 0
-          ? [{ node: label, marks: lineMarks(numbers, numberLook, frame.x, 0) }, ...strip.pieces]
-          : strip.pieces,
-    }));
+    const lines = setLines(entry.words, look, width - indent, set);
+    const detail = setLines(entry.detail, looks.small, width - indent, set);
+    return {
+      height: lines.length * look.leading + detail.length * looks.small.leading,
+      pieces: [
+        { node: label, marks: lineMarks(numbers, numberLook, x, 0) },
+        {
+          node: body,
+          marks: [
+            ...lineMarks(lines, look, x + indent, 0),
+            ...lineMarks(detail, looks.small, x + indent, lines.length * look.leading),
+          ],
+        },
+      ],
+    };
   });
+  const strips: Strip[] = [];
+  for (let first = 0; first < entries.length; first += columns) {
+    const row = entries.slice(first, first + columns);
+    strips.push({
+      height: Math.max(...row.map((entry) => entry.height)),
+      before: columns === 1 ? 2.5 : 1.2,
+      keepWithNext: false,
+      pieces: row.flatMap((entry) => entry.pieces),
+    });
+  }
+  return strips;
 }
 
 function emptyStrips(words: string, frame: Frame, parent: StructureNode, set: Typesetter): Strip[] {
   const paragraph = node('P');
   parent.children.push(paragraph);
-  return textStrips(words, looks.body, frame, paragraph, set, 4);
+  return textStrips(words, looks.note, frame, paragraph, set, 3);
 }
 
 function figureStrips(
@@ -261,13 +271,13 @@ function figureStrips(
   const element = node('Figure', { alt: figure.alt });
   const caption = node('P');
   parent.children.push(element, caption);
-  const height = Math.min(frame.width / figure.aspect, frame.pageHeight * 0.8);
+  const height = Math.min(frame.width / figure.aspect, frame.pageHeight * figure.tallest);
   const width = height * figure.aspect;
-  const captionStrips = textStrips(figure.caption, looks.small, frame, caption, set, 4);
+  const captionStrips = textStrips(figure.caption, looks.small, frame, caption, set, 2);
   return [
     {
       height,
-      before: 8,
+      before: 5,
       keepWithNext: captionStrips.length > 0,
       pieces: [
         {
@@ -304,7 +314,7 @@ function signOffStrips(
     frame,
     parent,
     set,
-    33,
+    24,
   );
   // The whole block is signed at once: it never spans two pages.
   return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));

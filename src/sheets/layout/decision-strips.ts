@@ -21,7 +21,7 @@ const shapes: Record<DecisionShape, { readonly data: string; readonly filled: bo
   noGo: { data: 'M0.8 0.8H17.2V17.2H0.8Z M4.6 4.6L13.4 13.4 M13.4 4.6L4.6 13.4', filled: false },
 };
 
-const inset = 14;
+const inset = 11;
 const frameThickness = 1.6;
 
 /** The ruled box of the decision: the words, the governing number, the reason. */

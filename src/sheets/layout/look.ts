@@ -1,12 +1,10 @@
+import { accent, hairline, ink, softInk } from '../../web/section/ink.js';
 import type { Size } from '../document-tree.js';
 import type { Weight } from '../text-runs.js';
 
-/** Paper and ink: every length (points) and colour of a sheet in one place. */
+/** Paper and ink: every length (points) of a sheet in one place; colours are those of the drawings. */
 
-export const ink = '#1a1a17';
-export const softInk = '#55534c';
-export const hairline = '#b9b5a8';
-export const accent = '#1f4a5f';
+export { accent, hairline, ink, softInk };
 export const markGrey = '#edebe6';
 
 export interface Paper {
@@ -18,7 +16,7 @@ export interface Paper {
   readonly bottom: number;
 }
 
-const margins = { left: 51, right: 51, top: 66, bottom: 62 };
+const margins = { left: 40, right: 40, top: 52, bottom: 46 };
 export const papers: Record<Size, Paper> = {
   a4: { width: 595.28, height: 841.89, ...margins },
   letter: { width: 612, height: 792, ...margins },
@@ -36,21 +34,21 @@ export interface TextLook {
 }
 
 export const looks = {
-  title: { size: 21, leading: 25, weight: 'strong', colour: ink },
-  over: { size: 9.5, leading: 14, weight: 'strong', colour: accent },
-  heading2: { size: 13, leading: 17, weight: 'strong', colour: accent },
-  heading3: { size: 10, leading: 13.5, weight: 'strong', colour: ink },
-  body: { size: 9.6, leading: 13.4, weight: 'regular', colour: ink },
-  small: { size: 8.6, leading: 11.6, weight: 'regular', colour: softInk },
-  note: { size: 8.6, leading: 11.6, weight: 'regular', colour: ink },
-  label: { size: 8.2, leading: 11.4, weight: 'strong', colour: softInk },
-  caption: { size: 8.8, leading: 12.4, weight: 'strong', colour: ink },
-  cell: { size: 8.8, leading: 11.6, weight: 'regular', colour: ink },
-  cellStrong: { size: 8.8, leading: 11.6, weight: 'strong', colour: ink },
-  tableHead: { size: 8.2, leading: 10.8, weight: 'strong', colour: softInk },
-  decision: { size: 20, leading: 25, weight: 'strong', colour: ink },
-  number: { size: 26, leading: 31, weight: 'strong', colour: ink },
-  running: { size: 8.2, leading: 11, weight: 'regular', colour: softInk },
+  title: { size: 18, leading: 21.5, weight: 'strong', colour: ink },
+  over: { size: 9, leading: 12.5, weight: 'strong', colour: accent },
+  heading2: { size: 11.5, leading: 14.5, weight: 'strong', colour: accent },
+  heading3: { size: 9, leading: 12, weight: 'strong', colour: ink },
+  body: { size: 9, leading: 11.4, weight: 'regular', colour: ink },
+  small: { size: 8, leading: 9.7, weight: 'regular', colour: softInk },
+  note: { size: 8, leading: 9.7, weight: 'regular', colour: ink },
+  label: { size: 8, leading: 10.4, weight: 'strong', colour: softInk },
+  caption: { size: 8.4, leading: 11, weight: 'strong', colour: ink },
+  cell: { size: 8, leading: 9.6, weight: 'regular', colour: ink },
+  cellStrong: { size: 8, leading: 9.6, weight: 'strong', colour: ink },
+  tableHead: { size: 8, leading: 9.6, weight: 'strong', colour: softInk },
+  decision: { size: 19, leading: 23, weight: 'strong', colour: ink },
+  number: { size: 23, leading: 27, weight: 'strong', colour: ink },
+  running: { size: 8, leading: 10.6, weight: 'regular', colour: softInk },
 } as const satisfies Record<string, TextLook>;
 
 /** Height of the letters above the baseline and below it, as shares of the size. */

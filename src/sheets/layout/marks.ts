@@ -76,8 +76,6 @@ export interface Strip {
   readonly pieces: readonly Piece[];
   /** Drawn first when this strip starts a page: the head of a divided table. */
   readonly repeated?: Strip;
-  /** Start a page here when less than this height is left. */
-  readonly wantsHeight?: number;
 }
 
 export interface Page {

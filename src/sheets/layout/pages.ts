@@ -51,7 +51,6 @@ export function laidPages(
       while (strips[end]?.keepWithNext === true) end += 1;
       groupEnds = end + 1;
       if (together <= body.height) needed = together;
-      needed = Math.max(needed, strip.wantsHeight ?? 0);
     }
     if (y > 0 && before + needed > left + 0.01) {
       turn();

@@ -70,13 +70,13 @@ function runningLines(
     ];
   };
   const footer = tree.footerRight.replace('{page}', String(page)).replace('{pages}', String(pages));
-  const footerTop = paper.height - paper.bottom + 20;
+  const footerTop = paper.height - paper.bottom + 13;
   return {
     node: null,
     running: true,
     marks: [
-      ...pair(tree.headerLeft, tree.headerRight, 30),
-      line(45),
+      ...pair(tree.headerLeft, tree.headerRight, 26),
+      line(40),
       line(footerTop - 5),
       ...pair(tree.footerLeft, footer, footerTop),
     ],

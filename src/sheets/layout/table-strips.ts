@@ -4,10 +4,10 @@ import { hairline, ink, looks, type TextLook } from './look.js';
 import type { Mark, Piece, Strip, StructureNode } from './marks.js';
 import { lineMark, textStrips } from './text-strips.js';
 
-const gutter = 9;
-const padding = 3.6;
+const gutter = 7;
+const padding = 1.5;
 /** Width any word may claim [points]: enough for a figure with its unit. */
-const leastClaim = 62;
+const leastClaim = 56;
 
 interface Frame {
   readonly x: number;
@@ -148,7 +148,7 @@ export function tableStrips(
   });
 
   const strips: Strip[] = [
-    ...textStrips(table.caption, looks.caption, frame, caption, set, 7).map((strip) => ({
+    ...textStrips(table.caption, looks.caption, frame, caption, set, 4).map((strip) => ({
       ...strip,
       keepWithNext: true,
     })),

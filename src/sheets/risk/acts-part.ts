@@ -2,7 +2,7 @@ import type { ActResult, Assessment, ReleaseLine } from '../../assessment/assess
 import { quantityText } from '../../web/format/figure-text.js';
 import type { Block, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { figureWords } from './figure-words.js';
+import { figureOnLine } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
 
 /** What is released in each act, planned and worst credible, and the word for act and space. */
@@ -15,10 +15,10 @@ export function actsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       caption: words.caption,
       empty: words.none,
       columns: [
-        { title: words.act, share: 2.5, align: 'left' },
+        { title: words.act, share: 3, align: 'left' },
         { title: words.case, share: 1.2, align: 'left' },
-        { title: words.release, share: 2.5, align: 'left' },
-        { title: words.gas, share: 0.7, align: 'left' },
+        { title: words.release, share: 2.4, align: 'left' },
+        { title: words.gas, share: 0.6, align: 'left' },
         { title: words.mass, share: 1.1, align: 'right' },
         { title: words.volume, share: 1.1, align: 'right' },
         { title: words.over, share: 1.1, align: 'right' },
@@ -27,54 +27,68 @@ export function actsPart(assessment: Assessment, texts: RiskTexts): Block[] {
     },
     {
       kind: 'table',
-      caption: words.wordsCaption,
+      caption: words.spacesCaption,
       empty: words.none,
       columns: [
-        { title: words.what, share: 3, align: 'left' },
-        { title: texts.parts.decision.asFiled, share: 2, align: 'left' },
+        { title: words.space, share: 3, align: 'left' },
+        { title: words.freeVolume, share: 1.2, align: 'right' },
+        { title: words.freshAir, share: 2, align: 'right' },
+        { title: texts.parts.decision.asFiled, share: 1.9, align: 'left' },
         { title: texts.parts.decision.withControls, share: 2, align: 'left' },
       ],
-      rows: [
-        ...assessment.acts.map((act) => wordRow(act.title, act.decision, texts)),
-        ...assessment.spaces.map((space) =>
-          wordRow(filledText(words.space, { space: space.title }), space.decision, texts),
-        ),
-      ],
+      rows: assessment.spaces.map((space) => ({
+        cells: [
+          space.title,
+          figureOnLine(space.volume),
+          figureOnLine(space.freshAir),
+          texts.decisions[space.decision.asFiled],
+          texts.decisions[space.decision.withControls],
+        ],
+      })),
     },
-    ...(assessment.spaces.length === 0
-      ? []
-      : [
-          { kind: 'heading', level: 3, words: words.spacesCaption } as const,
-          {
-            kind: 'list',
-            empty: words.none,
-            items: assessment.spaces.map((space) =>
-              filledText(words.spaceFacts, {
-                space: space.title,
-                volume: figureWords(space.volume).replaceAll('\n', ' '),
-                freshAir: figureWords(space.freshAir).replaceAll('\n', ' '),
-              }),
-            ),
-          } as const,
-        ]),
   ];
 }
 
-function wordRow(what: string, pair: ActResult['decision'], texts: RiskTexts): TableRow {
-  return {
-    cells: [what, texts.decisions[pair.asFiled], texts.decisions[pair.withControls]],
-  };
+/** Releases alike but for a number at the end of their titles, such as a session, in one line. */
+function repeatsTogether(lines: readonly ReleaseLine[], texts: RiskTexts): ReleaseLine[] {
+  const groups = new Map<string, ReleaseLine[]>();
+  for (const line of lines) {
+    const title = line.title.replace(/\s*\d+$/, '');
+    const { gas, mass, volume, durationS } = line;
+    const key = JSON.stringify([title, gas, mass.value, volume.value, durationS]);
+    groups.set(key, [...(groups.get(key) ?? []), line]);
+  }
+  return [...groups.values()].flatMap((alike) => {
+    const [first] = alike;
+    if (first === undefined) return [];
+    if (alike.length === 1) return [first];
+    const title = first.title.replace(/,?(\s+\p{L}+)?\s*\d+$/u, '');
+    const number = String(alike.length);
+    return [{ ...first, title: filledText(texts.parts.acts.times, { number, title }) }];
+  });
 }
 
 function actRows(act: ActResult, texts: RiskTexts): TableRow[] {
   const words = texts.parts.acts;
   const lines: { caseName: 'planned' | 'worstCredible'; line: ReleaseLine }[] = [
-    ...act.planned.map((line) => ({ caseName: 'planned' as const, line })),
-    ...act.worstCredible.map((line) => ({ caseName: 'worstCredible' as const, line })),
+    ...repeatsTogether(act.planned, texts).map((line) => ({ caseName: 'planned' as const, line })),
+    ...repeatsTogether(act.worstCredible, texts).map((line) => ({
+      caseName: 'worstCredible' as const,
+      line,
+    })),
   ];
   const title = [
     { text: `${act.title}\n`, strong: true as const },
-    { text: filledText(words.in, { space: act.spaceTitle }) },
+    {
+      text: filledText(
+        act.decision.asFiled === act.decision.withControls ? words.in : words.inChanged,
+        {
+          space: act.spaceTitle,
+          asFiled: texts.decisions[act.decision.asFiled],
+          withControls: texts.decisions[act.decision.withControls],
+        },
+      ),
+    },
   ];
   if (lines.length === 0) return [{ cells: [title, '–', words.none, '–', '–', '–', '–'] }];
   return lines.map(({ caseName, line }, index) => ({
@@ -83,8 +97,8 @@ function actRows(act: ActResult, texts: RiskTexts): TableRow[] {
       texts.cases[caseName],
       line.title,
       line.gas,
-      figureWords(line.mass),
-      figureWords(line.volume),
+      figureOnLine(line.mass),
+      figureOnLine(line.volume),
       line.durationS === 0 ? words.atOnce : quantityText(line.durationS, 's'),
     ],
     ...(index === 0 ? {} : { continues: true as const }),

@@ -1,7 +1,8 @@
 import type { Assessment, ControlResult } from '../../assessment/assessment.js';
-import type { Block } from '../document-tree.js';
+import type { Block, Words } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { actTitle, figureOrDash, figureWords, zoneTitle } from './figure-words.js';
+import { conditionGroups, numberRanges } from './condition-groups.js';
+import { actTitle, figureOrDash, figureWords } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
 
 const levelOrder: readonly ControlResult['level'][] = [
@@ -18,64 +19,93 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
   const sorted = assessment.controls.toSorted(
     (one, other) => levelOrder.indexOf(one.level) - levelOrder.indexOf(other.level),
   );
+  const offered = offeredLines(
+    assessment,
+    sorted.filter((control) => !control.chosen),
+    texts,
+  );
   return [
     { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'table',
-      caption: '',
+      caption: words.chosenCaption,
       empty: words.none,
       columns: [
         { title: words.control, share: 2.6, align: 'left' },
-        { title: words.level, share: 1.2, align: 'left' },
-        { title: words.act, share: 1.6, align: 'left' },
-        { title: words.chosen, share: 0.8, align: 'left' },
-        { title: words.before, share: 1, align: 'right' },
-        { title: words.after, share: 1, align: 'right' },
-        { title: words.words, share: 2.6, align: 'left' },
+        { title: words.level, share: 1, align: 'left' },
+        { title: words.act, share: 1.8, align: 'left' },
+        { title: words.before, share: 0.9, align: 'right' },
+        { title: words.after, share: 0.9, align: 'right' },
+        { title: words.words, share: 3.4, align: 'left' },
       ],
-      rows: sorted.map((control) => ({
-        cells: [
-          control.title,
-          texts.controlLevels[control.level],
-          control.act === null ? words.wholePlan : actTitle(assessment, control.act),
-          control.chosen ? words.yes : words.no,
-          figureOrDash(control.before),
-          control.credited ? figureOrDash(control.after) : words.noCredit,
-          control.words,
-        ],
-      })),
+      rows: sorted
+        .filter((control) => control.chosen)
+        .map((control) => ({
+          cells: [
+            control.title,
+            texts.controlLevels[control.level],
+            control.act === null ? words.wholePlan : actTitle(assessment, control.act),
+            figureOrDash(control.before),
+            control.credited ? figureOrDash(control.after) : words.noCredit,
+            control.words,
+          ],
+        })),
     },
+    ...(offered.length === 0
+      ? []
+      : ([
+          { kind: 'paragraph', look: 'note', words: words.offered, keepWithNext: true },
+          { kind: 'list', look: 'note', items: offered, empty: words.none },
+        ] as const)),
   ];
 }
 
-/** The conditions of the decision, numbered, each tied to its act and to the day's checklist. */
+/** One line per act with the titles of the controls it could still take. */
+function offeredLines(
+  assessment: Assessment,
+  controls: readonly ControlResult[],
+  texts: RiskTexts,
+): Words[] {
+  const words = texts.parts.controls;
+  const byAct = new Map<string, Set<string>>();
+  for (const { act, title } of controls) {
+    const name = act === null ? words.wholePlan : actTitle(assessment, act);
+    byAct.set(name, (byAct.get(name) ?? new Set()).add(title));
+  }
+  return [...byAct].map(([act, titles]) => [
+    { text: `${act}: `, strong: true },
+    { text: `${[...titles].join('; ')}.` },
+  ]);
+}
+
+/** The conditions of the decision, each with its line of the day's checklist. */
 export function conditionsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.conditions;
   return [
     { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     {
       kind: 'numbered',
+      columns: 1,
       empty: words.none,
-      items: assessment.conditions.map((condition) => ({
-        number: String(condition.number),
+      items: conditionGroups(assessment).map((group, index) => ({
+        number: String(index + 1),
         words: [
-          { text: condition.text, strong: true },
-          { text: condition.blocksStart ? ` ${words.blocks}` : '' },
+          { text: group.head, strong: true },
+          ...(group.blocksStart ? [{ text: ` ${words.blocks}` }] : []),
+          ...group.details.map((detail) => ({ text: `\n${detail}` })),
         ],
         detail: [
-          ...(condition.checklistLine === ''
+          ...group.checklist.map((line) => filledText(words.onTheDay, { line })),
+          ...(group.acts.length === 0
             ? []
-            : [filledText(words.onTheDay, { line: condition.checklistLine })]),
-          [
-            ...(condition.act === null
-              ? []
-              : [filledText(words.act, { act: actTitle(assessment, condition.act) })]),
-            ...(condition.zone === null
-              ? []
-              : [filledText(words.zone, { zone: zoneTitle(assessment, condition.zone) })]),
-            filledText(words.row, { row: String(condition.row) }),
-          ].join(' '),
-        ].join('\n'),
+            : [filledText(words.act, { act: group.acts.join('; ') })]),
+          filledText(group.numbers.length > 1 ? words.rowMany : words.row, {
+            row: String(group.row),
+            numbers: numberRanges(group.numbers),
+          }),
+        ]
+          .join(' ')
+          .replaceAll('..', '.'),
       })),
     },
   ];

@@ -1,8 +1,9 @@
-import type { Assessment, CaseName, ZoneResult } from '../../assessment/assessment.js';
+import type { Assessment, CaseName, SectionView, ZoneResult } from '../../assessment/assessment.js';
 import { chartSvg } from '../../web/charts/chart-svg.js';
 import { curveOption } from '../../web/charts/curve-option.js';
 import {
   clockText,
+  numberedCues,
   zoneCurve,
   zoneCurveText,
   type ZoneCurve,
@@ -14,10 +15,12 @@ import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import type { RiskTexts } from './risk-texts.js';
 
-const chartSize = { width: 600, height: 250 };
+const chartSize = { width: 600, height: 215 };
 
-/** Rows of a section that one page can hold at a legible size. */
-const mostRows = 4;
+/** The picture takes a third of a page at most; its key of names may need more. */
+const sectionRoom = { tallestRow: 160, narrowestSpace: 34 };
+const mostRows = 2;
+const tallestFigure = 0.5;
 
 interface Choice {
   readonly zone: ZoneResult;
@@ -58,11 +61,11 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
   const chosen = chosenCurve(assessment);
   if (chosen === null) return [{ kind: 'paragraph', look: 'body', words: words.none }];
   const { curve, zone, caseName } = chosen;
-  const events = curve.events.map((event, index) =>
+  const events = numberedCues(curve.events).map(({ number, title, events: times }) =>
     filledText(words.event, {
-      number: String(index + 1),
-      title: event.title,
-      at: clockText(event.atS),
+      number: String(number),
+      title,
+      at: times.map((event) => clockText(event.atS)).join(', '),
     }),
   );
   return [
@@ -71,8 +74,9 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
       svg: chartSvg(curveOption(curve), chartSize.width, chartSize.height),
       alt: zoneCurveText(curve),
       aspect: chartSize.width / chartSize.height,
+      tallest: tallestFigure,
       caption: filledText(words.caption, {
-        quantity: curve.quantityTitle,
+        quantity: curve.quantityTitle.charAt(0).toUpperCase() + curve.quantityTitle.slice(1),
         zone: zone.title,
         case: texts.cases[caseName],
         events: events.join(' '),
@@ -81,16 +85,53 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
   ];
 }
 
-/** The section, in several drawings when the venue has many spaces. */
+/** The section of the spaces with people, acts or gas, and the names of those left out. */
 export function sectionPart(assessment: Assessment, texts: RiskTexts): Block[] {
-  return dividedViews(assessment.section, mostRows).map((view) => {
-    const drawing = sectionSvg(view);
+  const words = texts.parts.section;
+  const { view, leftOut } = spacesInUse(assessment);
+  const parts = dividedViews(view, mostRows, sectionRoom);
+  return parts.map((part, index) => {
+    const drawing = sectionSvg(part, { room: sectionRoom });
+    const caption = [
+      filledText(words.caption, { moment: sentence(part.moment) }),
+      ...(leftOut.length === 0 || index < parts.length - 1
+        ? []
+        : [filledText(words.leftOut, { spaces: leftOut.join(', ') })]),
+    ];
     return {
       kind: 'figure',
       svg: drawing.svg,
-      alt: sectionText(view),
+      alt: sectionText(part),
       aspect: drawing.width / drawing.height,
-      caption: filledText(texts.parts.section.caption, { moment: view.moment }),
+      tallest: tallestFigure,
+      caption: caption.join(' '),
     };
   });
+}
+
+/** With a capital and a full stop, whoever wrote it. */
+const sentence = (words: string): string =>
+  words === '' ? '' : `${words.charAt(0).toUpperCase()}${words.slice(1)}`.replace(/[^.]$/, '$&.');
+
+function spacesInUse(assessment: Assessment): { view: SectionView; leftOut: string[] } {
+  const { section, acts } = assessment;
+  const used = new Set([
+    ...section.zones.map((zone) => zone.space),
+    ...section.layers.map((layer) => layer.space),
+    ...acts.map((act) => act.space),
+  ]);
+  const kept = section.spaces.filter((space) => used.has(space.id));
+  if (kept.length === 0) return { view: section, leftOut: [] };
+  const ids = new Set(kept.map((space) => space.id));
+  // An opening into a space that is not drawn would look like one to the outside.
+  const drawn = (id: string): boolean =>
+    ids.has(id) || !section.spaces.some((space) => space.id === id);
+  return {
+    view: {
+      ...section,
+      spaces: kept,
+      openings: section.openings.filter((opening) => drawn(opening.from) && drawn(opening.to)),
+    },
+    leftOut: section.spaces.filter((space) => !ids.has(space.id)).map((space) => space.title),
+  };
 }

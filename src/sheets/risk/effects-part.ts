@@ -1,9 +1,22 @@
-import type { Assessment, SoundResult } from '../../assessment/assessment.js';
-import { quantityText } from '../../web/format/figure-text.js';
+import type { Assessment, Figure, SoundResult } from '../../assessment/assessment.js';
+import { quantityText, spanText } from '../../web/format/figure-text.js';
 import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { actTitle, figureOrDash, figureWords, levelWords, zoneTitle } from './figure-words.js';
+import {
+  actTitle,
+  figureOnLine,
+  figureOrDash,
+  figureWords,
+  levelWords,
+  zoneTitle,
+} from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
+
+/** Size of a shift: of the note in cents, of a voice's formants in percent. */
+const shiftWords = ({ cents, formantChange }: SoundResult['smallestAudible'][number]): string =>
+  cents === null
+    ? `${String(Math.round((formantChange ?? 0) * 100))}\u00a0%`
+    : quantityText(cents, 'cents').replace('+', '');
 
 /** What is heard, and the least gas that is still heard. */
 export function soundPart(assessment: Assessment, texts: RiskTexts): Block[] {
@@ -13,25 +26,59 @@ export function soundPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const note = (value: SoundResult['note']): string =>
     value === null
       ? ''
-      : `\n${filledText(words.note, { name: value.name, cents: quantityText(value.centsOff, 'cents') })}`;
-  const lines = sound.flatMap((entry) => [
-    ...entry.smallestAudible.map((least) =>
-      filledText(words.smallest, {
-        act: entry.title,
-        words: least.words,
-        fraction: quantityText(least.gasFraction.value, least.gasFraction.unit),
-        amount:
-          least.amount === null
-            ? ''
-            : filledText(words.smallestAmount, {
-                amount: quantityText(least.amount.value, least.amount.unit),
-              }),
-      }),
+      : filledText(words.note, { name: value.name, cents: quantityText(value.centsOff, 'cents') });
+  const audible = (entry: SoundResult): string =>
+    entry.smallestAudible
+      .map((least) =>
+        filledText(words.smallest, {
+          cents: shiftWords(least),
+          fraction: quantityText(least.gasFraction.value, least.gasFraction.unit),
+          amount:
+            least.amount === null
+              ? ''
+              : filledText(words.smallestAmount, {
+                  amount: [least.amount, least.amountByFlushing]
+                    .flatMap((figure) =>
+                      figure === null ? [] : [quantityText(figure.value, figure.unit, 'up')],
+                    )
+                    .join(` ${words.orFlushed} `),
+                }),
+        }),
+      )
+      .join('\n');
+  // Remarks are often those of several entries: each is said once, below the table.
+  const scale = new Map(
+    sound.flatMap((entry) =>
+      entry.smallestAudible.map((least) => [
+        shiftWords(least),
+        filledText(words.scale, {
+          cents: shiftWords(least),
+          words: least.words,
+        }),
+      ]),
     ),
-    ...(entry.saferWay === ''
-      ? []
-      : [filledText(words.safer, { act: entry.title, words: entry.saferWay })]),
+  );
+  const remarks = new Set([
+    ...sound.flatMap((entry) => [
+      entry.words,
+      ...(entry.voice === null
+        ? []
+        : [
+            filledText(words.formants, {
+              factor: figureOnLine(entry.voice.factor),
+              air: entry.voice.formantsInAir.map((figure) => figureOnLine(figure)).join(', '),
+              gas: entry.voice.formants.map((figure) => figureOnLine(figure)).join(', '),
+            }),
+          ]),
+      ...entry.jet.map((answer) => answer.words),
+      ...entry.remarks,
+    ]),
+    ...(scale.size === 0 ? [] : [[...scale.values()].join(' ')]),
+    ...sound.map((entry) =>
+      entry.saferWay === '' ? '' : filledText(words.safer, { words: entry.saferWay }),
+    ),
   ]);
+  remarks.delete('');
   return [
     {
       kind: 'table',
@@ -39,51 +86,61 @@ export function soundPart(assessment: Assessment, texts: RiskTexts): Block[] {
       empty: words.none,
       columns: [
         { title: words.act, share: 2.2, align: 'left' },
-        { title: words.instrument, share: 1.6, align: 'left' },
-        { title: words.air, share: 1.5, align: 'right' },
-        { title: words.gas, share: 1.5, align: 'right' },
-        { title: words.shift, share: 1.2, align: 'right' },
-        { title: words.words, share: 3, align: 'left' },
+        { title: words.instrument, share: 0.9, align: 'left' },
+        { title: words.air, share: 1.1, align: 'right' },
+        { title: words.gas, share: 2.3, align: 'right' },
+        { title: words.shift, share: 1.3, align: 'right' },
+        { title: words.least, share: 2.6, align: 'left' },
       ],
       rows: sound.map((entry) => ({
         cells: [
           entry.title,
           entry.instrument,
           `${figureOrDash(entry.frequencyInAir)}${note(entry.noteInAir)}`,
-          `${figureOrDash(entry.frequency)}${note(entry.note)}`,
-          figureOrDash(entry.cents),
-          entry.words,
+          entry.frequency === null
+            ? '–'
+            : `${quantityText(entry.frequency.value, entry.frequency.unit)}${note(entry.note)}${spanWords(entry.frequency)}`,
+          entry.cents === null ? '–' : figureOnLine(entry.cents),
+          audible(entry),
         ],
       })),
     },
-    ...(lines.length === 0 ? [] : [{ kind: 'list', items: lines, empty: words.none } as const]),
+    { kind: 'list', look: 'note', items: [...remarks], empty: words.none },
   ];
 }
+
+const spanWords = (figure: Figure): string => {
+  const span = spanText(figure);
+  return span === undefined ? '' : ` (${span})`;
+};
 
 /** Largest amounts that pass, how long to wait, and the greenhouse effect where it counts. */
 export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.amounts;
   const { climate } = assessment;
+  const titles = new Map(
+    assessment.zones.flatMap((zone) =>
+      zone.quantities.map((entry) => [entry.quantity, entry.quantityTitle]),
+    ),
+  );
   return [
     {
       kind: 'table',
       caption: words.largestCaption,
       empty: words.noLargest,
       columns: [
-        { title: words.act, share: 2.4, align: 'left' },
-        { title: words.gas, share: 0.7, align: 'left' },
-        { title: words.zone, share: 2, align: 'left' },
-        { title: words.limitedBy, share: 2.2, align: 'left' },
-        { title: words.mass, share: 1.1, align: 'right' },
-        { title: words.volume, share: 1.1, align: 'right' },
-        { title: words.planned, share: 1.1, align: 'right' },
+        { title: words.act, share: 3, align: 'left' },
+        { title: words.gas, share: 0.8, align: 'left' },
+        { title: words.limitedBy, share: 5.2, align: 'left' },
+        { title: words.mass, share: 0.9, align: 'right' },
+        { title: words.volume, share: 0.9, align: 'right' },
+        { title: words.planned, share: 0.9, align: 'right' },
       ],
       rows: assessment.largestAmounts.map((entry) => ({
         cells: [
           actTitle(assessment, entry.act),
           entry.gas,
-          zoneTitle(assessment, entry.zone),
-          entry.limitedBy,
+          `${zoneTitle(assessment, entry.zone)}: ${entry.limitedBy}`,
           figureWords(entry.mass, 'down'),
           figureWords(entry.volume, 'down'),
           figureWords(entry.planned),
@@ -104,7 +161,7 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       rows: assessment.holdTimes.map((hold) => ({
         cells: [
           hold.spaceTitle,
-          hold.quantity,
+          titles.get(hold.quantity) ?? hold.quantity,
           levelWords(hold.toLevel),
           hold.time === null ? words.noTime : figureWords(hold.time),
           hold.words,
@@ -116,7 +173,7 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       : [
           {
             kind: 'paragraph',
-            look: 'body',
+            look: 'note',
             words: filledText(words.climate, {
               instrument: climate.instrument,
               planned: quantityText(climate.planned.value, climate.planned.unit, 'up'),

@@ -8,6 +8,10 @@ export function figureWords(figure: Figure, rounding?: Rounding): string {
   return span === undefined ? value : `${value}\n(${span.replace(' to ', '\nto\u00a0')})`;
 }
 
+/** The figure with its span after it, for a cell that has the width or the lines. */
+export const figureOnLine = (figure: Figure, rounding?: Rounding): string =>
+  figureWords(figure, rounding).replaceAll('\n', ' ');
+
 /** The figure, or a dash where there is none to show. */
 export const figureOrDash = (figure: Figure | null | undefined, rounding?: Rounding): string =>
   figure === null || figure === undefined ? '–' : figureWords(figure, rounding);

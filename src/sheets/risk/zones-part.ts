@@ -1,145 +1,309 @@
 import type {
+  Answer,
   Assessment,
   CaseName,
+  Figure,
   ZoneQuantity,
   ZoneResult,
 } from '../../assessment/assessment.js';
 import { clockText } from '../../web/charts/zone-curve.js';
+import { quantityText } from '../../web/format/figure-text.js';
 import { lengthText } from '../../web/section/level-text.js';
-import type { Block, Column, Table, TableRow } from '../document-tree.js';
+import type { Block, Table, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { figureOrDash, levelWords } from './figure-words.js';
+import { levelWords } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
+import { floorChecks, isLowBad, zoneGroups, type ZoneGroup } from './zone-groups.js';
 
-const cases: readonly CaseName[] = ['planned', 'worstCredible', 'fansOff'];
-
-/** Every breathing zone in every case, the levels, and when a level is passed. */
+/** What people breathe: declared heights, the floor, the levels, and when one is passed. */
 export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.zones;
   const { zones } = assessment;
-  const used = cases.filter((caseName) =>
-    zones.some((zone) => zone.quantities.some((entry) => entry.caseName === caseName)),
-  );
+  const groups = zoneGroups(zones);
+  const floors = floorChecks(zones);
   const notComputed = zones.flatMap((zone) =>
     zone.notComputed === null
       ? []
       : [filledText(words.notComputed, { zone: zone.title, words: zone.notComputed })],
   );
+  const remarks = [...notComputed, ...leftOut([...groups, ...floors], texts)];
   return [
     { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
-    ...(used.length === 0
-      ? [{ kind: 'paragraph', look: 'body', words: words.none } as const]
-      : used.map((caseName) => caseTable(zones, caseName, texts))),
-    ...(notComputed.length === 0
+    answerTable(groups, words.caption, words.zone, texts, (group) => [
+      {
+        text: `${group.zones.map((zone) => zone.title).join('; ')}\n`,
+        strong: true,
+      },
+      {
+        text: filledText(words.where, {
+          space: group.first.spaceTitle,
+          height: lengthText(group.first.heightM),
+        }),
+      },
+    ]),
+    ...(floors.length === 0
       ? []
-      : [{ kind: 'list', items: notComputed, empty: words.none } as const]),
+      : [
+          answerTable(floors, words.floorCaption, words.floorSpace, texts, (group) => [
+            { text: group.first.spaceTitle, strong: true },
+          ]),
+        ]),
+    ...(remarks.length === 0
+      ? []
+      : [{ kind: 'list', look: 'note', items: remarks, empty: words.none } as const]),
     levelTable(zones, texts),
-    crossingTable(zones, texts),
+    ...crossingBlocks(assessment, groups, texts),
   ];
 }
 
-/** The zones of one case; columns for the layered answer only when it exists. */
-function caseTable(zones: readonly ZoneResult[], caseName: CaseName, texts: RiskTexts): Table {
-  const words = texts.parts.zones;
-  const entries = zones.flatMap((zone) =>
-    zone.quantities.filter((entry) => entry.caseName === caseName),
-  );
-  const answers = (['mixed', 'layered', 'layeredP50', 'bound'] as const).filter((answer) =>
-    entries.some((entry) => entry.answers[answer] !== undefined),
-  );
-  const withPressure = entries.some((entry) => entry.partialPressure !== undefined);
-  const columns: Column[] = [
-    { title: words.zone, share: 2.9, align: 'left' },
-    { title: words.quantity, share: 1.5, align: 'left' },
-    ...answers.map((answer) => ({ title: words[answer], share: 1.25, align: 'right' as const })),
-    ...(withPressure ? [{ title: words.pressure, share: 1.15, align: 'right' as const }] : []),
-    { title: words.standing, share: 1.9, align: 'left' },
-  ];
-  const cellsOf = (entry: ZoneQuantity): string[] => [
-    entry.quantityTitle,
-    ...answers.map((answer) => figureOrDash(entry.answers[answer])),
-    ...(withPressure ? [figureOrDash(entry.partialPressure, 'down')] : []),
-    texts.standings[entry.standing],
-  ];
-  const rows = zones.flatMap((zone) => {
-    const where = filledText(words.where, {
-      space: zone.spaceTitle,
-      height: lengthText(zone.heightM),
-    });
-    return zone.quantities
-      .filter((entry) => entry.caseName === caseName)
-      .map((entry, index): TableRow => {
-        const title = [{ text: `${zone.title}\n`, strong: true as const }, { text: where }];
-        return index === 0
-          ? { cells: [title, ...cellsOf(entry)] }
-          : { cells: ['', ...cellsOf(entry)], continues: true };
-      });
+const shownCases: readonly CaseName[] = ['planned', 'worstCredible'];
+
+/** Quantities of a group in their order, each with its entry in every case. */
+function byQuantity(group: ZoneGroup): Map<string, Partial<Record<CaseName, ZoneQuantity>>> {
+  const found = new Map<string, Partial<Record<CaseName, ZoneQuantity>>>();
+  for (const entry of group.quantities) {
+    found.set(entry.quantity, { ...found.get(entry.quantity), [entry.caseName]: entry });
+  }
+  return found;
+}
+
+/** Anything but oxygen is left out where every answer of every case meets its aim. */
+function isLeftOut(quantity: string, entries: Partial<Record<CaseName, ZoneQuantity>>): boolean {
+  if (isLowBad(quantity)) return false;
+  return Object.values(entries).every(({ answers, levels, standing }) => {
+    const level = levels.aim ?? levels.limit;
+    return (
+      level !== null &&
+      standing === 'meets aim' &&
+      Object.values(answers).every((figure) => figure.value <= level.value)
+    );
   });
-  const caption = filledText(words.caption, { case: texts.cases[caseName] });
-  return { kind: 'table', caption, columns, rows, empty: words.none };
 }
 
-/** Each different set of levels once, with all whom it is for. */
-function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
+/** One line for each quantity left out somewhere, with the highest number it reached there. */
+function leftOut(groups: readonly ZoneGroup[], texts: RiskTexts): string[] {
   const words = texts.parts.zones;
-  const sets = new Map<string, { title: string; kinds: Set<string>; levels: string[] }>();
-  for (const zone of zones) {
-    for (const { quantityTitle: title, levels: of } of zone.quantities) {
-      if (of.aim === null && of.limit === null && of.never === null) continue;
-      const levels = [of.aim, of.limit, of.never].map((figure) =>
-        figure === null ? '–' : levelWords(figure),
-      );
-      const key = [title, ...levels].join('\n');
-      const set = sets.get(key) ?? { title, kinds: new Set(), levels };
-      set.kinds.add(words.kinds[zone.kind]);
-      sets.set(key, set);
+  const lines = new Map<string, { entry: ZoneQuantity; figure: Figure; group: ZoneGroup }>();
+  let rows = 0;
+  for (const group of groups) {
+    for (const [quantity, entries] of byQuantity(group)) {
+      rows += 1;
+      if (!isLeftOut(quantity, entries)) continue;
+      for (const entry of Object.values(entries)) {
+        for (const figure of Object.values(entry.answers)) {
+          const known = lines.get(quantity);
+          if (known === undefined || figure.value > known.figure.value) {
+            lines.set(quantity, { entry, figure, group });
+          }
+        }
+      }
     }
   }
-  const rows = [...sets.values()].map(({ title, kinds, levels }) => ({
-    cells: [title, [...kinds].join(', '), ...levels],
-  }));
+  if (rows === 0) return [];
+  return [...lines.values()].map(({ entry, figure, group }) =>
+    filledText(words.leftOut, {
+      quantity: entry.quantityTitle,
+      highest: numberWords(figure, entry.quantity),
+      zone: group.first.title,
+      aim: levelWords(entry.levels.aim ?? entry.levels.limit ?? figure),
+    }),
+  );
+}
+
+/** A number rounded towards the side that harms: only the lack of oxygen is rounded down. */
+const numberWords = (figure: Figure, quantity: string): string =>
+  quantityText(figure.value, figure.unit, isLowBad(quantity) ? 'down' : 'up');
+
+function answerTable(
+  groups: readonly ZoneGroup[],
+  caption: string,
+  head: string,
+  texts: RiskTexts,
+  title: (group: ZoneGroup) => TableRow['cells'][number],
+): Table {
+  const words = texts.parts.zones;
+  const answers = (['mixed', 'layered', 'bound'] as const).filter(
+    (answer) =>
+      answer !== 'layered' ||
+      groups.some((group) => group.quantities.some((entry) => entry.answers.layered !== undefined)),
+  );
+  const rows = groups.flatMap((group) =>
+    [...byQuantity(group)]
+      .filter(([quantity, entries]) => !isLeftOut(quantity, entries))
+      .map(([quantity, entries], index): TableRow => {
+        const cells = [
+          index === 0 ? title(group) : '',
+          Object.values(entries)[0]?.quantityTitle ?? quantity,
+          ...shownCases.flatMap((caseName) =>
+            answers.map((answer) => answerWords(entries[caseName], answer, texts)),
+          ),
+          answerWords(entries.fansOff, 'mixed', texts),
+          standingWords(entries, texts),
+        ];
+        return index === 0 ? { cells } : { cells, continues: true };
+      }),
+  );
+  const number = (name: string) => ({ title: name, share: 1, align: 'right' as const });
   return {
     kind: 'table',
-    caption: words.levelsCaption,
+    caption,
     columns: [
-      { title: words.quantity, share: 2, align: 'left' },
-      { title: words.kind, share: 2, align: 'left' },
-      { title: texts.levels.aim, share: 1, align: 'right' },
-      { title: texts.levels.limit, share: 1, align: 'right' },
-      { title: texts.levels.never, share: 1, align: 'right' },
+      { title: head, share: 3, align: 'left' },
+      { title: words.quantity, share: 1.2, align: 'left' },
+      ...answers.map((answer) => number(words.planned[answer])),
+      ...answers.map((answer) => number(words.worst[answer])),
+      number(words.fansOff),
+      { title: words.standing, share: 2, align: 'left' },
     ],
     rows,
     empty: words.none,
   };
 }
 
-function crossingTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
+/** An answer; below the mixed one its oxygen pressure, below the layered one a differing median. */
+function answerWords(entry: ZoneQuantity | undefined, answer: Answer, texts: RiskTexts): string {
+  const figure = entry?.answers[answer];
+  if (entry === undefined || figure === undefined) return '–';
+  const value = numberWords(figure, entry.quantity);
+  if (answer === 'mixed' && entry.partialPressure !== undefined) {
+    const { value: pressure, unit } = entry.partialPressure;
+    return `${value}\n${quantityText(pressure, unit, 'down')}`;
+  }
+  const middle = entry.answers.layeredP50;
+  if (answer !== 'layered' || middle === undefined) return value;
+  const median = numberWords(middle, entry.quantity);
+  return median === value
+    ? value
+    : `${value}\n${filledText(texts.parts.zones.median, { value: median })}`;
+}
+
+/** How planned and worst stand; once when they stand alike. */
+function standingWords(entries: Partial<Record<CaseName, ZoneQuantity>>, texts: RiskTexts): string {
+  const [planned, worst] = shownCases.map((name) => entries[name]?.standing);
   const words = texts.parts.zones;
+  if (planned === worst && planned !== undefined) {
+    return filledText(words.bothStand, { standing: texts.standings[planned] });
+  }
+  return [
+    planned === undefined
+      ? []
+      : filledText(words.plannedStands, { standing: texts.standings[planned] }),
+    worst === undefined ? [] : filledText(words.worstStands, { standing: texts.standings[worst] }),
+  ]
+    .flat()
+    .join('\n');
+}
+
+/** Each different set of levels once, with all whom it is for and where it comes from. */
+function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
+  const words = texts.parts.zones;
+  interface LevelSet {
+    readonly title: string;
+    readonly kinds: Set<string>;
+    readonly levels: readonly string[];
+    readonly sources: string;
+  }
+  const sets = new Map<string, LevelSet>();
+  for (const zone of zones) {
+    for (const { quantityTitle: title, levels: of } of zone.quantities) {
+      const all = [of.aim, of.limit, of.never];
+      const known = all.flatMap((figure) => figure ?? []);
+      if (known.length === 0) continue;
+      const levels = all.map((figure) => (figure === null ? '–' : levelWords(figure)));
+      const sources = [...new Set(known.map((figure) => figure.source))].join('; ');
+      const key = [title, ...levels].join('\n');
+      const set = sets.get(key) ?? { title, kinds: new Set(), levels, sources };
+      if (zone.kind !== 'floorLevelCheck') set.kinds.add(words.kinds[zone.kind]);
+      sets.set(key, set);
+    }
+  }
   return {
     kind: 'table',
-    caption: words.crossingsCaption,
+    caption: words.levelsCaption,
     columns: [
-      { title: texts.parts.amounts.zone, share: 2.6, align: 'left' },
-      { title: texts.parts.acts.case, share: 1.5, align: 'left' },
       { title: words.quantity, share: 1.5, align: 'left' },
-      { title: words.answer, share: 1.6, align: 'left' },
-      { title: words.level, share: 0.8, align: 'left' },
-      { title: words.at, share: 0.7, align: 'right' },
+      { title: words.kind, share: 1.1, align: 'left' },
+      { title: texts.levels.aim, share: 0.8, align: 'right' },
+      { title: texts.levels.limit, share: 0.8, align: 'right' },
+      { title: texts.levels.never, share: 0.8, align: 'right' },
+      { title: words.levelSource, share: 5, align: 'left' },
     ],
-    rows: zones.flatMap((zone) =>
-      zone.quantities.flatMap((entry) =>
-        entry.crossings.map((crossing) => ({
-          cells: [
-            zone.title,
-            texts.cases[entry.caseName],
-            entry.quantityTitle,
-            texts.answers[crossing.answer],
-            texts.levels[crossing.level],
-            clockText(crossing.at.value),
-          ],
-        })),
-      ),
-    ),
-    empty: words.noCrossings,
+    rows: [...sets.values()].map(({ title, kinds, levels, sources }) => ({
+      cells: [title, [...kinds].join(', '), ...levels, sources],
+    })),
+    empty: words.none,
   };
+}
+
+interface Passing {
+  readonly at: Figure;
+  readonly quantityTitle: string;
+  readonly answer: Answer;
+}
+
+/** The earliest passing of a level in the worst credible case, whatever quantity and answer. */
+function earliest(group: ZoneGroup, level: 'limit' | 'never'): Passing | null {
+  const passings = group.quantities
+    .filter((entry) => entry.caseName === 'worstCredible')
+    .flatMap(({ crossings, quantityTitle }) =>
+      crossings
+        .filter((crossing) => crossing.level === level)
+        .map(({ at, answer }): Passing => ({ at, quantityTitle, answer })),
+    );
+  const [first = null] = passings.toSorted((one, other) => one.at.value - other.at.value);
+  return first;
+}
+
+/** When the worst credible case passes Limit and Never, beside the practised escape time. */
+function crossingBlocks(
+  assessment: Assessment,
+  groups: readonly ZoneGroup[],
+  texts: RiskTexts,
+): Block[] {
+  const words = texts.parts.zones;
+  const escape = assessment.assumptions.find((entry) => entry.path === '/event/escapeTimeS');
+  const cells = (passing: Passing | null): string[] =>
+    passing === null
+      ? [words.notPassed, '–']
+      : [
+          clockText(passing.at.value, 'seconds'),
+          `${passing.quantityTitle}, ${texts.answers[passing.answer]}`,
+        ];
+  const rows = groups.flatMap((group) => {
+    const limit = earliest(group, 'limit');
+    const never = earliest(group, 'never');
+    if (limit === null && never === null) return [];
+    const title = group.zones.map((zone) => zone.title).join('; ');
+    return [{ cells: [title, ...cells(limit), ...cells(never)] }];
+  });
+  return [
+    {
+      kind: 'table',
+      caption: words.crossingsCaption,
+      columns: [
+        { title: words.zone, share: 2.6, align: 'left' },
+        { title: words.limitAt, share: 0.8, align: 'right' },
+        { title: words.by, share: 2.6, align: 'left' },
+        { title: words.neverAt, share: 0.8, align: 'right' },
+        { title: words.by, share: 2.6, align: 'left' },
+      ],
+      rows,
+      empty: words.noCrossings,
+    },
+    ...(rows.length === 0
+      ? []
+      : [
+          {
+            kind: 'paragraph',
+            look: 'note',
+            words:
+              escape?.figure == null
+                ? words.escapeByHand
+                : filledText(words.escape, {
+                    time: quantityText(escape.figure.value, escape.figure.unit),
+                    origin: texts.origins[escape.origin],
+                  }),
+          } as const,
+        ]),
+  ];
 }

@@ -3,7 +3,7 @@ import type { FigureUnit, ZoneSeries } from '../../assessment/assessment.js';
 import { quantityText } from '../format/figure-text.js';
 import { accent, hairline, ink, softInk } from '../section/ink.js';
 import { curveWords, type CurveWords } from './curve-words.js';
-import { clockText, type ZoneCurve } from './zone-curve.js';
+import { clockText, numberedCues, type ZoneCurve } from './zone-curve.js';
 
 /** One option object for the browser's chart and for the drawing of a sheet. */
 
@@ -36,6 +36,67 @@ function shownUnit(unit: FigureUnit, greatest: number): Shown {
   return { factor: 1, name: '' };
 }
 
+/** Share of the height that the name of a level takes. */
+const levelNameHeight = 0.09;
+
+/** Levels with their names; names that would touch stand together at the first of them. */
+function namedLevels(
+  levels: ZoneCurve['levels'],
+  height: number,
+  words: CurveWords,
+): (ZoneCurve['levels'][number] & { text: string })[] {
+  const named = levels.map((level) => ({
+    ...level,
+    text: `${words.levels[level.name]} ${quantityText(level.figure.value, level.figure.unit, 'nearest')}`,
+  }));
+  named.forEach((level, index) => {
+    const nearer = named
+      .slice(0, index)
+      .find(
+        (other) =>
+          other.text !== '' &&
+          Math.abs(other.figure.value - level.figure.value) < levelNameHeight * height,
+      );
+    if (nearer === undefined) return;
+    nearer.text += `, ${level.text}`;
+    level.text = '';
+  });
+  return named;
+}
+
+/** Share of the width that the name of a level takes. */
+const levelNameShare = 0.17;
+/** Share of the width that a letter of a cue's number takes. */
+const cueLetterShare = 0.015;
+
+interface CueMark {
+  readonly atS: number;
+  text: string;
+}
+
+/** Cues with their numbers; numbers that would touch stand together at the first of them. */
+function cueMarks(curve: ZoneCurve, from: number, to: number): CueMark[] {
+  const marks = numberedCues(curve.events)
+    .flatMap((cue) =>
+      cue.events.map((event): CueMark => ({
+        atS: Math.max(from, event.atS),
+        text: String(cue.number),
+      })),
+    )
+    .toSorted((one, other) => one.atS - other.atS);
+  let open: CueMark | undefined;
+  for (const mark of marks) {
+    const width = ((open?.text.length ?? 0) + 1) * cueLetterShare;
+    if (open !== undefined && (mark.atS - open.atS) / (to - from) < width) {
+      if (!open.text.split('\u00a0').includes(mark.text)) open.text += `\u00a0${mark.text}`;
+      mark.text = '';
+    } else {
+      open = mark;
+    }
+  }
+  return marks;
+}
+
 /** The chart of a curve: lines by answer, levels with their names, cues with their numbers. */
 export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): EChartsCoreOption {
   const values = curve.series.flatMap((series) => series.values);
@@ -57,6 +118,14 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
     const unit = 10 ** Math.floor(Math.log10(Math.max(most - least, 1e-9)));
     return (way === 'down' ? Math.floor(value / unit) : Math.ceil(value / unit)) * unit;
   };
+  const cues = cueMarks(curve, from, to);
+  // The names of the levels stand at the left, before the first cue.
+  const firstCue = cues[0]?.atS ?? to;
+  let start = Math.floor(from / step) * step;
+  while ((firstCue - start) / (to - start) < levelNameShare && from - start < 3 * step) {
+    start -= step;
+  }
+  const named = namedLevels(levels, (most - (oxygen ? least : 0)) / shown.factor, words);
   const label = { fontFamily, fontSize: 11, color: ink };
   const first = curve.series.find((series) => series.answer === 'mixed') ?? curve.series[0];
   return {
@@ -66,13 +135,14 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
     grid: { left: 52, right: 108, top: 34, bottom: 34 },
     xAxis: {
       type: 'value',
-      min: Math.floor(from / step) * step,
-      max: Math.ceil(to / step) * step,
+      min: start,
+      // The lines end with the plot, so that their names stand clear of it.
+      max: to,
       interval: step,
       axisLine: { lineStyle: { color: ink, width: 1 } },
       axisTick: { show: true, lineStyle: { color: ink } },
       splitLine: { show: false },
-      axisLabel: { ...label, formatter: clockText },
+      axisLabel: { ...label, formatter: (value: number) => clockText(value), showMaxLabel: false },
     },
     yAxis: {
       type: 'value',
@@ -115,7 +185,7 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
                 symbol: 'none',
                 animation: false,
                 data: [
-                  ...levels.map((level) => ({
+                  ...named.map((level) => ({
                     yAxis: level.figure.value * shown.factor,
                     lineStyle: {
                       color: ink,
@@ -125,13 +195,20 @@ export function curveOption(curve: ZoneCurve, words: CurveWords = curveWords): E
                     label: {
                       ...label,
                       position: 'insideStartTop',
-                      formatter: `${words.levels[level.name]} ${quantityText(level.figure.value, level.figure.unit, 'nearest')}`,
+                      show: level.text !== '',
+                      formatter: level.text,
                     },
                   })),
-                  ...curve.events.map((event, index) => ({
-                    xAxis: Math.max(from, event.atS),
+                  ...cues.map((cue) => ({
+                    xAxis: cue.atS,
                     lineStyle: { color: softInk, width: 0.6, type: 'solid' },
-                    label: { ...label, position: 'end', distance: 2, formatter: String(index + 1) },
+                    label: {
+                      ...label,
+                      show: cue.text !== '',
+                      position: 'end',
+                      distance: 2,
+                      formatter: cue.text,
+                    },
                   })),
                 ],
               },

@@ -50,11 +50,23 @@ export function zoneCurve(
   };
 }
 
-/** Time of day as hh:mm, past midnight counted on from 00:00. */
-export function clockText(secondsOfDay: number): string {
-  const minutes = Math.floor(secondsOfDay / 60);
+/** Cues of the curve by title, numbered in the order of their first time. */
+export function numberedCues(
+  events: readonly DayEvent[],
+): { readonly number: number; readonly title: string; readonly events: readonly DayEvent[] }[] {
+  const cues = new Map<string, DayEvent[]>();
+  for (const event of events.toSorted((one, other) => one.atS - other.atS)) {
+    cues.set(event.title, [...(cues.get(event.title) ?? []), event]);
+  }
+  return [...cues].map(([title, of], index) => ({ number: index + 1, title, events: of }));
+}
+
+/** Time of day as hh:mm or hh:mm:ss, past midnight counted on from 00:00. */
+export function clockText(secondsOfDay: number, to: 'minutes' | 'seconds' = 'minutes'): string {
+  const seconds = Math.floor(secondsOfDay);
   const two = (value: number): string => String(value).padStart(2, '0');
-  return `${two(Math.floor(minutes / 60) % 24)}:${two(minutes % 60)}`;
+  const clock = `${two(Math.floor(seconds / 3600) % 24)}:${two(Math.floor(seconds / 60) % 60)}`;
+  return to === 'minutes' ? clock : `${clock}:${two(seconds % 60)}`;
 }
 
 /** What the curve shows, in sentences: the worst of each answer and when, against each level. */

@@ -39,9 +39,17 @@ const footRoom = 20;
 /** Under a row whose pits carry their titles below. */
 const deepFootRoom = 40;
 const rowGap = 14;
-const tallest = 270;
 const largestScale = 150;
-const narrowestSpace = 70;
+
+/** How much drawing a reader's page or paper has room for. */
+export interface SectionRoom {
+  /** Greatest height of a row of spaces. */
+  readonly tallestRow: number;
+  /** A space narrower than this asks for one more row. */
+  readonly narrowestSpace: number;
+}
+
+const pageRoom: SectionRoom = { tallestRow: 270, narrowestSpace: 70 };
 
 const lengthOf = (space: SectionSpace): number => Math.max(space.lengthM, 0.5);
 /** Level of the ceiling [m]: the mean clear height stands on the mean floor. */
@@ -85,7 +93,7 @@ function dividedRows(spaces: readonly SectionSpace[], count: number): SectionSpa
 }
 
 /** The placement of all spaces; an empty view has an empty drawing. */
-export function sectionPlacement(view: SectionView): Placement {
+export function sectionPlacement(view: SectionView, limits: SectionRoom = pageRoom): Placement {
   const below = spacesBelow(view);
   const standing = view.spaces.filter((space) => !below.has(space.id));
   const room = drawingWidth - side - rightSide;
@@ -98,7 +106,7 @@ export function sectionPlacement(view: SectionView): Placement {
       ...rows.map((row) => row.reduce((sum, space) => sum + lengthOf(space), 0)),
     );
     scale = Math.min(largestScale, room / longest);
-    if (shortest * scale >= narrowestSpace) break;
+    if (shortest * scale >= limits.narrowestSpace) break;
   }
   const under = (id: string): SectionSpace[] =>
     view.spaces.filter((space) => below.get(space.id) === id);
@@ -110,7 +118,7 @@ export function sectionPlacement(view: SectionView): Placement {
     };
   });
   const highest = Math.max(0.5, ...extents.map((extent) => extent.top - extent.bottom));
-  scale = Math.min(scale, tallest / highest);
+  scale = Math.min(scale, limits.tallestRow / highest);
 
   const placed: PlacedSpace[] = [];
   const placedRows: Row[] = [];
@@ -147,8 +155,12 @@ export function sectionPlacement(view: SectionView): Placement {
 }
 
 /** The view divided into views of at most this many rows, for paper of a fixed height. */
-export function dividedViews(view: SectionView, mostRows: number): SectionView[] {
-  const placement = sectionPlacement(view);
+export function dividedViews(
+  view: SectionView,
+  mostRows: number,
+  limits: SectionRoom = pageRoom,
+): SectionView[] {
+  const placement = sectionPlacement(view, limits);
   if (placement.rows.length <= mostRows) return [view];
   const parts = Math.ceil(placement.rows.length / mostRows);
   const rowsEach = Math.ceil(placement.rows.length / parts);

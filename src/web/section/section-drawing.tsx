@@ -6,7 +6,13 @@ import { hatchPath, polygonPart, polygonPath, two, type Point } from './hatch.js
 import { accent, ink, softInk } from './ink.js';
 import { drawnWidth, freeBox, type LabelBox } from './label-placement.js';
 import { levelText } from './level-text.js';
-import { roofLevel, sectionPlacement, type PlacedSpace, type Placement } from './placement.js';
+import {
+  roofLevel,
+  sectionPlacement,
+  type PlacedSpace,
+  type Placement,
+  type SectionRoom,
+} from './placement.js';
 import { sectionText } from './section-text.js';
 import { sectionWords, type SectionWords } from './section-words.js';
 
@@ -14,6 +20,7 @@ export interface SectionOptions {
   /** Colour behind labels: that of the page or paper. */
   readonly paper?: string;
   readonly words?: SectionWords;
+  readonly room?: SectionRoom;
 }
 
 const size = 11.5;
@@ -316,7 +323,7 @@ function drawnSection(
 ): { readonly svg: JSX.Element; readonly width: number; readonly height: number } {
   const words = options.words ?? sectionWords;
   const paper = options.paper ?? '#ffffff';
-  const placement = sectionPlacement(view);
+  const placement = sectionPlacement(view, options.room);
   const key: Key = [];
   const corners = new Map(
     placement.spaces.map((placed) => [placed.space.id, cornersOf(placed, placement)]),
