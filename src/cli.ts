@@ -1,18 +1,15 @@
 #!/usr/bin/env node
 import { mkdirSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { checkedPlan, assess, type AssessmentData } from './assessment/assess.js';
+import type { AssessmentData } from './assessment/assess.js';
 import { answer, doorError, parsedJson, statusOf } from './assessment/calculators/door.js';
 import { calculatorsOf } from './assessment/calculators/registry.js';
-import { soundCalculator, soundPreview } from './assessment/calculators/sound.js';
 import { engineVersion } from './assessment/engine-version.js';
-import { fitting } from './assessment/schema-check.js';
-import { loadCatalogue } from './catalogue/catalogue.js';
-import { parsedDataText } from './catalogue/data-file.js';
 import { loadGasLibrary } from './catalogue/gas-library.js';
 import { InvalidInput, NotFound } from './errors.js';
-import { wavBytes } from './science/acoustics/preview.js';
-import { renderRiskSheet } from './sheets/risk-sheet-pdf.js';
+
+// What only one command needs (catalogue, YAML, sheets, previews) is loaded by that command: a
+// calculator that answers in a millisecond should not wait for a printer.
 
 interface Request {
   readonly calculator: string;
@@ -78,6 +75,8 @@ function writeWhole(path: string, bytes: Uint8Array): void {
 }
 
 async function writeSheets(document: unknown, folder: string, data: AssessmentData): Promise<void> {
+  const { assess, checkedPlan } = await import('./assessment/assess.js');
+  const { renderRiskSheet } = await import('./sheets/risk-sheet-pdf.js');
   const assessment = assess(checkedPlan(document, data), data);
   const pdf = await renderRiskSheet(assessment, {
     printedOn: assessment.date ?? new Date().toISOString().slice(0, 10),
@@ -95,19 +94,35 @@ async function writeSheets(document: unknown, folder: string, data: AssessmentDa
   writeWhole(join(folder, 'risk-sheet.pdf'), pdf);
 }
 
-function writePreviews(document: unknown, file: string, data: AssessmentData): void {
+async function writePreviews(document: unknown, file: string, data: AssessmentData): Promise<void> {
+  const { soundCalculator, soundPreview } = await import('./assessment/calculators/sound.js');
+  const { fitting } = await import('./assessment/schema-check.js');
+  const { wavBytes } = await import('./science/acoustics/preview.js');
   const pair = soundPreview(fitting(soundCalculator.input, document, 'input of sound'), data);
   const stem = file.replace(/\.wav$/i, '');
   writeWhole(`${stem}-before.wav`, wavBytes(pair.before));
   writeWhole(`${stem}-after.wav`, wavBytes(pair.after));
 }
 
-async function answered(words: readonly string[]): Promise<{ body: unknown; status: number }> {
-  const data: AssessmentData = {
-    gases: loadGasLibrary(),
-    catalogue: loadCatalogue(),
+/** The catalogue is read and checked for the one calculator that draws on it. */
+async function dataFor(request: Request): Promise<AssessmentData> {
+  const gases = loadGasLibrary();
+  if (request.calculator === 'assess') {
+    const { loadCatalogue } = await import('./catalogue/catalogue.js');
+    return { gases, catalogue: loadCatalogue(), engineVersion };
+  }
+  return {
+    gases,
     engineVersion,
+    get catalogue(): AssessmentData['catalogue'] {
+      throw new Error(`The calculator ${request.calculator} draws on the catalogue unannounced.`);
+    },
   };
+}
+
+async function answered(words: readonly string[]): Promise<{ body: unknown; status: number }> {
+  const request = requestOf(words);
+  const data = await dataFor(request);
   const calculators = calculatorsOf(data);
   const known = [...calculators.keys()].join(', ');
   const named = (name: string) => {
@@ -115,7 +130,6 @@ async function answered(words: readonly string[]): Promise<{ body: unknown; stat
     if (calculator) return calculator;
     throw new NotFound(`There is no calculator ${name}.`, `Choose one of ${known}, or schema.`);
   };
-  const request = requestOf(words);
   if (request.calculator === 'schema') {
     if (request.file === null) throw new InvalidInput('schema names one calculator.', usage);
     const { input, output } = named(request.file);
@@ -125,7 +139,10 @@ async function answered(words: readonly string[]): Promise<{ body: unknown; stat
   const text = textOf(request.file);
   const document =
     request.calculator === 'assess'
-      ? parsedDataText(text, request.file ?? 'standard input').value
+      ? (await import('./catalogue/data-file.js')).parsedDataText(
+          text,
+          request.file ?? 'standard input',
+        ).value
       : parsedJson(text);
   const { body, status, faults } = answer(calculator, document, data);
   for (const fault of faults) console.error(fault);
@@ -133,7 +150,7 @@ async function answered(words: readonly string[]): Promise<{ body: unknown; stat
     await writeSheets(document, request.sheets, data);
   }
   if (status === 0 && request.preview !== null && request.calculator === 'sound') {
-    writePreviews(document, request.preview, data);
+    await writePreviews(document, request.preview, data);
   }
   return { body, status };
 }
