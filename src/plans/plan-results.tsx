@@ -8,13 +8,8 @@ import { SectionDrawing } from '../web/section/section-drawing.js';
 import { en } from '../web/texts/en.js';
 import { planTexts } from '../web/texts/en-plans.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
-import {
-  AmountsAndHolds,
-  ControlResults,
-  SoundResults,
-  WordsByPart,
-  Workings,
-} from './result-tables.js';
+import { AmountsAndHolds, ControlResults, WordsByPart, Workings } from './result-tables.js';
+import { SoundCards } from './sound-card.js';
 import { sentence } from '../web/views/sentence.js';
 import { ZoneResults } from './zone-results.js';
 
@@ -150,7 +145,7 @@ export function PlanResults(props: {
         </section>
       )}
       <ZoneResults planId={planId} assessment={assessment} />
-      <SoundResults assessment={assessment} />
+      <SoundCards planId={planId} sound={assessment.sound} />
       <WordsByPart assessment={assessment} />
       <AmountsAndHolds assessment={assessment} />
       <ControlResults assessment={assessment} />

@@ -1,5 +1,5 @@
 import type { ComponentChildren, VNode } from 'preact';
-import type { Assessment, Figure, SoundResult } from '../assessment/assessment.js';
+import type { Assessment, Figure } from '../assessment/assessment.js';
 import type { Rounding } from '../web/format/figure-text.js';
 import { OpenableFigure, Table } from '../web/layout/parts.js';
 import { en } from '../web/texts/en.js';
@@ -24,82 +24,6 @@ export function Folded(props: {
       </summary>
       {props.children}
     </details>
-  );
-}
-
-function SoundCard({ result }: { readonly result: SoundResult }): VNode {
-  const { noteInAir, note } = result;
-  const noteText = (given: typeof note) => {
-    if (given === null) return '';
-    const off = Math.round(given.centsOff);
-    if (off === 0) return given.name;
-    const side = off > 0 ? words.above : words.below;
-    return `${given.name}, ${String(Math.abs(off))}\u00a0cents ${side}`;
-  };
-  return (
-    <article class="sound-card">
-      <h3>{result.title}</h3>
-      <p>{result.words}</p>
-      <dl class="facts">
-        {result.frequencyInAir && (
-          <>
-            <dt>{words.inAir}</dt>
-            <dd>
-              {opened(result.frequencyInAir)}
-              {noteText(noteInAir)}
-            </dd>
-          </>
-        )}
-        {result.frequency && (
-          <>
-            <dt>{words.inGas}</dt>
-            <dd>
-              {opened(result.frequency)}
-              {noteText(note)}
-            </dd>
-          </>
-        )}
-        {result.cents && (
-          <>
-            <dt>{words.shift}</dt>
-            <dd>{opened(result.cents)}</dd>
-          </>
-        )}
-        {result.saferWay !== '' && (
-          <>
-            <dt>{words.saferWay}</dt>
-            <dd>{result.saferWay}</dd>
-          </>
-        )}
-      </dl>
-      {result.smallestAudible.length > 0 && (
-        <>
-          <h4>{words.smallest}</h4>
-          <ul>
-            {result.smallestAudible.map((one) => (
-              <li key={one.words}>
-                {one.words.replace(/\.$/, '')}: {opened(one.gasFraction)}{' '}
-                {one.amount && opened(one.amount)}
-              </li>
-            ))}
-          </ul>
-        </>
-      )}
-    </article>
-  );
-}
-
-/** What the audience hears, beside the amount that buys it. */
-export function SoundResults(props: { readonly assessment: Assessment }): VNode | null {
-  const { sound } = props.assessment;
-  if (sound.length === 0) return null;
-  return (
-    <section aria-labelledby="sound-title">
-      <h2 id="sound-title">{words.sound}</h2>
-      {sound.map((result, index) => (
-        <SoundCard key={`${result.act} ${String(index)}`} result={result} />
-      ))}
-    </section>
   );
 }
 

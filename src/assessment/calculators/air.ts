@@ -1,4 +1,5 @@
 import { Type } from 'typebox';
+import { NotComputable } from '../../errors.js';
 import { airGasTable } from '../../science/room-air/air-gases.js';
 import type { AirResult } from '../../science/room-air/air-result.js';
 import { airRun } from '../../science/room-air/air-run.js';
@@ -256,6 +257,8 @@ const height = {
 
 export const airResultSchema = Type.Object({
   timesS: numbers,
+  /** Answers left out of this result, and why. */
+  warnings: Type.Optional(Type.Array(Type.String())),
   spaces: Type.Record(
     Type.String(),
     Type.Object({
@@ -307,6 +310,19 @@ export const airCalculator: Calculator<typeof airInputSchema, typeof airResultSc
   name: 'air',
   input: airInputSchema,
   output: airResultSchema,
-  // The science declares its own plain types; the signature checks that both say the same.
-  run: (input, data) => airRun(input, airGasTable(data.gases)) as DeepMutable<AirResult>,
+  run(input, data) {
+    const gases = airGasTable(data.gases);
+    // The science declares its own plain types; the signature checks that both say the same.
+    const mutable = (result: AirResult) => result as DeepMutable<AirResult>;
+    try {
+      return mutable(airRun(input, gases));
+    } catch (thrown) {
+      if (!(thrown instanceof NotComputable)) throw thrown;
+      // The layered answer did not get through: the mixed answer and the bound stand, and it is said.
+      return {
+        ...mutable(airRun(input, gases, { layered: false })),
+        warnings: [`The layered answer is left out: ${thrown.message}`],
+      };
+    }
+  },
 };

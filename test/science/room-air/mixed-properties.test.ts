@@ -5,6 +5,9 @@ import type { AirResult } from '../../../src/science/room-air/air-result.js';
 import { airRun } from '../../../src/science/room-air/air-run.js';
 import { checkGases } from '../../support/air-fixture.js';
 
+/** Mixed and bound alone: the layers have properties of their own. */
+const mixedRun = (input: AirInput) => airRun(input, checkGases, { layered: false });
+
 const SEED = 20261201;
 const ids = ['a', 'b', 'c', 'd'] as const;
 const gasIds = ['He', 'Ar', 'CO2', 'SF6', 'N2'] as const;
@@ -113,7 +116,7 @@ function property(check: (input: AirInput) => void, runs: number): void {
 describe('well-mixed networks, seed 20261201', () => {
   it('keeps every gas to 1e-9 of what came in', () => {
     property((input) => {
-      for (const balance of Object.values(airRun(input, checkGases).balance)) {
+      for (const balance of Object.values(mixedRun(input).balance)) {
         expect(balance.relativeError).toBeLessThan(1e-9);
       }
     }, 150);
@@ -121,7 +124,7 @@ describe('well-mixed networks, seed 20261201', () => {
 
   it('holds as much released gas as was released less what left', () => {
     property((input) => {
-      const { balance } = airRun(input, checkGases);
+      const { balance } = mixedRun(input);
       const molar = (8.314462618 * 293.15) / 98_000;
       for (const gas of ['He', 'Ar', 'SF6', 'N2']) {
         const released = (input.releases ?? [])
@@ -139,7 +142,7 @@ describe('well-mixed networks, seed 20261201', () => {
 
   it('gives fractions between 0 and 1 and no more oxygen than outdoors', () => {
     property((input) => {
-      for (const series of everySeries(airRun(input, checkGases))) {
+      for (const series of everySeries(mixedRun(input))) {
         for (const value of series.oxygenFraction) {
           expect(value).toBeGreaterThanOrEqual(0);
           expect(value).toBeLessThanOrEqual(0.2095 * (1 + 1e-9));
@@ -156,7 +159,7 @@ describe('well-mixed networks, seed 20261201', () => {
 
   it('never lets the bound show less gas or more oxygen than the mixed answer', () => {
     property((input) => {
-      for (const zone of Object.values(airRun(input, checkGases).zones)) {
+      for (const zone of Object.values(mixedRun(input).zones)) {
         for (const height of [zone, zone.at02M]) {
           for (const [i, oxygen] of height.bound.oxygenFraction.entries()) {
             expect(oxygen).toBeLessThanOrEqual((height.mixed.oxygenFraction[i] ?? 0) + 1e-12);
@@ -190,8 +193,8 @@ describe('well-mixed networks, seed 20261201', () => {
           { space: 'a', drive: 'balanced', supplyM3PerS: 0.2, extractM3PerS: 0.2 },
         ],
       };
-      expect(leastOxygen(airRun(more, checkGases))).toBeGreaterThanOrEqual(
-        leastOxygen(airRun(one, checkGases)) - 1e-9,
+      expect(leastOxygen(mixedRun(more))).toBeGreaterThanOrEqual(
+        leastOxygen(mixedRun(one)) - 1e-9,
       );
     }, 60);
   });
@@ -206,16 +209,16 @@ describe('well-mixed networks, seed 20261201', () => {
           volumeM3: 1.3 * (release.volumeM3 ?? 0),
         })),
       };
-      expect(leastOxygen(airRun(more, checkGases))).toBeLessThanOrEqual(
-        leastOxygen(airRun(still, checkGases)) + 1e-9,
+      expect(leastOxygen(mixedRun(more))).toBeLessThanOrEqual(
+        leastOxygen(mixedRun(still)) + 1e-9,
       );
     }, 60);
   });
 
   it('answers the same at the same times whatever the output interval', () => {
     property((input) => {
-      const coarse = airRun(input, checkGases);
-      const fine = airRun({ ...input, outputIntervalS: 50 }, checkGases);
+      const coarse = mixedRun(input);
+      const fine = mixedRun({ ...input, outputIntervalS: 50 });
       for (const [id, space] of Object.entries(coarse.spaces)) {
         for (const [i, value] of space.mixed.oxygenFraction.entries()) {
           const other = fine.spaces[id]?.mixed.oxygenFraction[2 * i] ?? 0;
@@ -242,8 +245,8 @@ describe('well-mixed networks, seed 20261201', () => {
         { id: 'b', space: 'b', heightM: 1.1 },
       ],
     });
-    const left = airRun(pair('a'), checkGases);
-    const right = airRun(pair('b'), checkGases);
+    const left = mixedRun(pair('a'));
+    const right = mixedRun(pair('b'));
     for (const [i, value] of (left.spaces.a?.mixed.gasFraction.SF6 ?? []).entries()) {
       expect(right.spaces.b?.mixed.gasFraction.SF6?.[i]).toBeCloseTo(value, 12);
     }
