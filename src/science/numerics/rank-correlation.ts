@@ -1,20 +1,3 @@
-/**
- * Quantile of a list [unit of the list], straight between ranks.
- *
- * @param values numbers, at least one
- * @param p      probability [-], 0 to 1
- * @returns quantile
- * Source: hyndman-fan-1996, definition 7. Assumes: nothing. Accuracy: sampling.
- * @example quantile([1, 2, 3, 4], 0.5) // 2.5
- */
-export function quantile(values: readonly number[], p: number): number {
-  const sorted = [...values].sort((a, b) => a - b);
-  const at = p * (sorted.length - 1);
-  const low = Math.floor(at);
-  const first = sorted[low] ?? 0;
-  return first + (at - low) * ((sorted[low + 1] ?? first) - first);
-}
-
 /** Ranks from 1, equal values sharing the mean of theirs. */
 function ranks(values: readonly number[]): readonly number[] {
   const order = values.map((_, i) => i).sort((a, b) => (values[a] ?? 0) - (values[b] ?? 0));
@@ -39,9 +22,9 @@ function ranks(values: readonly number[]): readonly number[] {
  *
  *   correlation of the ranks; 0 when one of them does not vary
  *
- * @param x numbers
- * @param y as many numbers
- * @returns correlation, -1 to 1
+ * @param x numbers [any one unit], at least two
+ * @param y as many numbers [any one unit]
+ * @returns correlation [-], -1 to 1
  * Source: spearman-1904. Assumes: nothing. Accuracy: sampling.
  * @example rankCorrelation([1, 2, 3], [10, 30, 90]) // 1
  */

@@ -1,3 +1,4 @@
+import { sortedQuantile } from '../numerics/quantile.js';
 import { rankCorrelation } from '../numerics/rank-correlation.js';
 import type { AirGasTable } from './air-gases.js';
 import type { AirInput } from './air-input.js';
@@ -121,12 +122,6 @@ export function layeredBands(
 }
 
 function bandOf(store: Float32Array, times: number, width: number, count: number): Band {
-  const at = (sorted: Float32Array, p: number): number => {
-    const place = p * (count - 1);
-    const low = Math.floor(place);
-    const first = sorted[low] ?? 0;
-    return first + (place - low) * ((sorted[low + 1] ?? first) - first);
-  };
   const band = { p05: [], p50: [], p95: [] } as Record<keyof Band, Float64Array[]>;
   for (let i = 0; i < times; i++) {
     const rows = [0.05, 0.5, 0.95].map(() => new Float64Array(width));
@@ -135,7 +130,7 @@ function bandOf(store: Float32Array, times: number, width: number, count: number
       const sorted = store.slice(from, from + count).sort();
       for (const [k, p] of [0.05, 0.5, 0.95].entries()) {
         const row = rows[k];
-        if (row) row[q] = at(sorted, p);
+        if (row) row[q] = sortedQuantile(sorted, p);
       }
     }
     band.p05.push(rows[0] ?? new Float64Array(width));
