@@ -133,9 +133,9 @@ export function integratedState(
  * Cubic through both ends of a step with both slopes [unit of the state].
  *
  * @param step one accepted step
- * @param index entry of the state
+ * @param index entry of the state [-], from 0
  * @param t    time inside the step [s]
- * @returns the entry at t
+ * @returns the entry at t [unit of the state]
  * Source: hairer-norsett-wanner-1993, II.6 (Hermite interpolation). Assumes: t inside the step.
  * Accuracy: fourth order in the step.
  */

@@ -60,6 +60,7 @@ const GAP_AREA_PER_FLOW = 0.2;
 /** Fresh air of a closed group below which its gaps are taken to lie everywhere [m3/s]. */
 const LEAST_KNOWN_FLOW = 1e-9;
 
+/** Whether something with a schedule runs at a time: from its start on, no longer at its end. */
 export function isActive(one: Timed, t: number): boolean {
   return t >= (one.fromS ?? 0) && t < (one.toS ?? Infinity);
 }

@@ -50,12 +50,28 @@ export function airGasTable(library: GasLibrary): AirGasTable {
   return table;
 }
 
-/** Molar mass of dry air in a table [kg/mol]. */
+/**
+ * Molar mass of dry air in a table [kg/mol].
+ *
+ * @param gases gas table
+ * @returns molar mass [kg/mol]; the rounded value of the models where the table has no air
+ * Source: iso-2533. Assumes: dry air. Accuracy: 2e-4 for the rounded value.
+ * @example airMolarMass({}) // 0.02896
+ */
 export function airMolarMass(gases: AirGasTable): number {
   return gases.air?.molarMassKgPerMol ?? AIR_MOLAR_MASS_KG_PER_MOL;
 }
 
-/** Diffusivity of a gas in air [m2/s], a cautious default where the table has none. */
+/**
+ * Diffusivity of a gas in air near 20 degC [m2/s].
+ *
+ * @param gases gas table
+ * @param id    gas id
+ * @returns diffusivity [m2/s]; of the table, else listed here, else that of carbon dioxide
+ * Source: marrero-mason-1972 (which values were seen: DIFFUSIVITIES_IN_AIR). Assumes: dilute, about
+ * 101 kPa. Accuracy: about 20 % where from memory.
+ * @example diffusivityInAir({}, 'He') // 0.7e-4
+ */
 export function diffusivityInAir(gases: AirGasTable, id: string): number {
   return (
     gases[id]?.diffusivityM2PerS ?? DIFFUSIVITIES_IN_AIR[id]?.valueM2PerS ?? DIFFUSIVITY_UNLISTED

@@ -64,11 +64,13 @@ function innerExtreme(
   };
 }
 
+/** Smallest oxygen fraction of a track [-] with its time [s], the first of equals. */
 export function oxygenMinimum(track: AnswerTrack): OxygenExtreme {
   const { value, atS } = extremeOf(track, 0, -1);
   return { oxygenFraction: value, atS };
 }
 
+/** Largest fraction of every gas of a track [-] with its time [s], the first of equals. */
 export function gasMaxima(
   track: AnswerTrack,
   gases: readonly string[],

@@ -1,7 +1,18 @@
 import { normalQuantile } from '../numerics/normal-quantile.js';
 import type { Distribution } from './air-input.js';
 
-/** Value of a distribution at a probability [unit of the distribution]. */
+/**
+ * Value of a distribution at a probability [unit of the distribution].
+ *
+ *   inverse of the cumulative distribution
+ *
+ * @param one distribution
+ * @param p   probability [-], 0 to 1
+ * @returns value [unit of the distribution]
+ * Source: own-derivation (normal quantile: acklam-2003). Assumes: nothing. Accuracy: exact; 1e-9
+ * relative in the normal quantile.
+ * @example distributionValue({ kind: 'triangular', low: 0, mode: 1, high: 2 }, 0.125) // 0.5
+ */
 export function distributionValue(one: Distribution, p: number): number {
   switch (one.kind) {
     case 'fixed':

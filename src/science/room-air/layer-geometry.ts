@@ -25,7 +25,17 @@ export function basinOf(curve: VolumeCurve, side: LayerSide, scale: number): Bas
   };
 }
 
-/** Level of a volume above the base of its basin [m]; it may pass the rim of an open pit. */
+/**
+ * Level of a volume above the base of its basin [m].
+ *
+ *   rake of rise r: sqrt(2 r V/A) up to r, then V/A + r/2; else V = sum of A_i (level - level_i)
+ *
+ * @param basin    basin on the floor or under the ceiling
+ * @param volumeM3 volume that lies in it [m3], 0 or more
+ * @returns level [m], 0 or more; it may pass the rim of an open pit
+ * Source: own-room-air (geometry of the basin). Assumes: level surface, areas net. Accuracy: exact.
+ * @example basinLevel({ riseM: 0, areaM2: 2, steps: [{ areaM2: 8, levelM: 0.5 }] }, 6) // 1
+ */
 export function basinLevel(basin: Basin, volumeM3: number): number {
   if (volumeM3 <= 0) return 0;
   if (basin.riseM > 0) {
@@ -44,7 +54,17 @@ export function basinLevel(basin: Basin, volumeM3: number): number {
   return level;
 }
 
-/** Plan area of a basin at a level [m2]. */
+/**
+ * Plan area of a basin at a level [m2].
+ *
+ *   rake of rise r: A min(1, level/r); else the sum of the areas that lie below the level
+ *
+ * @param basin  basin on the floor or under the ceiling
+ * @param levelM level above its base [m], 0 or more
+ * @returns area [m2]
+ * Source: own-room-air (geometry of the basin). Assumes: level surface, areas net. Accuracy: exact.
+ * @example basinArea({ riseM: 2, areaM2: 100, steps: [] }, 0.5) // 25
+ */
 export function basinArea(basin: Basin, levelM: number): number {
   if (basin.riseM > 0) return basin.areaM2 * Math.min(1, levelM / basin.riseM);
   let area = basin.areaM2;

@@ -102,6 +102,12 @@ export function withoutPulses(model: AirModel): AirModel {
   return { ...model, releases, edgesS: [...edges].sort((a, b) => a - b) };
 }
 
+/**
+ * Layers of a model: where gas can gather, what feeds each basin and over which edges it leaves.
+ *
+ * Only spaces that a layered release reaches have layers, one a side; the air above them is one
+ * zone for all spaces joined by wide openings.
+ */
 export function layerNetwork(
   model: AirModel,
   gases: AirGasTable,

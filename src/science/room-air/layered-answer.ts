@@ -23,6 +23,7 @@ export interface LayerCase {
   readonly columnsOf: readonly (readonly number[])[];
 }
 
+/** The layers of a model, with releases at once spread over the seconds a current needs to form. */
 export function layerCase(model: AirModel, gases: AirGasTable): LayerCase {
   const continuous = withoutPulses(model);
   const releases = boundReleases(continuous);
@@ -59,6 +60,7 @@ export interface LayerMouth {
   readonly floorM: number;
 }
 
+/** A mouth above its own floor, referred to the lowest floor of its space. */
 export function layerMouth(model: AirModel, mouth: BoundMouth, floorLevelM?: number): LayerMouth {
   const { curve } = spaceAt(model, mouth.space);
   const floorM = (floorLevelM ?? curve.floorLevelM) - curve.floorLevelM;

@@ -39,6 +39,7 @@ export interface LayerLayout {
   readonly size: number;
 }
 
+/** Layout of the state for a network: its counts and the length of the state. */
 export function layerLayout(network: LayerNetwork): LayerLayout {
   const k = network.components.length;
   const layers = network.layers.length;
@@ -46,7 +47,16 @@ export function layerLayout(network: LayerNetwork): LayerLayout {
   return { k, layers, groups, size: layers * (k + 1) + (groups + 2) * k };
 }
 
-/** Offset of the amounts of a zone: layers first, then upper zones, outdoors out, outdoors in. */
+/**
+ * Offset of the amounts of a zone in the state [-].
+ *
+ *   layers first (volume, then amounts), then upper zones, outdoors out, outdoors in
+ *
+ * @param layout counts of layers, upper zones and components
+ * @param zone   index of the zone [-]: layers, upper zones, then the two of outdoors
+ * @returns index of its first component in the state [-]
+ * Source: own-derivation. Assumes: the layout of the same network. Accuracy: exact.
+ */
 export function zoneOffset(layout: LayerLayout, zone: number): number {
   return zone < layout.layers
     ? zone * (layout.k + 1) + 1
@@ -60,6 +70,7 @@ export interface ZoneState {
   readonly molarMasses: Float64Array;
 }
 
+/** Work space of the size that a layout needs, all zeros, for readZones to fill. */
 export function emptyZoneState(layout: LayerLayout): ZoneState {
   const zones = layout.layers + layout.groups;
   return {
@@ -114,6 +125,7 @@ export interface LayerSegment {
   readonly infiltration: Float64Array;
 }
 
+/** What the rates of the layers need of one flow segment, schedules taken at its middle. */
 export function layerSegment(network: LayerNetwork, flows: FlowSegment): LayerSegment {
   const { model } = network;
   const t = 0.5 * (flows.fromS + flows.toS);

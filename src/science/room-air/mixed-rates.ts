@@ -23,7 +23,18 @@ export function isSteady(segment: FlowSegment): boolean {
   return segment.decaying.length === 0 && segment.links.length === 0;
 }
 
-/** Density of what a space holds [kg/m3]; outdoors for the index past the last space. */
+/**
+ * Density of what a space holds [kg/m3].
+ *
+ *   rho = M p/(R T), M = M_air + sum of x_i (M_i - M_air), x_i = amount/capacity
+ *
+ * @param model      spaces, ambient state and components
+ * @param capacities volume of each space at ambient temperature [m3]
+ * @param amounts    by space and component, volumes at ambient [m3]
+ * @param space      index of the space [-]; outdoors for one past the last
+ * @returns density [kg/m3]
+ * Source: ideal-gas. Assumes: ideal gas, well mixed, the pressure outdoors. Accuracy: about 0.1 %.
+ */
 export function spaceDensity(
   model: AirModel,
   capacities: Float64Array,

@@ -58,7 +58,18 @@ export function releasedVolume(plan: ReleasePlan, t: number): number {
   );
 }
 
-/** Molar mass of a release [kg/mol], mole-fraction mean. */
+/**
+ * Molar mass of a release [kg/mol].
+ *
+ *   M = sum of x_i M_i
+ *
+ * @param shares      share of each gas [-], `air` included, together 1
+ * @param gases       gas table
+ * @param airKgPerMol molar mass of the air of the room [kg/mol]
+ * @returns molar mass [kg/mol]; a gas that the table lacks counts as air
+ * Source: own-derivation (mole-fraction mean). Assumes: shares add up to 1. Accuracy: exact.
+ * @example releaseMolarMass({ He: 0.5, air: 0.5 }, { He: { molarMassKgPerMol: 0.004 } }, 0.029) // 0.0165
+ */
 export function releaseMolarMass(
   shares: Readonly<Record<string, number>>,
   gases: AirGasTable,

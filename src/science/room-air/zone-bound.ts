@@ -72,7 +72,18 @@ function coveredArea(release: BoundRelease, t: number): number {
   return Math.PI * radius ** 2;
 }
 
-/** End of the first pass [s]: floor covered and the run-up at the walls back. */
+/**
+ * End of the first pass of a release over the floor [s].
+ *
+ *   start + 2 t, t from the area of the front, pi r(t)^2, reaching the floor area
+ *
+ * @param release    release with its manner and reduced gravity
+ * @param floorAreaM2 floor of the space [m2], above 0
+ * @returns time by which the floor is covered and the run-up at the walls is back [s]; the start
+ *   of the release when it does not spread as a dense current
+ * Source: own-room-air (front after huppert-simpson-1980; twice is engineering judgement).
+ * Assumes: round front, still air, no entrainment. Accuracy: judgement.
+ */
 export function firstPassEnd(release: BoundRelease, floorAreaM2: number): number {
   const { plan } = release;
   if (!hasFirstPass(release)) return plan.startS;
@@ -102,6 +113,7 @@ export interface BoundMouth {
   readonly firstPassEndS: readonly number[];
 }
 
+/** A mouth with the volumes below and above it [m3] and the first passes of each release [s]. */
 export function boundMouth(
   model: AirModel,
   releases: readonly BoundRelease[],
