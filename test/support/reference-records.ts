@@ -61,17 +61,3 @@ function valueMisses(
     : relative !== false && absolute !== false && (tolerance.exact !== true || difference === 0);
   return met ? [] : [`${path}: ${String(actual)}, not ${String(expected)}`];
 }
-
-/** Largest relative deviation of the numbers of an answer [-]. */
-export function worstDeviation(expected: unknown, actual: unknown): number {
-  if (Array.isArray(expected)) {
-    return Math.max(
-      0,
-      ...expected.map((one, i) =>
-        worstDeviation(one, Array.isArray(actual) ? actual[i] : undefined),
-      ),
-    );
-  }
-  if (typeof expected !== 'number' || typeof actual !== 'number') return 0;
-  return expected === 0 ? Math.abs(actual) : Math.abs(actual / expected - 1);
-}
