@@ -9,9 +9,11 @@ describe('linearly implicit integration', () => {
     const y = stiffState(
       (_, s, out) => {
         const [a = 0, b = 0, c = 0] = s;
-        out[0] = -0.04 * a + 1e4 * b * c;
-        out[2] = 3e7 * b * b;
-        out[1] = -(out[0] ?? 0) - (out[2] ?? 0);
+        const toA = -0.04 * a + 1e4 * b * c;
+        const toC = 3e7 * b * b;
+        out[0] = toA;
+        out[1] = -toA - toC;
+        out[2] = toC;
       },
       Float64Array.of(1, 0, 0),
       0,

@@ -193,9 +193,7 @@ describe('well-mixed networks, seed 20261201', () => {
           { space: 'a', drive: 'balanced', supplyM3PerS: 0.2, extractM3PerS: 0.2 },
         ],
       };
-      expect(leastOxygen(mixedRun(more))).toBeGreaterThanOrEqual(
-        leastOxygen(mixedRun(one)) - 1e-9,
-      );
+      expect(leastOxygen(mixedRun(more))).toBeGreaterThanOrEqual(leastOxygen(mixedRun(one)) - 1e-9);
     }, 60);
   });
 
@@ -209,9 +207,7 @@ describe('well-mixed networks, seed 20261201', () => {
           volumeM3: 1.3 * (release.volumeM3 ?? 0),
         })),
       };
-      expect(leastOxygen(mixedRun(more))).toBeLessThanOrEqual(
-        leastOxygen(mixedRun(still)) + 1e-9,
-      );
+      expect(leastOxygen(mixedRun(more))).toBeLessThanOrEqual(leastOxygen(mixedRun(still)) + 1e-9);
     }, 60);
   });
 
