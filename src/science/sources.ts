@@ -9,6 +9,11 @@ export interface Source {
 }
 
 export const sources = {
+  'odh-method': {
+    title:
+      'Miller & Mazur 1984, oxygen-deficiency hazard method, as carried by FESHM 4240 and quoted by Jefferson Lab 6540 T4 and LBNL',
+    seen: 'second-hand',
+  },
   'si-2019': { title: 'SI Brochure, 9th edition (2019): exact constants', seen: 'second-hand' },
   'cipm-2007': {
     title: 'Picard, Davis, Glaeser & Fujii (CIPM-2007), Metrologia 45 (2008) 149-155',
