@@ -118,6 +118,10 @@ const spanWords = (figure: Figure): string => {
 export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.amounts;
   const { climate } = assessment;
+  // One remark on every hold time is said once, below them.
+  const remarks = new Set(assessment.holdTimes.map((hold) => hold.words));
+  const [onlyRemark = ''] = remarks;
+  const sharedRemark = remarks.size === 1 && assessment.holdTimes.length > 1 ? onlyRemark : null;
   const titles = new Map(
     assessment.zones.flatMap((zone) =>
       zone.quantities.map((entry) => [entry.quantity, entry.quantityTitle]),
@@ -156,7 +160,9 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
         { title: words.quantity, share: 1.6, align: 'left' },
         { title: words.toLevel, share: 1, align: 'right' },
         { title: words.time, share: 1.2, align: 'right' },
-        { title: words.words, share: 4, align: 'left' },
+        ...(sharedRemark === null
+          ? [{ title: words.words, share: 4, align: 'left' } as const]
+          : []),
       ],
       rows: assessment.holdTimes.map((hold) => ({
         cells: [
@@ -164,10 +170,13 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
           titles.get(hold.quantity) ?? hold.quantity,
           levelWords(hold.toLevel),
           hold.time === null ? words.noTime : figureWords(hold.time),
-          hold.words,
+          ...(sharedRemark === null ? [hold.words] : []),
         ],
       })),
     },
+    ...(sharedRemark === null
+      ? []
+      : [{ kind: 'paragraph', look: 'note', words: sharedRemark } as const]),
     ...(climate === null
       ? []
       : [

@@ -149,7 +149,7 @@ function answerTable(
     caption,
     columns: [
       { title: head, share: 3, align: 'left' },
-      { title: words.quantity, share: 1.2, align: 'left' },
+      { title: words.quantity, share: 1.6, align: 'left' },
       ...answers.map((answer) => number(words.planned[answer])),
       ...answers.map((answer) => number(words.worst[answer])),
       number(words.fansOff),
@@ -201,7 +201,7 @@ function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
     readonly title: string;
     readonly kinds: Set<string>;
     readonly levels: readonly string[];
-    readonly sources: string;
+    readonly sources: readonly string[];
   }
   const sets = new Map<string, LevelSet>();
   for (const zone of zones) {
@@ -210,7 +210,7 @@ function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
       const known = all.flatMap((figure) => figure ?? []);
       if (known.length === 0) continue;
       const levels = all.map((figure) => (figure === null ? '–' : levelWords(figure)));
-      const sources = [...new Set(known.map((figure) => figure.source))].join('; ');
+      const sources = known.map((figure) => figure.source);
       const key = [title, ...levels].join('\n');
       const set = sets.get(key) ?? { title, kinds: new Set(), levels, sources };
       if (zone.kind !== 'floorLevelCheck') set.kinds.add(words.kinds[zone.kind]);
@@ -221,16 +221,26 @@ function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
     kind: 'table',
     caption: words.levelsCaption,
     columns: [
-      { title: words.quantity, share: 1.5, align: 'left' },
-      { title: words.kind, share: 1.1, align: 'left' },
+      { title: words.levelSource, share: 6, align: 'left' },
+      { title: words.kind, share: 0.9, align: 'left' },
       { title: texts.levels.aim, share: 0.8, align: 'right' },
       { title: texts.levels.limit, share: 0.8, align: 'right' },
       { title: texts.levels.never, share: 0.8, align: 'right' },
-      { title: words.levelSource, share: 5, align: 'left' },
     ],
-    rows: [...sets.values()].map(({ title, kinds, levels, sources }) => ({
-      cells: [title, [...kinds].join(', '), ...levels, sources],
-    })),
+    rows: [...sets.values()].flatMap((set, index, all) => {
+      // The sets of one quantity stand together, with all their sources once.
+      const same = all.filter(({ title }) => title === set.title);
+      if (all.findIndex(({ title }) => title === set.title) !== index) return [];
+      const sources = [...new Set(same.flatMap((entry) => entry.sources))].join('; ');
+      return same.map(({ title, kinds, levels }, row): TableRow => ({
+        cells: [
+          row === 0 ? [{ text: `${title}\n`, strong: true }, { text: sources }] : '',
+          [...kinds].join(', '),
+          ...levels,
+        ],
+        ...(row === 0 ? {} : { continues: true }),
+      }));
+    }),
     empty: words.none,
   };
 }
@@ -277,6 +287,22 @@ function crossingBlocks(
     return [{ cells: [title, ...cells(limit), ...cells(never)] }];
   });
   return [
+    ...(rows.length === 0
+      ? []
+      : [
+          {
+            kind: 'paragraph',
+            look: 'note',
+            keepWithNext: true,
+            words:
+              escape?.figure == null
+                ? words.escapeByHand
+                : filledText(words.escape, {
+                    time: quantityText(escape.figure.value, escape.figure.unit),
+                    origin: texts.origins[escape.origin],
+                  }),
+          } as const,
+        ]),
     {
       kind: 'table',
       caption: words.crossingsCaption,
@@ -290,20 +316,5 @@ function crossingBlocks(
       rows,
       empty: words.noCrossings,
     },
-    ...(rows.length === 0
-      ? []
-      : [
-          {
-            kind: 'paragraph',
-            look: 'note',
-            words:
-              escape?.figure == null
-                ? words.escapeByHand
-                : filledText(words.escape, {
-                    time: quantityText(escape.figure.value, escape.figure.unit),
-                    origin: texts.origins[escape.origin],
-                  }),
-          } as const,
-        ]),
   ];
 }
