@@ -216,6 +216,10 @@ function actResults(
   });
 }
 
+/** Words of a control before its numbers are chosen: an open slot is told as such. */
+const withoutSlots = (words: string): string =>
+  words.replaceAll(/\{[A-Za-z]+\}/g, 'the agreed number of');
+
 function controlResults(
   asFiled: Knowledge,
   controlled: Knowledge,
@@ -260,7 +264,7 @@ function controlResults(
         act: one.act ?? null,
         chosen: true,
         credited,
-        words: one.note ?? control.text,
+        words: one.note ?? withoutSlots(control.text),
         before: credited ? before : null,
         after: credited ? after : null,
       },
@@ -284,7 +288,7 @@ function controlResults(
           act: act.id,
           chosen: false,
           credited: false,
-          words: row.text,
+          words: withoutSlots(row.text),
           before: null,
           after: null,
         },

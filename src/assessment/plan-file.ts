@@ -360,7 +360,6 @@ export const meterSchema = Type.Object(
   },
   closed,
 );
-export type PlanMeter = Static<typeof meterSchema>;
 
 export const chosenControlSchema = Type.Object(
   {
