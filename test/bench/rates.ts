@@ -7,7 +7,7 @@ export interface Rates {
   readonly heapGrowthBytes: number;
 }
 
-export type Contenders = Readonly<Record<string, (index: number) => number>>;
+type Contenders = Readonly<Record<string, (index: number) => number>>;
 
 const collect = (): void => {
   globalThis.gc?.();
