@@ -4,7 +4,6 @@ import { airCase, type AirCase } from './air-case.js';
 import type { LargestAmount } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { plainFigure } from './figures.js';
-import { fails } from './levels.js';
 import type { ResolvedAct } from './resolved-plan.js';
 import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 
@@ -35,6 +34,7 @@ const failingIn =
 function lineCrossing(
   at: readonly [number, readonly ZoneOutcome[]],
   to: readonly [number, readonly ZoneOutcome[]],
+  reached: ReadonlySet<string>,
 ): number {
   const [from, first] = at;
   const [until, second] = to;
@@ -43,7 +43,8 @@ function lineCrossing(
     const { statistic, value: aim } = level.aim;
     const a = outcome.answers.mixed?.statistics[statistic];
     const b = second[index]?.answers.mixed?.statistics[statistic];
-    if (!judgedFully || a === undefined || b === undefined) return least;
+    if (!judgedFully || !reached.has(outcome.group.space)) return least;
+    if (a === undefined || b === undefined) return least;
     const slope = (b - a) / (until - from);
     const worsens = level.failsWhen === 'below' ? slope < 0 : slope > 0;
     return worsens ? Math.min(least, from + (aim - a) / slope) : least;
@@ -53,15 +54,18 @@ function lineCrossing(
 /** Three significant digits, downwards: a printed largest amount is never above the true one. */
 function roundedDown(value: number): number {
   if (value <= 0) return 0;
-  const step = 10 ** (Math.floor(Math.log10(value)) - 2);
-  const tidy = Number((Math.floor(value / step) * step).toPrecision(3));
-  return tidy <= value ? tidy : Number((tidy - step).toPrecision(3));
+  // Beyond nine digits lies the noise of binary fractions, which must not cost a whole step.
+  const settled = Number(value.toPrecision(9));
+  const step = 10 ** (Math.floor(Math.log10(settled)) - 2);
+  return Number((Math.floor(settled / step + 1e-6) * step).toPrecision(3));
 }
 
 interface Search {
   readonly factor: number;
   readonly blocker: ZoneOutcome | null;
   readonly failsWithoutAct: boolean;
+  /** True where the bound fails the limit and no layer was worked out. */
+  readonly restsOnMixedAir: boolean;
 }
 
 function search(evaluation: Evaluation, act: string, answers: AirAnswers): Search {
@@ -92,20 +96,29 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
   );
   const failing = failingIn(reached);
   const withoutAct = failing(outcomesAt(0, 'full'));
-  if (withoutAct) return { factor: 0, blocker: withoutAct, failsWithoutAct: true };
+  if (withoutAct)
+    return { factor: 0, blocker: withoutAct, failsWithoutAct: true, restsOnMixedAir: false };
 
+  // Where no layer was worked out and the bound fails the limit already, mixed air alone never
+  // speaks for more than what is planned.
+  const restsOnMixedAir = planned.some(
+    ({ judgedFully, group, answers: found }) =>
+      judgedFully &&
+      reached.has(group.space) &&
+      !found.layered &&
+      (found.bound?.fails.limit ?? false),
+  );
+  const most = restsOnMixedAir ? 1 : largestFactor;
   const none = outcomesAt(0, 'straight');
-  let guess = Math.min(largestFactor, lineCrossing([0, none], [1, planned]));
+  let guess = Math.min(most, lineCrossing([0, none], [1, planned], reached));
   for (let i = 0; i < corrections; i += 1) {
     const there = outcomesAt(guess, 'straight');
     const passes = !there.some(
-      ({ judgedFully, answers: found, level }) =>
-        judgedFully &&
-        found.mixed &&
-        fails(level, 'aim', found.mixed.statistics[level.aim.statistic] ?? found.mixed.value),
+      ({ judgedFully, group, answers: found }) =>
+        judgedFully && reached.has(group.space) && (found.mixed?.fails.aim ?? false),
     );
     if (passes) break;
-    const corrected = lineCrossing([0, none], [guess, there]);
+    const corrected = lineCrossing([0, none], [guess, there], reached);
     guess = Math.min(0.999 * guess, corrected);
   }
 
@@ -114,13 +127,14 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
   let high = Math.max(low, guess);
   let blocker = failing(outcomesAt(high, 'full'));
   if (!blocker) {
-    const isWhole = high >= largestFactor;
+    const isWhole = high >= most;
     return {
       factor: high,
       blocker: isWhole
         ? null
         : (failing(outcomesAt(high * 1.01 + 1e-9, 'straight')) ?? plannedBlocker),
       failsWithoutAct: false,
+      restsOnMixedAir,
     };
   }
   for (let i = 0; i < halvings; i += 1) {
@@ -131,7 +145,7 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
       blocker = failed;
     } else low = middle;
   }
-  return { factor: low, blocker, failsWithoutAct: false };
+  return { factor: low, blocker, failsWithoutAct: false, restsOnMixedAir };
 }
 
 /**
@@ -149,7 +163,11 @@ export function largestAmounts(
   const letsGasOut = (act: ResolvedAct) =>
     act.planned.some((release) => !release.burned && release.amountMol > 0);
   return resolved.acts.filter(letsGasOut).map((act): LargestAmount => {
-    const { factor, blocker, failsWithoutAct } = search(evaluation, act.id, answers);
+    const { factor, blocker, failsWithoutAct, restsOnMixedAir } = search(
+      evaluation,
+      act.id,
+      answers,
+    );
     const released = act.planned.filter((release) => !release.burned);
     const massKg = released.reduce((sum, release) => sum + release.massKg, 0);
     const mol = released.reduce((sum, release) => sum + release.amountMol, 0);
@@ -157,9 +175,11 @@ export function largestAmounts(
       method: 'largest amount that passes row 2, other acts as planned; rounded down',
       formula: 'planned amount times the largest factor that meets aim and limit',
       source: 'own-derivation',
-      range: blocker
-        ? 'for this room, these people and this air only'
-        : 'no failure found up to 100 times the planned amount',
+      range: restsOnMixedAir
+        ? 'mixed air only; the bound fails the limit where gas can lie, so no more than planned is offered'
+        : blocker
+          ? 'for this room, these people and this air only'
+          : 'no failure found up to 100 times the planned amount',
       inputs: [{ name: 'factor on the planned amount', value: factor, unit: '' }],
     };
     const gasNames = new Set(released.flatMap((release) => Object.keys(release.composition)));
@@ -170,7 +190,9 @@ export function largestAmounts(
       zone: blocker?.group.title ?? '',
       limitedBy:
         level === undefined
-          ? 'no level reached'
+          ? restsOnMixedAir
+            ? 'what is planned; the bound fails the limit'
+            : 'no level reached'
           : failsWithoutAct
             ? `${level}: fails without this act already`
             : level,

@@ -64,7 +64,7 @@ export function inspiredOxygenPressure(fraction: number, pressurePa: number): nu
  * @param pressurePa site pressure [Pa], 50 000 to 110 000
  * @returns fraction at sea level [-]
  * @throws {OutOfRange} outside the ranges
- * Source: standard-atmosphere. Assumes: dry air. Accuracy: exact for an ideal gas.
+ * Source: iso-2533. Assumes: dry air. Accuracy: exact for an ideal gas.
  * @example seaLevelEquivalent(0.2, 79495) // 0.1569
  */
 export function seaLevelEquivalent(fraction: number, pressurePa: number): number {
