@@ -7,8 +7,6 @@ export interface Rates {
   readonly heapGrowthBytes: number;
 }
 
-type Contenders = Readonly<Record<string, (index: number) => number>>;
-
 const collect = (): void => {
   globalThis.gc?.();
 };
