@@ -118,8 +118,14 @@ function ordered(level: JudgedLevel): JudgedLevel {
   return { ...level, limit, aim: stricter(level.failsWhen, level.aim, limit) };
 }
 
-function oxygenLevel(context: Context): JudgedLevel | null {
-  const level = levelOf(context.policy, 'oxygenFraction');
+/** Oxygen too low or oxygen too rich: the same rows of the pack, read from either side. */
+function oxygenLevelOn(
+  context: Context,
+  side: 'below' | 'above',
+  from: PolicyLevel['quantity'],
+  quantity: string,
+): JudgedLevel | null {
+  const level = levelOf(context.policy, from);
   if (!level) return null;
   const rows = (name: LevelName) =>
     context.pack.oxygenThresholds
@@ -127,21 +133,21 @@ function oxygenLevel(context: Context): JudgedLevel | null {
       .filter(
         (row) =>
           row.role === 'judge' &&
-          row.sense === 'below' &&
+          row.sense === side &&
           row.unit === 'percent' &&
           row.level === name,
       )
       .map((row) => ({
         value: row.value / 100,
-        statistic: 'minimum' as const,
+        statistic: side === 'below' ? ('minimum' as const) : ('peak' as const),
         source: `${row.instrument}, ${row.edition}`,
         checked: row.checked,
       }));
   return {
-    quantity: 'oxygenFraction',
+    quantity,
     title: level.title,
     gas: null,
-    failsWhen: 'below',
+    failsWhen: side,
     scale: 1,
     aim: tightened(level, 'aim', []),
     limit: tightened(level, 'limit', rows('limit')),
@@ -149,36 +155,11 @@ function oxygenLevel(context: Context): JudgedLevel | null {
   };
 }
 
-function enrichmentLevel(context: Context): JudgedLevel | null {
-  const level = levelOf(context.policy, 'oxygenEnrichmentFraction');
-  if (!level) return null;
-  const rows = (name: LevelName) =>
-    context.pack.oxygenThresholds
-      .filter(holdsIn(context.region))
-      .filter(
-        (row) =>
-          row.role === 'judge' &&
-          row.sense === 'above' &&
-          row.unit === 'percent' &&
-          row.level === name,
-      )
-      .map((row) => ({
-        value: row.value / 100,
-        statistic: 'peak' as const,
-        source: `${row.instrument}, ${row.edition}`,
-        checked: row.checked,
-      }));
-  return {
-    quantity: 'oxygenEnrichment',
-    title: level.title,
-    gas: null,
-    failsWhen: 'above',
-    scale: 1,
-    aim: tightened(level, 'aim', []),
-    limit: tightened(level, 'limit', rows('limit')),
-    never: tightened(level, 'never', rows('never')),
-  };
-}
+const oxygenLevel = (context: Context) =>
+  oxygenLevelOn(context, 'below', 'oxygenFraction', 'oxygenFraction');
+
+const enrichmentLevel = (context: Context) =>
+  oxygenLevelOn(context, 'above', 'oxygenEnrichmentFraction', 'oxygenEnrichment');
 
 function carbonDioxideLevel(context: Context): JudgedLevel | null {
   const level = levelOf(context.policy, 'carbonDioxideFraction');
