@@ -4,10 +4,10 @@ import { decayRate } from '../../src/science/room-air/decay-log.js';
 import {
   pushOutFraction,
   sealedFraction,
-  sealedPressureRise,
   straightDisplacementFraction,
   straightDisplacementOxygen,
 } from '../../src/science/room-air/displacement.js';
+import { sealedPressureRise } from '../../src/science/room-air/pressure-rise.js';
 import {
   counterflowLimit,
   doorwayExchange,

@@ -115,6 +115,7 @@ const release = Type.Object(
         Type.Literal('burst'),
       ]),
     ),
+    outletDiameterM: Type.Optional(Type.Number({ exclusiveMinimum: 0, maximum: 2 })),
     episode: Type.Optional(id),
   },
   closed,

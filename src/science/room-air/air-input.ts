@@ -83,6 +83,8 @@ export interface AirSystem extends Timed {
   /** Top of a low grille above the floor. */
   readonly extractTopM?: number;
   readonly extractWidthM?: number;
+  /** The jet of the supply where it meets a layer on the floor; only what was measured there. */
+  readonly supplyJet?: { readonly radiusM: number; readonly speedMPerS: number };
   /** Mixing factor, at most 1 is used. */
   readonly effectiveness?: number;
 }
@@ -117,6 +119,8 @@ export interface AirRelease {
   readonly heightM?: number;
   readonly temperatureK?: number;
   readonly manner?: ReleaseManner;
+  /** Bore of the outlet of a jet [m]: tells whether it stirs the room or lies as a layer. */
+  readonly outletDiameterM?: number;
   readonly episode?: string;
 }
 

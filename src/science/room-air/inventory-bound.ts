@@ -60,20 +60,20 @@ export function firstPassBound(gasM3: number, coveredM2: number, heightM: number
 export type Gathering = 'below' | 'above' | 'slab';
 
 /**
- * Where a gas gathers, from its density over that of air at the source and once warmed.
+ * Where a gas gathers, from its density over that of air on its way from the source to the room.
  *
- * Neutral at any stage between the two counts as a slab, which no height escapes.
+ *   below if every stage is above 1.05, above if every stage is below 0.95, else slab
  *
- * @param sourceRatio density ratio to room air as it leaves the source [-]
- * @param warmRatio   density ratio to room air at room temperature [-]
- * @returns below, above or slab
+ * @param stages density ratios to room air [-], from the source to room temperature, water vapour
+ *   included; at least one
+ * @returns below, above or slab; neutral at any stage between them is a slab, which no height
+ *   escapes
  * Source: engineering-judgement (slab rule). Assumes: the ratio moves evenly between the stages.
  * Accuracy: judgement.
+ * @example gatheringOf([3.67, 0.967]) // 'slab'
  */
-export function gatheringOf(sourceRatio: number, warmRatio: number): Gathering {
-  const low = Math.min(sourceRatio, warmRatio);
-  const high = Math.max(sourceRatio, warmRatio);
-  if (low > NEUTRAL_DENSITY_RATIO.max) return 'below';
-  if (high < NEUTRAL_DENSITY_RATIO.min) return 'above';
+export function gatheringOf(stages: readonly number[]): Gathering {
+  if (Math.min(...stages) > NEUTRAL_DENSITY_RATIO.max) return 'below';
+  if (Math.max(...stages) < NEUTRAL_DENSITY_RATIO.min) return 'above';
   return 'slab';
 }

@@ -49,21 +49,6 @@ export function plumeFraction(releaseM3PerS: number, plumeM3PerS: number): numbe
 }
 
 /**
- * Largest gas fraction that a mouth inside a plume, jet or fall may meet [-].
- *
- *   min(1, 2 q/Q_p): the axis is about twice the mean
- *
- * @param releaseM3PerS release q [m3/s]
- * @param plumeM3PerS   flow at that distance Q_p [m3/s], above 0
- * @returns fraction [-]
- * Source: engineering-judgement (rule on local flow). Assumes: as plumeFraction. Accuracy:
- * judgement.
- */
-export function localFlowFraction(releaseM3PerS: number, plumeM3PerS: number): number {
-  return Math.min(1, (2 * releaseM3PerS) / plumeM3PerS);
-}
-
-/**
  * Volume flow of a line plume, all its width [m3/s].
  *
  *   Q = 0.468 (B/W)^(1/3) W z

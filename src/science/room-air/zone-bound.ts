@@ -1,15 +1,18 @@
 import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { OXYGEN, spaceAt, type AirModel } from './air-model.js';
 import { frontRadiusAtOnce, frontRadiusContinuous } from './gravity-current.js';
+import { fogDensityRatio } from './fog-density.js';
 import {
   firstPassBound,
   gatheringOf,
   inventoryBound,
+  NEUTRAL_DENSITY_RATIO,
   slabBound,
   type Gathering,
 } from './inventory-bound.js';
-import { DEFAULT_MANNER, RELEASE_MANNERS } from './release-manner.js';
-import { releasedVolume, type ReleasePlan } from './release-flow.js';
+import type { GasJet } from './momentum.js';
+import { DEFAULT_MANNER, startsAsLayer } from './release-manner.js';
+import { releasedVolume, releaseFlow, type ReleasePlan } from './release-flow.js';
 import { reachTimes } from './release-reach.js';
 import { ownVolumeAbove, ownVolumeBelow } from './volume-curve.js';
 
@@ -18,6 +21,9 @@ export interface BoundRelease {
   readonly plan: ReleasePlan;
   readonly reachS: Float64Array;
   readonly gathering: Gathering;
+  /** Clearly heavier, or lighter, than air at some stage: a slab may then lie there first. */
+  readonly isHeavyAtFirst: boolean;
+  readonly isLightAtFirst: boolean;
   /** Volume at the warmest reached space over volume at ambient [-]. */
   readonly warmFactor: number;
   readonly gPrime: number;
@@ -29,6 +35,43 @@ export const FIRST_PASS_FROM_S = 1;
 
 /** Temperature of a fog source over water from which its gas may be near neutral [K]. */
 const WARM_FOG_K = 323.15;
+/** Shares of the water vapour that may have condensed by the time the fog spreads [-]. */
+const FOG_CONDENSED = [0, 0.5] as const;
+
+/** Density ratios to room air of a release, from its source to room temperature [-]. */
+function densityStages(model: AirModel, plan: ReleasePlan, roomK: number): readonly number[] {
+  const warm = plan.molarMassKgPerMol / model.airKgPerMol;
+  const sourceK = plan.source.temperatureK ?? roomK;
+  const stages = [(warm * roomK) / sourceK, warm];
+  if (plan.source.manner !== 'fog' || sourceK <= roomK) return stages;
+  // Warm fog carries water vapour, which can make even carbon dioxide as light as air.
+  const moist = FOG_CONDENSED.map((share) =>
+    fogDensityRatio(
+      plan.molarMassKgPerMol,
+      model.airKgPerMol,
+      sourceK,
+      roomK,
+      model.input.ambient.pressurePa,
+      share,
+    ),
+  );
+  return sourceK >= WARM_FOG_K ? [...stages, ...moist, 1] : [...stages, ...moist];
+}
+
+/** The nozzle of a jet, where it is known and gas flows. */
+function jetOf(model: AirModel, plan: ReleasePlan, roomK: number): GasJet | undefined {
+  const { outletDiameterM, temperatureK } = plan.source;
+  const flowM3PerS = releaseFlow(plan, plan.startS);
+  if (outletDiameterM === undefined || flowM3PerS <= 0) return undefined;
+  const airDensityKgPerM3 = model.airKgPerMol / model.molarVolumeM3;
+  const warm = plan.molarMassKgPerMol / model.airKgPerMol;
+  return {
+    flowM3PerS,
+    diameterM: outletDiameterM,
+    gasDensityKgPerM3: (airDensityKgPerM3 * warm * roomK) / (temperatureK ?? roomK),
+    airDensityKgPerM3,
+  };
+}
 
 /** All releases with the spaces they reach and how they gather. */
 export function boundReleases(model: AirModel): readonly BoundRelease[] {
@@ -42,20 +85,18 @@ export function boundReleases(model: AirModel): readonly BoundRelease[] {
     );
     const roomK = model.spaces[plan.space]?.temperatureK ?? ambientK;
     const warmRatio = plan.molarMassKgPerMol / model.airKgPerMol;
-    const sourceK = plan.source.temperatureK ?? roomK;
+    const stages = densityStages(model, plan, roomK);
     const manner = plan.source.manner ?? DEFAULT_MANNER;
-    // Warm fog carries water vapour, which can make even carbon dioxide as light as air.
-    const gathering =
-      manner === 'fog' && sourceK >= WARM_FOG_K
-        ? 'slab'
-        : gatheringOf((warmRatio * roomK) / sourceK, warmRatio);
+    const volumeM3 = model.spaces[plan.space]?.curve.volumeM3 ?? 1;
     return {
       plan,
       reachS,
-      gathering,
+      gathering: gatheringOf(stages),
+      isHeavyAtFirst: Math.max(...stages) > NEUTRAL_DENSITY_RATIO.max,
+      isLightAtFirst: Math.min(...stages) < NEUTRAL_DENSITY_RATIO.min,
       warmFactor: warmest / ambientK,
       gPrime: GRAVITY_M_PER_S2 * Math.max(0, warmRatio - 1),
-      startsLayered: RELEASE_MANNERS[manner].startsLayered,
+      startsLayered: startsAsLayer(manner, jetOf(model, plan, roomK), volumeM3),
     };
   });
 }
@@ -146,7 +187,12 @@ function releaseBound(
   const gas = releasedVolume(release.plan, t) * release.warmFactor;
   switch (release.gathering) {
     case 'slab':
-      return slabBound(gas, mouth.floorAreaM2);
+      // Below 0.3 m, on a rake or in a pit the cold stage lies shallower than the slab.
+      return Math.max(
+        slabBound(gas, mouth.floorAreaM2),
+        release.isHeavyAtFirst ? inventoryBound(gas, mouth.belowM3) : 0,
+        release.isLightAtFirst ? inventoryBound(gas, mouth.aboveM3) : 0,
+      );
     case 'above':
       return inventoryBound(gas, mouth.aboveM3);
     case 'below': {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { leakyPressureRise } from '../../../src/science/room-air/displacement.js';
-import { localFlowFraction } from '../../../src/science/room-air/plume.js';
+import { leakyPressureRise } from '../../../src/science/room-air/pressure-rise.js';
+import { localFlowFraction } from '../../../src/science/room-air/local-flow.js';
 import { supplyControlledFraction } from '../../../src/science/room-air/well-mixed.js';
 import { referenceRecords } from '../../support/reference-records.js';
 
