@@ -4,10 +4,15 @@ import type { Calculator } from '../assessment/calculators/calculator.js';
 import { calculatorsOf } from '../assessment/calculators/registry.js';
 import { CatalogueData } from '../catalogue/catalogue.module.js';
 import { NotFound } from '../errors.js';
+import { ClientSignal } from '../web/http/client-signal.js';
 import type { PageReply } from '../web/http/exchange.js';
+import { AssessmentPool } from '../workers/assessment-pool.js';
 
 const isError = (body: unknown): body is DoorError =>
   typeof body === 'object' && body !== null && 'error' in body;
+
+/** Calculators that may work for seconds: they get a thread, the others answer at once. */
+const longRunning = new Set(['air', 'assess']);
 
 /** The calculators for programs: the same bodies and errors as on the command line. */
 @Controller('api/calculate')
@@ -16,17 +21,21 @@ export class CalculateController {
 
   readonly #calculators: ReadonlyMap<string, Calculator>;
 
-  constructor(private readonly data: CatalogueData) {
+  constructor(
+    private readonly data: CatalogueData,
+    private readonly pool: AssessmentPool,
+  ) {
     this.#calculators = calculatorsOf(data.forAssessment);
   }
 
   @Post(':calculator')
   @Header('cache-control', 'no-store')
-  calculate(
+  async calculate(
     @Param('calculator') name: string,
     @Body() document: unknown,
+    @ClientSignal() signal: AbortSignal,
     @Res({ passthrough: true }) reply: PageReply,
-  ): unknown {
+  ): Promise<unknown> {
     const calculator = this.#calculators.get(name);
     if (calculator === undefined) {
       throw new NotFound(
@@ -34,7 +43,11 @@ export class CalculateController {
         `Use one of ${[...this.#calculators.keys()].join(', ')}.`,
       );
     }
-    const { body, faults } = answer(calculator, document, this.data);
+    // A list may be long whatever the calculator.
+    const inThread = longRunning.has(name) || Array.isArray(document);
+    const { body, faults } = inThread
+      ? await this.pool.calculation(name, document, signal)
+      : answer(calculator, document, this.data);
     for (const fault of faults) {
       this.#log.error(fault instanceof Error ? (fault.stack ?? fault.message) : String(fault));
     }

@@ -10,6 +10,7 @@ import { zoneCurve } from '../web/charts/zone-curve.js';
 import { checkedForm } from '../web/forms/checked-form.js';
 import { emptyForm, fieldId, type FormState } from '../web/forms/fields.js';
 import type { FormFields } from '../web/forms/form-fields.js';
+import { ClientSignal } from '../web/http/client-signal.js';
 import { ReturnsPage, sendElsewhere, sendPage, type PageReply } from '../web/http/exchange.js';
 import { pageHtml } from '../web/layout/page.js';
 import { CurrentViewer, type Viewer } from '../web/session/viewer.js';
@@ -143,8 +144,9 @@ export class PlansController {
     @Param('id') id: string,
     @CurrentViewer() viewer: Viewer,
     @Query('notice') notice: unknown,
+    @ClientSignal() signal: AbortSignal,
   ): Promise<string> {
-    const open = await this.plans.open(id);
+    const open = await this.plans.open(id, signal);
     return this.#page({ viewer, open, fields: this.#textsOf(open), notice });
   }
 
@@ -263,8 +265,9 @@ export class PlansController {
     @Param('zone') zoneId: string,
     @Param('quantity') quantity: string,
     @Param('file') file: string,
+    @ClientSignal() signal: AbortSignal,
   ): Promise<string> {
-    const { outcome } = await this.plans.open(id);
+    const { outcome } = await this.plans.open(id, signal);
     if (outcome.assessment === undefined) throw outcome.failure;
     const caseName = file.replace(/\.svg$/, '');
     const zone = outcome.assessment.zones.find((one) => one.id === zoneId);

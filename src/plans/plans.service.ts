@@ -46,12 +46,16 @@ export class PlansService {
     return this.plans.list();
   }
 
-  /** @throws {NotFound} */
-  async open(id: string): Promise<OpenPlan> {
+  /**
+   * @param signal fires when the one who asked has gone: an assessment nobody waits for is dropped
+   * @throws {NotFound}
+   */
+  async open(id: string, signal?: AbortSignal): Promise<OpenPlan> {
     const plan = await this.plans.get(id);
     const venue = plan.venueId === null ? undefined : await this.venues.get(plan.venueId);
     const file = planFile(plan.document, venue?.venue);
-    return { plan, venue, file, outcome: await this.assessments.outcomeOf(file) };
+    const outcome = await this.assessments.outcomeOf(file, { signal, latestOf: id });
+    return { plan, venue, file, outcome };
   }
 
   /**
