@@ -30,12 +30,15 @@ export const decayCalculator: Calculator<typeof decayInputSchema, typeof decayRe
   input: decayInputSchema,
   output: decayResultSchema,
   run(input) {
-    const result = decayRate(input);
+    const { interval95, freshAirInterval95, warnings, ...result } = decayRate(input);
     return {
-      ...result,
-      interval95: [...result.interval95],
-      freshAirInterval95: [...result.freshAirInterval95],
-      warnings: [...result.warnings],
+      airChangesPerHour: result.airChangesPerHour,
+      standardUncertainty: result.standardUncertainty,
+      interval95: [...interval95],
+      freshAirM3PerS: result.freshAirM3PerS,
+      freshAirInterval95: [...freshAirInterval95],
+      rSquared: result.rSquared,
+      warnings: [...warnings],
     };
   },
 };

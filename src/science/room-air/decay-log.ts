@@ -17,6 +17,10 @@ export interface DecayResult {
   readonly freshAirM3PerS: number;
   readonly freshAirInterval95: readonly [number, number];
   readonly rSquared: number;
+  /** Reading of the incoming air as given, or as fitted [ppm]. */
+  readonly backgroundPpm: number;
+  /** Excess of the fitted curve over it at the first time [ppm]. */
+  readonly firstExcessPpm: number;
   readonly warnings: readonly string[];
 }
 
@@ -28,12 +32,15 @@ interface Fit {
   readonly residuals: readonly number[];
   readonly serialCorrelation: number;
   readonly background: number;
+  readonly firstExcess: number;
 }
 
 const HOUR = 3600;
 /** Fewest readings of a log worth judging. */
 const FEWEST_READINGS = 8;
 const LEAST_R_SQUARED = 0.98;
+/** Highest reading this late: the log does not begin with the decay. */
+const LATE_HIGHEST = 2;
 
 /**
  * Air change rate of a space from a tracer or carbon dioxide log [1/h], with its 95 % interval.
@@ -45,7 +52,7 @@ const LEAST_R_SQUARED = 0.98;
  * sqrt(n/n_eff), n_eff = n (1 - r1)/(1 + r1).
  *
  * @param log times [s], readings [ppm], background [ppm] or null, volume [m3]
- * @returns rate [1/h], fresh air [m3/s], intervals, r squared, warnings
+ * @returns rate [1/h], fresh air [m3/s], intervals, r squared, fitted curve [ppm], warnings
  * @throws {InvalidInput} too few readings, times not rising, readings at or below the background
  * @throws {NotComputable} when the log does not fall
  * Source: astm-e741. Assumes: one mixed space, constant flow, no source. Accuracy: the interval;
@@ -83,6 +90,8 @@ export function decayRate(log: DecayLog): DecayResult {
     freshAirM3PerS: fit.ratePerS * log.volumeM3,
     freshAirInterval95: [low * log.volumeM3, high * log.volumeM3],
     rSquared: fit.rSquared,
+    backgroundPpm: fit.background,
+    firstExcessPpm: fit.firstExcess,
     warnings: logWarnings(log, fit, follows),
   };
 }
@@ -124,6 +133,7 @@ function knownBackground(log: DecayLog): Fit {
     residuals: line.residuals,
     serialCorrelation: line.serialCorrelation,
     background,
+    firstExcess: Math.exp(line.intercept + line.slope * (log.timesS[0] ?? 0)),
   };
 }
 
@@ -172,6 +182,7 @@ function fittedBackground(log: DecayLog): Fit {
     residuals: line.residuals,
     serialCorrelation: line.serialCorrelation,
     background: line.intercept,
+    firstExcess: line.slope,
   };
 }
 
@@ -201,7 +212,15 @@ function logWarnings(log: DecayLog, fit: Fit, follows: boolean): readonly string
       'Neighbouring residuals follow each other: several zones or a changing flow. The interval is widened.',
     );
   }
-  if (log.readingsPpm.some((reading, i) => i > 0 && reading > (log.readingsPpm[i - 1] ?? 0))) {
+  const highest = log.readingsPpm.indexOf(Math.max(...log.readingsPpm));
+  if (highest >= LATE_HIGHEST) {
+    warnings.push(
+      `The readings still rise up to number ${String(highest + 1)}: a source runs or the room is not mixed. Begin the log there.`,
+    );
+  }
+  const rises = (reading: number, i: number): boolean =>
+    i > highest && reading > (log.readingsPpm[i - 1] ?? 0);
+  if (log.readingsPpm.some(rises)) {
     warnings.push('A reading rises: people present, a door opened, or the room not mixed.');
   }
   if (log.backgroundPpm === null) {
@@ -210,7 +229,7 @@ function logWarnings(log: DecayLog, fit: Fit, follows: boolean): readonly string
     );
     if (fit.background < 300 || fit.background > 700) {
       warnings.push(
-        'The fitted background is not that of outdoor air: log for longer or measure it.',
+        'The fitted background is not that of outdoor air: people present, air from other rooms, or too short a log. Log for longer or measure it.',
       );
     }
   }
