@@ -41,6 +41,10 @@ import type { ResolvedRelease } from './resolved-plan.js';
 import { cautionsFor, rulesCited } from './rules-cited.js';
 import { fitting } from './schema-check.js';
 import { sectionView } from './section-view.js';
+import { exposureFindings } from './exposure-findings.js';
+import { pressureFindings } from './pressure-findings.js';
+import { streamFindings } from './stream-findings.js';
+import { stopReading } from './stop-reading.js';
 import { soundResults } from './sound-results.js';
 import { zoneResults } from './zone-results.js';
 import type { LevelName } from './levels.js';
@@ -470,6 +474,16 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
   const conditions = conditionsOf(controlled.shown.hits, {
     quantity: (hit) => (hit.outcome ? quantityWords(hit.outcome.level, nameOf) : ''),
     space: spaceTitle,
+    stop: (hit) =>
+      hit.outcome
+        ? stopReading(
+            controlled.shown.plan,
+            hit.outcome,
+            data.catalogue.policy,
+            controlled.shown.facts,
+            controlled.shown.resolved.site,
+          )
+        : null,
   });
   const controlConditions = credited.map(({ control, chosen }, index): Condition => ({
     number: conditions.length + index + 1,
@@ -521,7 +535,12 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
       }),
     })),
     conditions: [...conditions, ...controlConditions, ...confirmations],
-    findings: planFindings(plan, resolved, data.catalogue.policy),
+    findings: [
+      ...planFindings(plan, resolved, data.catalogue.policy),
+      ...streamFindings(resolved),
+      ...pressureFindings(resolved, data.catalogue.policy),
+      ...exposureFindings(shown.planned, resolved, pack, nameOf),
+    ],
     refusals: shown.refusals,
     zones: zoneResults(shown, nameOf),
     sound,

@@ -642,6 +642,11 @@ export const policySchema = Type.Object(
         leave: optional(positive('fraction')),
         acceptedCells: list(words('cell type of the plan file', 30), 8),
         refusedCells: list(words('cell type of the plan file', 30), 8),
+        /** What a usual meter may be wrong by, as fractions of gas, where its sheet is not at hand. */
+        accuracy: optional(positive('fraction')),
+        drift: optional(positive('fraction')),
+        crossEffect: optional(positive('fraction')),
+        responseTimeS: optional(positive('time to 90 % of a step')),
         /** The row holds when this is true; every row that holds must accept the cell. */
         when: conditionSchema,
         text: words('as printed', 400),

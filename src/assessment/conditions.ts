@@ -2,6 +2,7 @@ import type { Condition, Figure } from './assessment.js';
 import type { Hit, HitReason } from './decision-table.js';
 import { levelFigure } from './figures.js';
 import { answerWords, shortText, stopText } from './quantity-words.js';
+import type { StopReading } from './stop-reading.js';
 
 interface Wording {
   readonly text: (where: string, quantity: string, stop: string, mouth: string) => string;
@@ -65,6 +66,21 @@ const wordings: Partial<Record<HitReason, Wording>> = {
   },
 };
 
+/** The stop number as the meter shows it, error and delay of the meter taken off. */
+function stopWords(hit: Hit, reading: StopReading | null): string {
+  if (!hit.outcome || !reading) return '';
+  const { level } = hit.outcome;
+  const figure = levelFigure(level, 'limit');
+  if (reading.value === null) {
+    return level.failsWhen === 'below'
+      ? 'any fall from clean air, as no meter answers in time'
+      : 'any rise from clean air, as no meter answers in time';
+  }
+  const stop = stopText({ ...figure, value: reading.value });
+  if (level.quantity !== 'oxygenFraction') return stop;
+  return `${stop} (clean air here reads ${shortText({ ...figure, value: reading.cleanAir })})`;
+}
+
 const mouthWords = (heightM: number, floorCheck: boolean): string =>
   floorCheck ? '0.2 m above the floor' : `at ${heightM.toFixed(2)} m`;
 
@@ -74,6 +90,8 @@ export function conditionsOf(
   names: {
     readonly quantity: (hit: Hit) => string;
     readonly space: (id: string) => string;
+    /** The reading at which to act on a hit, with the error of the meter taken off. */
+    readonly stop: (hit: Hit) => StopReading | null;
   },
 ): readonly Condition[] {
   const seen = new Set<string>();
@@ -87,8 +105,7 @@ export function conditionsOf(
         ? names.space(outcome.group.space)
         : outcome.group.title
       : 'Everywhere';
-    const level = outcome ? levelFigure(outcome.level, 'limit') : null;
-    const stop = level ? stopText(level) : '';
+    const stop = stopWords(hit, names.stop(hit));
     const mouth = outcome ? mouthWords(outcome.heightM, outcome.floorCheck) : '';
     const quantity = names.quantity(hit);
     const text = wording.text(where, quantity, stop, mouth);

@@ -9,6 +9,7 @@ import type {
 import type { Evaluation } from './evaluation.js';
 import { levelFigure, outcomeFigure, plainFigure } from './figures.js';
 import type { LevelName } from './levels.js';
+import { openVessels } from './open-vessels.js';
 import { quantityWords } from './quantity-words.js';
 import type { ResolvedPlan } from './resolved-plan.js';
 import type { ZoneOutcome } from './zone-outcomes.js';
@@ -124,7 +125,7 @@ export function zoneResults(
   const { resolved } = evaluation;
   const worst = worstOf(evaluation.worst.flatMap((one) => one.outcomes));
   const all = [...evaluation.planned, ...worst, ...evaluation.fansOff];
-  return resolved.groups.flatMap((group) => {
+  const ofGroups = resolved.groups.flatMap((group) => {
     const spaceTitle =
       resolved.spaces.find((space) => space.id === group.space)?.title ?? group.space;
     const result = (floorCheck: boolean): ZoneResult => {
@@ -158,4 +159,5 @@ export function zoneResults(
     };
     return [result(false), result(true)];
   });
+  return [...ofGroups, ...openVessels(resolved)];
 }

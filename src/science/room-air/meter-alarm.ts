@@ -1,3 +1,6 @@
+import { OXYGEN_IN_DRY_AIR } from './air-constants.js';
+import { vapourPressure } from './water-vapour.js';
+
 /** What the display of a gas meter does with the true value. */
 export interface MeterTraits {
   /** Time to 90 % of a step [s]. */
@@ -76,4 +79,51 @@ export function actionReading(
   const margin =
     doubts.reduce((sum, one) => sum + Math.abs(one), 0) + responseTimeS * Math.abs(ratePerS);
   return side === 'below' ? limit + margin : limit - margin;
+}
+
+/**
+ * What a right oxygen meter shows in clean air of the place [-]: the baseline of every reading.
+ *
+ *   0.2095 (1 - pv/p)
+ *
+ * @param temperatureK     temperature [K]
+ * @param pressurePa       site pressure p [Pa], above the vapour pressure
+ * @param relativeHumidity relative humidity [-], 0 to 1
+ * @returns oxygen fraction of the humid air [-]
+ * Source: wmo-8 (vapour pressure pv), iso-2533 (dry air). Assumes: outdoor air. Accuracy: 1e-4.
+ * @example cleanAirReading(293.15, 101325, 0.5) // 0.2071
+ */
+export function cleanAirReading(
+  temperatureK: number,
+  pressurePa: number,
+  relativeHumidity: number,
+): number {
+  return OXYGEN_IN_DRY_AIR * (1 - vapourPressure(temperatureK, relativeHumidity) / pressurePa);
+}
+
+/**
+ * Fastest approach of a series to its limit [1/s].
+ *
+ *   max over the intervals of the change towards the limit per second, at least 0
+ *
+ * @param timesS rising times [s]
+ * @param values true fraction at those times [-], as many as times
+ * @param side   below for oxygen (falls towards its limit), above for a gas
+ * @returns rate [1/s], 0 where it never moves that way
+ * Source: own-derivation. Assumes: straight between the points. Accuracy: that of the interval.
+ * @example fastestApproach([0, 10, 20], [0.2095, 0.2085, 0.209], 'below') // 0.0001
+ */
+export function fastestApproach(
+  timesS: readonly number[],
+  values: readonly number[],
+  side: 'below' | 'above',
+): number {
+  const sign = side === 'below' ? -1 : 1;
+  let fastest = 0;
+  for (let i = 1; i < timesS.length; i++) {
+    const span = (timesS[i] ?? 0) - (timesS[i - 1] ?? 0);
+    if (span <= 0) continue;
+    fastest = Math.max(fastest, (sign * ((values[i] ?? 0) - (values[i - 1] ?? 0))) / span);
+  }
+  return fastest;
 }
