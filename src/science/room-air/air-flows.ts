@@ -165,27 +165,28 @@ function pressureAnswer(n: number, links: readonly OpenLink[], leaks: Float64Arr
   return linearSolution(matrix, unit, n, n);
 }
 
-/** The flows between two edges. */
-export function flowSegment(
-  model: AirModel,
-  fromS: number,
-  toS: number,
-  displacement: Displacement,
-): FlowSegment {
+/** The part of the flows that only schedules of openings and plant change. */
+type Ventilation = Pick<
+  FlowSegment,
+  | 'between'
+  | 'freshM3PerS'
+  | 'extractM3PerS'
+  | 'net'
+  | 'links'
+  | 'leakM2'
+  | 'pressures'
+  | 'mixing'
+>;
+
+function ventilation(model: AirModel, t: number): Ventilation {
   const n = model.spaces.length;
-  const m = model.components.length;
-  const t = 0.5 * (fromS + toS);
   const { input } = model;
   const between = new Float64Array(n * n);
   const fresh = new Float64Array(n);
   const extract = new Float64Array(n);
-  const sources = new Float64Array(n * m);
   const net = new Float64Array(n);
   const known = new Float64Array(n);
   const mixing = new Float64Array(n).fill(1);
-  const add = (to: Float64Array, at: number, value: number): void => {
-    to[at] = (to[at] ?? 0) + value;
-  };
   const place = (id: string): number => model.indexOf.get(id) ?? 0;
 
   for (const system of input.airSystems ?? []) {
@@ -246,47 +247,135 @@ export function flowSegment(
       add(net, j, -flow);
     }
   }
-  for (const one of input.occupants ?? []) {
-    if (!isActive(one, t)) continue;
-    const i = place(one.space);
-    const perPerson =
-      one.carbonDioxideM3PerS ??
-      (one.metabolicRateMet === undefined
-        ? SEATED_ADULT_CO2_M3_PER_S
-        : breathCarbonDioxide(one.metabolicRateMet));
-    const out = one.count * perPerson * model.siteFactor;
-    const taken = out / (one.respiratoryQuotient ?? RESPIRATORY_QUOTIENT);
-    add(sources, i * m + BACKGROUND_CO2, out);
-    add(sources, i * m + OXYGEN, -taken);
-    add(net, i, out - taken);
-  }
-  const decaying: ReleasePlan[] = [];
-  for (const release of model.releases) {
-    if (release.endS <= release.startS || t < release.startS || t >= release.endS) continue;
-    if (release.decayS !== undefined) {
-      decaying.push(release);
-      continue;
-    }
-    const flow = releaseFlow(release, t);
-    addRelease(model, release, flow, sources, displacement);
-    if (displacement === 'pushOut') add(net, release.space, flow);
-  }
   const links = openLinks(model, t);
   const leakM2 = leakAreas(model, links, known);
   return {
-    fromS,
-    toS,
     between,
     freshM3PerS: fresh,
     extractM3PerS: extract,
-    sources,
     net,
-    decaying,
     links,
     leakM2,
     pressures: pressureAnswer(n, links, leakM2),
     mixing,
   };
+}
+
+function add(to: Float64Array, at: number, value: number): void {
+  to[at] = (to[at] ?? 0) + value;
+}
+
+/** By segment between edges: which of the timed things act in it, in their own order. */
+function activeBySegment(
+  edges: readonly number[],
+  spans: readonly (readonly [from: number, to: number])[],
+): readonly (readonly number[])[] {
+  const active = Array.from({ length: Math.max(0, edges.length - 1) }, (): number[] => []);
+  for (const [index, [from, to]] of spans.entries()) {
+    for (let e = segmentAt(edges, from); e < active.length; e++) {
+      const middle = 0.5 * ((edges[e] ?? 0) + (edges[e + 1] ?? 0));
+      if (middle >= to) break;
+      if (middle >= from) active[e]?.push(index);
+    }
+  }
+  return active;
+}
+
+/** The last segment that starts at or before a time; the first one for any time before. */
+function segmentAt(edges: readonly number[], t: number): number {
+  let low = 0;
+  let high = edges.length - 1;
+  while (low < high) {
+    const middle = (low + high + 1) >> 1;
+    if ((edges[middle] ?? Infinity) <= t) low = middle;
+    else high = middle - 1;
+  }
+  return low;
+}
+
+const timedSpan = (one: Timed): readonly [number, number] => [
+  one.fromS ?? 0,
+  one.toS ?? Infinity,
+];
+
+/**
+ * All flows of a run in segments between edges, in order.
+ *
+ * What openings and plant do is worked out once for every set of them that acts together: a long day
+ * has hundreds of segments, but few states of its doors and fans.
+ */
+export function flowSegments(
+  model: AirModel,
+  displacement: Displacement,
+  edgesS: readonly number[] = model.edgesS,
+): readonly FlowSegment[] {
+  const { input } = model;
+  const n = model.spaces.length;
+  const m = model.components.length;
+  const plant = [
+    ...(input.openings ?? []),
+    ...(input.airSystems ?? []),
+    ...(input.infiltration ?? []),
+    ...(input.transfers ?? []),
+  ].filter((one) => one.fromS !== undefined || one.toS !== undefined);
+  const people = input.occupants ?? [];
+  const continuous = model.releases.filter((one) => one.endS > one.startS);
+  const plantIn = activeBySegment(edgesS, plant.map(timedSpan));
+  const peopleIn = activeBySegment(edgesS, people.map(timedSpan));
+  const releasesIn = activeBySegment(
+    edgesS,
+    continuous.map((one) => [one.startS, one.endS] as const),
+  );
+  const states = new Map<string, Ventilation>();
+  return edgesS.slice(0, -1).map((fromS, e) => {
+    const toS = edgesS[e + 1] ?? fromS;
+    const middle = 0.5 * (fromS + toS);
+    const key = (plantIn[e] ?? []).join(' ');
+    const still = states.get(key) ?? ventilation(model, middle);
+    states.set(key, still);
+    const sources = new Float64Array(n * m);
+    const net = Float64Array.from(still.net);
+    for (const index of peopleIn[e] ?? []) {
+      const one = people[index];
+      if (!one) continue;
+      const i = model.indexOf.get(one.space) ?? 0;
+      const perPerson =
+        one.carbonDioxideM3PerS ??
+        (one.metabolicRateMet === undefined
+          ? SEATED_ADULT_CO2_M3_PER_S
+          : breathCarbonDioxide(one.metabolicRateMet));
+      const out = one.count * perPerson * model.siteFactor;
+      const taken = out / (one.respiratoryQuotient ?? RESPIRATORY_QUOTIENT);
+      add(sources, i * m + BACKGROUND_CO2, out);
+      add(sources, i * m + OXYGEN, -taken);
+      add(net, i, out - taken);
+    }
+    const decaying: ReleasePlan[] = [];
+    for (const index of releasesIn[e] ?? []) {
+      const release = continuous[index];
+      if (!release) continue;
+      if (release.decayS !== undefined) {
+        decaying.push(release);
+        continue;
+      }
+      const flow = releaseFlow(release, middle);
+      addRelease(model, release, flow, sources, displacement);
+      if (displacement === 'pushOut') add(net, release.space, flow);
+    }
+    return { ...still, fromS, toS, sources, net, decaying };
+  });
+}
+
+/** The flows between two edges. */
+export function flowSegment(
+  model: AirModel,
+  fromS: number,
+  toS: number,
+  displacement: Displacement,
+): FlowSegment {
+  const [segment] = flowSegments(model, displacement, [fromS, toS]);
+  if (!segment) throw new RangeError(`no time from ${String(fromS)} to ${String(toS)}`);
+  return segment;
 }
 
 /** Adds what a release brings per second to the sources of its space. */
@@ -299,21 +388,18 @@ export function addRelease(
 ): void {
   const m = model.components.length;
   const base = release.space * m;
+  const origin = model.origins.get(release.index);
   for (const [gas, share] of Object.entries(release.shares)) {
     if (gas === 'air') {
       // Air from a bottle counts as outdoor air; in the straight form it displaces nothing.
       if (displacement === 'straight') continue;
       for (const [column, one] of model.components.entries()) {
-        sources[base + column] = (sources[base + column] ?? 0) + flow * share * one.outdoors;
+        add(sources, base + column, flow * share * one.outdoors);
       }
       continue;
     }
-    const column = model.components.findIndex(
-      (one) => one.gas === gas && one.episode === release.episode,
-    );
-    if (column >= 0) sources[base + column] = (sources[base + column] ?? 0) + flow * share;
-    if (gas === 'O2' && displacement === 'pushOut') {
-      sources[base + OXYGEN] = (sources[base + OXYGEN] ?? 0) + flow * share;
-    }
+    const column = model.components.findIndex((one) => one.gas === gas && one.origin === origin);
+    if (column >= 0) add(sources, base + column, flow * share);
+    if (gas === 'O2' && displacement === 'pushOut') add(sources, base + OXYGEN, flow * share);
   }
 }

@@ -6,16 +6,18 @@ import {
   REFERENCE_PRESSURE_PA,
   REFERENCE_TEMPERATURE_K,
 } from './air-constants.js';
+import { airGroups } from './air-groups.js';
+import { closedEpisodes } from './episode-end.js';
 import { releaseMolarMass, type ReleasePlan } from './release-flow.js';
 import { idealMolarVolume } from './site-volume.js';
 import { vapourPressure } from './water-vapour.js';
 import { volumeCurve, type VolumeCurve } from './volume-curve.js';
 
-/** What is followed through the spaces: oxygen, background carbon dioxide, gases by episode. */
+/** What is followed through the spaces: oxygen, background carbon dioxide, gases by origin. */
 export interface AirComponent {
   readonly gas: string;
-  /** Undefined: held at the start, breathed out or outdoor. */
-  readonly episode: string | undefined;
+  /** Key of the releases it comes from; undefined: held at the start, breathed out or outdoor. */
+  readonly origin: string | undefined;
   /** Molar mass less that of air [kg/mol]; 0 for oxygen, which counts as air. */
   readonly excessKgPerMol: number;
   /** Fraction in outdoor air. */
@@ -39,7 +41,8 @@ export interface AirModel {
   readonly indexOf: ReadonlyMap<string, number>;
   readonly components: readonly AirComponent[];
   readonly releases: readonly ReleasePlan[];
-  readonly episodes: readonly string[];
+  /** By index of the release in the input: the key of its components. */
+  readonly origins: ReadonlyMap<number, string>;
   /** Gas ids of the answer, in order. */
   readonly gases: readonly string[];
   readonly airKgPerMol: number;
@@ -120,6 +123,35 @@ function edgeTimes(input: AirInput, releases: readonly ReleasePlan[]): readonly 
   return [...edges].filter((t) => t >= 0 && t <= input.durationS).sort((a, b) => a - b);
 }
 
+/**
+ * Which releases share their components: those of one closed episode, and all others together.
+ *
+ * Where a unit sends air round between groups of spaces that no opening joins, the groups are told
+ * apart too: gas that comes only by the unit is mixed there and stands beside the bound.
+ */
+function releaseOrigins(
+  input: AirInput,
+  indexOf: ReadonlyMap<string, number>,
+  releases: readonly ReleasePlan[],
+): ReadonlyMap<number, string> {
+  const closed = closedEpisodes(releases);
+  const groups = airGroups(input, indexOf);
+  const crosses = (input.airSystems ?? []).some(
+    ({ recirculatedM3PerS = 0, serves = [] }) =>
+      recirculatedM3PerS > 0 &&
+      new Set(serves.map(({ space }) => groups[indexOf.get(space) ?? 0])).size > 1,
+  );
+  return new Map(
+    releases.map(({ index, episode, space }) => [
+      index,
+      JSON.stringify([
+        closed.has(episode) ? episode : null,
+        crosses ? (groups[space] ?? null) : null,
+      ]),
+    ]),
+  );
+}
+
 /** Oxygen at the start where the input names other gases only: air diluted by what was added. */
 function initialFractions(
   initial: Readonly<Record<string, number>> & { readonly O2?: number },
@@ -129,7 +161,7 @@ function initialFractions(
   let added = 0;
   for (const [gas, value] of Object.entries(initial)) {
     if (gas === 'O2' || gas === 'air') continue;
-    const column = components.findIndex((one) => one.gas === gas && one.episode === undefined);
+    const column = components.findIndex((one) => one.gas === gas && one.origin === undefined);
     if (column < 0) continue;
     added += Math.max(0, value - (fractions[column] ?? 0));
     fractions[column] = value;
@@ -161,28 +193,29 @@ export function airModel(input: AirInput, gases: AirGasTable): AirModel {
       ),
     )
     .filter((plan) => plan.totalM3 > 0);
+  const origins = releaseOrigins(input, indexOf, releases);
   const excess = (gas: string): number =>
     (gases[gas]?.molarMassKgPerMol ?? airKgPerMol) - airKgPerMol;
   const components: AirComponent[] = [
-    { gas: 'O2', episode: undefined, excessKgPerMol: 0, outdoors: OXYGEN_IN_DRY_AIR },
+    { gas: 'O2', origin: undefined, excessKgPerMol: 0, outdoors: OXYGEN_IN_DRY_AIR },
     {
       gas: 'CO2',
-      episode: undefined,
+      origin: undefined,
       excessKgPerMol: excess('CO2'),
       outdoors: ambient.carbonDioxideFraction ?? CARBON_DIOXIDE_OUTDOORS,
     },
   ];
-  const add = (gas: string, episode: string | undefined): void => {
-    if (gas === 'air' || components.some((one) => one.gas === gas && one.episode === episode)) {
+  const add = (gas: string, origin: string | undefined): void => {
+    if (gas === 'air' || components.some((one) => one.gas === gas && one.origin === origin)) {
       return;
     }
-    components.push({ gas, episode, excessKgPerMol: excess(gas), outdoors: 0 });
+    components.push({ gas, origin, excessKgPerMol: excess(gas), outdoors: 0 });
   };
   for (const space of input.spaces) {
     for (const gas of Object.keys(space.initial ?? {})) if (gas !== 'O2') add(gas, undefined);
   }
   for (const release of releases) {
-    for (const gas of Object.keys(release.shares)) add(gas, release.episode);
+    for (const gas of Object.keys(release.shares)) add(gas, origins.get(release.index));
   }
   const spaces = input.spaces.map((space): SpaceModel => {
     const curve = volumeCurve(space);
@@ -203,7 +236,7 @@ export function airModel(input: AirInput, gases: AirGasTable): AirModel {
     indexOf,
     components,
     releases,
-    episodes: [...new Set(releases.map((release) => release.episode))],
+    origins,
     gases: [...answered].sort(),
     airKgPerMol,
     molarVolumeM3,

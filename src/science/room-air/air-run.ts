@@ -20,12 +20,11 @@ import {
   layerCase,
   layeredRows,
   layerMouth,
-  layersRun,
   spaceLayers,
   type LayerCase,
 } from './layered-answer.js';
 import { adverseLayers, usualLayers, type LayerParameters } from './layer-parameters.js';
-import type { LayerTrack } from './layered-track.js';
+import { layeredTrack, type LayerTrack } from './layered-track.js';
 import { layeredBands, type Band, type BandMouth } from './layered-band.js';
 import { mixedTrack } from './mixed-track.js';
 import {
@@ -272,7 +271,7 @@ function layerRuns(model: AirModel, gases: AirGasTable, rows: AnswerTrack | unde
   const hasFalls = network.weirs.some((weir) => weir.b >= 0 && weir.sillA !== weir.sillB);
   const run = (parameters: LayerParameters): LayerRun => ({
     parameters,
-    track: layersRun(one, parameters, timesS),
+    track: layeredTrack(one.network, parameters, timesS),
   });
   if (network.layers.length === 0) return { one, usual: undefined, adverse: [] };
   return {

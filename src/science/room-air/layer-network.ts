@@ -2,10 +2,18 @@ import { airMolarMass, diffusivityInAir, type AirGasTable } from './air-gases.js
 import { isActive } from './air-flows.js';
 import type { AirOpening } from './air-input.js';
 import { spaceAt, type AirModel } from './air-model.js';
+import { coldExcess } from './cold-gas.js';
 import { basinOf, type Basin, type LayerSide } from './layer-geometry.js';
 import type { LowGrille } from './layer-flow.js';
-import { RELEASE_MANNERS, DEFAULT_MANNER } from './release-manner.js';
+import { RELEASE_MANNERS, DEFAULT_MANNER, type MannerTraits } from './release-manner.js';
 import type { BoundRelease } from './zone-bound.js';
+
+/** A time in which a gas on the floor is still cold, and what it then weighs more than air. */
+interface ColdSpell {
+  readonly fromS: number;
+  readonly untilS: number;
+  readonly excessKgPerMol: number;
+}
 
 /** What is followed in the layers: as in the mixed run, but without telling episodes apart. */
 export interface LayerComponent {
@@ -13,6 +21,8 @@ export interface LayerComponent {
   readonly isReleased: boolean;
   readonly excessKgPerMol: number;
   readonly outdoors: number;
+  /** When it is still cold from its source, and its excess in a layer then. */
+  readonly cold: readonly ColdSpell[];
 }
 
 export interface Layer {
@@ -31,7 +41,7 @@ export interface LayerSource {
   readonly plan: BoundRelease['plan'];
   /** Index of the layer that takes it, or -1: mixed into the upper air. */
   readonly layer: number;
-  readonly mannerDilution: number;
+  readonly manner: MannerTraits;
   /** A light gas that flows rises as a plume; the distance from its source to the base [m]. */
   readonly plumeRiseM: number | undefined;
   readonly gZero: number;
@@ -69,6 +79,8 @@ export interface LayerSupply {
   readonly freshM3PerS: number;
   readonly recirculatedM3PerS: number;
   readonly system: number;
+  /** The jet of the supply where it meets the layer on the floor. */
+  readonly jet: { readonly radiusM: number; readonly speedMPerS: number } | undefined;
 }
 
 export interface LayerNetwork {
@@ -78,6 +90,9 @@ export interface LayerNetwork {
   readonly groupOf: readonly number[];
   readonly groupVolumesM3: readonly number[];
   readonly layers: readonly Layer[];
+  /** By space: its layer on the floor and under the ceiling, -1 for none. */
+  readonly floorLayerOf: readonly number[];
+  readonly ceilingLayerOf: readonly number[];
   readonly sources: readonly LayerSource[];
   readonly weirs: readonly LayerWeir[];
   readonly airMolarMassKgPerMol: number;
@@ -119,6 +134,7 @@ export function layerNetwork(
     isReleased: false,
     excessKgPerMol: one.excessKgPerMol,
     outdoors: one.outdoors,
+    cold: [],
   }));
   for (const one of model.components.slice(2)) {
     if (components.some((known) => known.isReleased && known.gas === one.gas)) continue;
@@ -127,6 +143,7 @@ export function layerNetwork(
       isReleased: true,
       excessKgPerMol: one.excessKgPerMol,
       outdoors: 0,
+      cold: coldSpells(model, releases, one.gas, one.excessKgPerMol, air),
     });
   }
   const groupOf = sharedAir(model);
@@ -135,14 +152,8 @@ export function layerNetwork(
     model.spaces.reduce((sum, space, i) => (groupOf[i] === g ? sum + space.capacityM3 : sum), 0),
   );
   const layers: Layer[] = [];
-  const sides = [
-    { side: 'floor', gathering: 'below' },
-    { side: 'ceiling', gathering: 'above' },
-  ] as const;
-  for (const { side, gathering } of sides) {
-    const own = releases.filter(
-      (release) => release.gathering === gathering && release.startsLayered,
-    );
+  for (const side of ['floor', 'ceiling'] as const) {
+    const own = releases.filter((release) => sideOf(model, release) === side);
     for (const [i, space] of model.spaces.entries()) {
       const here = own.filter((release) => Number.isFinite(release.reachS[i] ?? Infinity));
       if (here.length === 0) continue;
@@ -161,16 +172,15 @@ export function layerNetwork(
     layers.findIndex((layer) => layer.space === space && layer.side === side);
   const sources = releases.map((release): LayerSource => {
     const { plan } = release;
-    const side = release.gathering === 'below' ? 'floor' : 'ceiling';
-    const layer =
-      release.gathering === 'slab' || !release.startsLayered ? -1 : layerAt(plan.space, side);
+    const side = sideOf(model, release);
+    const layer = side === undefined ? -1 : layerAt(plan.space, side);
     const manner = RELEASE_MANNERS[plan.source.manner ?? DEFAULT_MANNER];
     const atOnce = (plan.source.durationS ?? 0) === 0 && plan.decayS === undefined;
     const rise = spaceAt(model, plan.space).curve.heightM - (plan.source.heightM ?? 0);
     return {
       plan,
       layer,
-      mannerDilution: manner.dilution,
+      manner,
       plumeRiseM: layer >= 0 && side === 'ceiling' && !atOnce ? rise : undefined,
       gZero: (9.81 * Math.abs(plan.molarMassKgPerMol - air)) / air,
       airShare: (plan.shares as { readonly air?: number }).air ?? 0,
@@ -189,11 +199,58 @@ export function layerNetwork(
     groupOf,
     groupVolumesM3,
     layers,
+    floorLayerOf: model.spaces.map((_, i) => layerAt(i, 'floor')),
+    ceilingLayerOf: model.spaces.map((_, i) => layerAt(i, 'ceiling')),
     sources,
     weirs: layerWeirs(model, layerAt),
     airMolarMassKgPerMol: air,
     outdoorMolarMassKgPerMol: outdoor,
   };
+}
+
+/** Below room temperature by more than this, a source makes its gas heavy for a while [K]. */
+const COLD_BY_K = 20;
+/** Time in which floor and walls warm a cold layer [s]: some ten to twenty minutes. */
+const WARMING_S = 900;
+
+/** By how much a source is colder than its space [K]; 0 where it is not cold. */
+function coldBy(model: AirModel, { plan }: BoundRelease): number {
+  const roomK = spaceAt(model, plan.space).temperatureK;
+  const by = roomK - (plan.source.temperatureK ?? roomK);
+  return by > COLD_BY_K ? by : 0;
+}
+
+/** Where a release lies first; undefined: mixed with the air. */
+function sideOf(model: AirModel, release: BoundRelease): LayerSide | undefined {
+  if (!release.startsLayered) return undefined;
+  if (release.gathering === 'above') return 'ceiling';
+  // What is near neutral once warm still runs along the floor while it is cold.
+  return release.gathering === 'below' || coldBy(model, release) > 0 ? 'floor' : undefined;
+}
+
+/** When the gas of cold sources on the floor is heavier than its molar mass says. */
+function coldSpells(
+  model: AirModel,
+  releases: readonly BoundRelease[],
+  gas: string,
+  excessKgPerMol: number,
+  air: number,
+): readonly ColdSpell[] {
+  return releases
+    .filter((release) => sideOf(model, release) === 'floor' && coldBy(model, release) > 0)
+    .filter(({ plan }) => gas in plan.shares && Number.isFinite(plan.endS))
+    .map((release) => ({
+      fromS: release.plan.startS,
+      untilS: release.plan.endS + WARMING_S,
+      excessKgPerMol:
+        excessKgPerMol +
+        coldExcess(
+          gas,
+          coldBy(model, release),
+          spaceAt(model, release.plan.space).temperatureK,
+          air,
+        ),
+    }));
 }
 
 function meanDiffusivity(releases: readonly BoundRelease[], gases: AirGasTable): number {
@@ -338,6 +395,7 @@ export function layerUnits(
         freshM3PerS: supply * share,
         recirculatedM3PerS,
         system: index,
+        jet: system.supplyJet,
       });
     }
   }

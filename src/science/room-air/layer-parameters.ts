@@ -18,6 +18,8 @@ export interface LayerParameters {
   /** 1: diffusion smears the layer; 0: it does not. */
   readonly diffusion: 0 | 1;
   readonly plumeConstant: number;
+  /** 1: supply jets stir a layer as stated; 0: they do not. */
+  readonly jets: 0 | 1;
   /** Contrast below which an unfed layer joins the air above it [-]. */
   readonly joinContrast: number;
 }
@@ -40,6 +42,7 @@ export function usualLayers(overrides: AirLayerOverrides = {}): LayerParameters 
     surplusFromLayer: 0,
     diffusion: 1,
     plumeConstant: plumeConstant(PLUME_ENTRAINMENT),
+    jets: 1,
     joinContrast: SAME_AIR,
   };
 }
@@ -68,6 +71,7 @@ export function adverseLayers(
         turbulenceMPerS: 0,
         walkingMPerS: 0,
         diffusion: 0 as const,
+        jets: 0 as const,
       })),
     ),
   );

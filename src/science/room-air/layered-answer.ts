@@ -1,4 +1,3 @@
-import { NotComputable } from '../../errors.js';
 import type { AirGasTable } from './air-gases.js';
 import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { spaceAt, type AirModel } from './air-model.js';
@@ -7,7 +6,7 @@ import type { SpaceLayers } from './air-result.js';
 import { liftsToMouth } from './body-heat.js';
 import { layerNetwork, withoutPulses, type LayerNetwork } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
-import { layeredTrack, type LayerNode, type LayerTrack } from './layered-track.js';
+import type { LayerNode, LayerTrack } from './layered-track.js';
 import type { QuantityRow } from './mixed-values.js';
 import { reportedFraction, smearHeight } from './smear.js';
 import { boundReleases, firstPassEnd, type BoundMouth, type BoundRelease } from './zone-bound.js';
@@ -151,26 +150,6 @@ function between(rows: readonly QuantityRow[], t: number): Float64Array {
   const span = after.t - before.t;
   const share = span > 0 ? (t - before.t) / span : 0;
   return before.values.map((value, i) => value + share * ((after.values[i] ?? value) - value));
-}
-
-/** Tolerances tried in turn where a layer vanishes too abruptly for the finest [-]. */
-const LAYER_TOLERANCES = [1e-5, 1e-4, 1e-3] as const;
-
-/** Runs the layers once. */
-export function layersRun(
-  one: LayerCase,
-  parameters: LayerParameters,
-  timesS: readonly number[],
-): LayerTrack {
-  for (const relative of LAYER_TOLERANCES) {
-    try {
-      return layeredTrack(one.network, parameters, timesS, relative);
-    } catch (thrown) {
-      const isLast = relative === LAYER_TOLERANCES.at(-1);
-      if (isLast || !(thrown instanceof NotComputable)) throw thrown;
-    }
-  }
-  return layeredTrack(one.network, parameters, timesS);
 }
 
 /** Depths and fractions of the layers of one space at the output times. */

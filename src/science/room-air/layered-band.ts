@@ -5,7 +5,8 @@ import type { AirInput } from './air-input.js';
 import { airModel } from './air-model.js';
 import type { Driver } from './air-result.js';
 import { SAMPLED_INPUTS } from './input-distributions.js';
-import { layerCase, layeredRows, layersRun, type LayerMouth } from './layered-answer.js';
+import { layerCase, layeredRows, type LayerMouth } from './layered-answer.js';
+import { COARSE, layeredTrack } from './layered-track.js';
 import { mixedTrack } from './mixed-track.js';
 import { quantitiesOf, spaceFractions, type QuantityRow } from './mixed-values.js';
 import { sampledInput, sampledLayers, uncertaintyDraws } from './sampled-input.js';
@@ -67,7 +68,7 @@ export function layeredBands(
     const one = layerCase(model, gases);
     const parameters = sampledLayers(input, draw);
     const hasLayers = one.network.layers.length > 0;
-    const track = hasLayers ? layersRun(one, parameters, timesS) : undefined;
+    const track = hasLayers ? layeredTrack(one.network, parameters, timesS, COARSE) : undefined;
     const pieces = hasLayers ? [] : mixedTrack(model, timesS, 'pushOut', false);
     for (const [m, mouth] of mouths.entries()) {
       const rows = track

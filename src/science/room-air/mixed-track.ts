@@ -1,138 +1,224 @@
-import { exponentialStep, type ExponentialStep } from '../numerics/matrix-exponential.js';
-import { hermiteValue, integratedState, type AcceptedStep } from '../numerics/runge-kutta.js';
-import { flowSegment, addRelease, type Displacement, type FlowSegment } from './air-flows.js';
+import {
+  denseSlope,
+  denseValue,
+  rungeKuttaWork,
+  stepThrough,
+  writeDense,
+  type RungeKuttaWork,
+} from '../numerics/runge-kutta.js';
+import { addRelease, type Displacement, type FlowSegment } from './air-flows.js';
 import type { AirModel } from './air-model.js';
-import { applyRates, isSteady, mixedBalance, type MixedBalance } from './mixed-rates.js';
+import {
+  advance,
+  isSteady,
+  mixedBalance,
+  seriesWork,
+  setFlows,
+  writeSlopes,
+  type MixedBalance,
+  type SeriesWork,
+} from './mixed-rates.js';
+import type { ReleasePlan } from './release-flow.js';
 
-/** One moment of the well-mixed answer; amounts row-major as in MixedRates. */
-export interface MixedNode {
-  readonly t: number;
+/** The well-mixed answer at its nodes, in pieces without jumps; a piece has nodes at both ends. */
+export interface MixedTrack {
+  /** Rising; the end of a piece and the start of the next are two nodes [s]. */
+  readonly timesS: Float64Array;
+  /** First node of each piece, then the number of nodes. */
+  readonly firstNode: readonly number[];
+  /** Node by node: amounts by space and component [m3 at ambient]. */
   readonly amounts: Float64Array;
-  readonly slopes: Float64Array;
-  readonly capacities: Float64Array;
+  /** Their slopes [m3/s], where they were asked for. */
+  readonly slopes: Float64Array | undefined;
+  /** Volume of each space in each piece [m3 at ambient]. */
+  readonly capacities: readonly Float64Array[];
+  /** At the end: every space, what has left outdoors, what has come in. */
+  readonly last: Float64Array;
+  /** Amounts at any time inside a piece, where they were asked for. */
+  readonly between: readonly ((t: number) => Float64Array)[];
 }
 
-/** A piece without jumps; its nodes include both ends. */
-export interface MixedPiece {
-  readonly fromS: number;
-  readonly toS: number;
-  readonly nodes: readonly MixedNode[];
-  readonly segment: FlowSegment;
-  /** Exact state at any time inside the piece, from the node before. */
-  stateAt(t: number): Float64Array;
+export interface MixedOptions {
+  readonly displacement: Displacement;
+  /** The run of the mixing factor in which it shrinks the volume too. */
+  readonly useMixingVolume: boolean;
+  readonly wantsSlopes: boolean;
+  /** Keeps what is needed to ask for any time. */
+  readonly wantsBetween: boolean;
 }
 
-/** Tolerances of the integration where flows depend on what the spaces hold. */
-const RELATIVE = 1e-8;
-const ABSOLUTE = 1e-11;
-const MAX_STEP_S = 300;
+/** Tolerances where flows depend on what the spaces hold: relative, and as a fraction of a space. */
+const TOLERANCE = { relative: 1e-6, fraction: 1e-10 } as const;
+/** Where a release decays: so close that what comes in is what the release lets out. */
+const DECAY_TOLERANCE = { relative: 1e-8, fraction: 1e-11 } as const;
+/**
+ * Longest step, over the time in which the quickest space is replaced once [-]. Within it the pair
+ * of formulas keeps amounts not below 0 for flows that do not change: its radius of absolute
+ * monotonicity is 5/6.
+ */
+const MOST_TURNOVERS = 0.8;
+const MAX_STEP_S = 1800;
+
+/** What one run works with. */
+interface Run {
+  readonly model: AirModel;
+  readonly options: MixedOptions;
+  readonly pulses: ReadonlyMap<number, readonly ReleasePlan[]>;
+  readonly series: SeriesWork;
+  readonly work: RungeKuttaWork;
+  readonly dense: Float64Array;
+  readonly tolerances: Float64Array;
+  /** Spaces by component. */
+  readonly held: number;
+  readonly timesS: Float64Array;
+  readonly amounts: Float64Array;
+  readonly slopes: Float64Array | undefined;
+  readonly between: ((t: number) => Float64Array)[];
+  state: Float64Array;
+  capacities: Float64Array;
+  stepS: number;
+}
 
 /**
  * The well-mixed answer of all spaces over the whole time, in pieces between jumps.
  *
  *   state  amounts N [m3 at ambient] of each component in each space
- *   balance dN/dt = A N + B (MixedRates), closed by a volume balance in every space
- *   step   exact matrix exponential where A and B are constant; embedded Runge-Kutta 5(4) where an
- *          opening exchanges by density or a release decays
+ *   balance dN/dt = A N + B (MixedBalance), closed by a volume balance in every space
+ *   step   the exponential series (advance) where A and B are constant; embedded Runge-Kutta 5(4)
+ *          where an opening exchanges by density or a release decays
  *   limit  one space without openings is the textbook exponential
  *
- * @param model   resolved input
- * @param timesS  rising times wanted as nodes
- * @param displacement whether a release pushes mixture out
- * @param useMixingVolume the run of the mixing factor in which it shrinks the volume too
+ * @param model    resolved input
+ * @param segments flows between the edges of the model
+ * @param timesS   rising times wanted as nodes
+ * @param options  how releases move the air, and what is wanted
  */
 export function mixedTrack(
   model: AirModel,
+  segments: readonly FlowSegment[],
   timesS: readonly number[],
-  displacement: Displacement,
-  useMixingVolume: boolean,
-): readonly MixedPiece[] {
+  options: MixedOptions,
+): MixedTrack {
   const n = model.spaces.length;
   const m = model.components.length;
-  const pieces: MixedPiece[] = [];
-  let amounts = new Float64Array((n + 2) * m);
-  let capacities = Float64Array.from(model.spaces, (space) => space.capacityM3);
+  const pulses = pulsesOf(model);
+  const firstNode = [0];
+  const nodes: number[] = [];
+  let wanted = 0;
+  for (const { fromS, toS } of segments) {
+    nodes.push(fromS);
+    while ((timesS[wanted] ?? Infinity) <= fromS) wanted++;
+    for (; (timesS[wanted] ?? Infinity) < toS; wanted++) nodes.push(timesS[wanted] ?? toS);
+    nodes.push(toS);
+    firstNode.push(nodes.length);
+  }
+  // What is released at the very end of the run is still shown there.
+  const endS = segments.at(-1)?.toS ?? 0;
+  const endsWithPulse = pulses.has(endS) && segments.length > 0;
+  if (endsWithPulse) {
+    nodes.push(endS);
+    firstNode.push(nodes.length);
+  }
+  const run: Run = {
+    model,
+    options,
+    pulses,
+    series: seriesWork((n + 2) * m),
+    work: rungeKuttaWork((n + 2) * m),
+    dense: new Float64Array(5 * n * m),
+    tolerances: new Float64Array((n + 2) * m),
+    held: n * m,
+    timesS: Float64Array.from(nodes),
+    amounts: new Float64Array(nodes.length * n * m),
+    slopes: options.wantsSlopes ? new Float64Array(nodes.length * n * m) : undefined,
+    between: [],
+    state: startState(model),
+    capacities: Float64Array.from(model.spaces, (space) => space.capacityM3),
+    stepS: 60,
+  };
+  const capacities: Float64Array[] = [];
+  for (const [piece, segment] of segments.entries()) {
+    if (options.useMixingVolume) rescale(run, segment);
+    applyPulses(run, segment, segment.fromS);
+    const balance = mixedBalance(model, segment, run.capacities, options.displacement);
+    const first = firstNode[piece] ?? 0;
+    const until = firstNode[piece + 1] ?? first;
+    if (isSteady(segment)) advancePiece(run, balance, first, until);
+    else integratePiece(run, balance, first, until);
+    capacities.push(run.capacities);
+  }
+  const lastSegment = segments.at(-1);
+  if (endsWithPulse && lastSegment) {
+    applyPulses(run, lastSegment, endS);
+    run.amounts.set(run.state.subarray(0, run.held), (nodes.length - 1) * run.held);
+    const after = Float64Array.from(run.state.subarray(0, run.held));
+    run.between.push(() => after);
+    capacities.push(run.capacities);
+  }
+  return {
+    timesS: run.timesS,
+    firstNode,
+    amounts: run.amounts,
+    slopes: run.slopes,
+    capacities,
+    last: run.state,
+    between: run.between,
+  };
+}
+
+function startState(model: AirModel): Float64Array {
+  const n = model.spaces.length;
+  const m = model.components.length;
+  const state = new Float64Array((n + 2) * m);
   for (const [i, space] of model.spaces.entries()) {
     for (let k = 0; k < m; k++) {
       const held = (space.initial[k] ?? 0) * space.capacityM3;
-      amounts[i * m + k] = held;
-      amounts[(n + 1) * m + k] = (amounts[(n + 1) * m + k] ?? 0) + held;
+      state[i * m + k] = held;
+      state[(n + 1) * m + k] = (state[(n + 1) * m + k] ?? 0) + held;
     }
   }
-  const edges = model.edgesS;
-  let wanted = 0;
-  for (let e = 0; e + 1 < edges.length; e++) {
-    const from = edges[e] ?? 0;
-    const to = edges[e + 1] ?? 0;
-    const segment = flowSegment(model, from, to, displacement);
-    if (useMixingVolume) {
-      const next = Float64Array.from(
-        model.spaces,
-        (space, i) => space.capacityM3 * (segment.mixing[i] ?? 1),
-      );
-      amounts = rescaled(amounts, capacities, next, m);
-      capacities = next;
-    }
-    amounts = afterPulses(model, segment, from, amounts, capacities, displacement);
-    const inside: number[] = [from];
-    while ((timesS[wanted] ?? Infinity) <= from) wanted++;
-    while ((timesS[wanted] ?? Infinity) < to) {
-      inside.push(timesS[wanted] ?? to);
-      wanted++;
-    }
-    inside.push(to);
-    const balance = mixedBalance(model, segment, capacities, displacement);
-    const piece = isSteady(segment)
-      ? steadyPiece(segment, balance, inside, amounts)
-      : integratedPiece(segment, balance, inside, amounts);
-    pieces.push(piece);
-    amounts = Float64Array.from(piece.nodes.at(-1)?.amounts ?? amounts);
-  }
-  // What is released at the very end of the run is still shown there.
-  const end = edges.at(-1) ?? 0;
-  const last = pieces.at(-1);
-  if (last && model.releases.some((one) => one.endS <= one.startS && one.startS === end)) {
-    const after = afterPulses(model, last.segment, end, amounts, capacities, displacement);
-    const node = { t: end, amounts: after, slopes: new Float64Array(after.length), capacities };
-    pieces.push({ ...last, fromS: end, toS: end, nodes: [node], stateAt: () => after });
-  }
-  return pieces;
+  return state;
 }
 
-function rescaled(
-  amounts: Float64Array,
-  before: Float64Array,
-  after: Float64Array,
-  m: number,
-): Float64Array<ArrayBuffer> {
-  const scaled = Float64Array.from(amounts);
-  for (let i = 0; i < before.length; i++) {
-    const factor = (after[i] ?? 1) / (before[i] ?? 1);
-    for (let k = 0; k < m; k++) scaled[i * m + k] = (scaled[i * m + k] ?? 0) * factor;
+function pulsesOf(model: AirModel): ReadonlyMap<number, readonly ReleasePlan[]> {
+  const pulses = new Map<number, ReleasePlan[]>();
+  for (const one of model.releases) {
+    if (one.endS > one.startS) continue;
+    const known = pulses.get(one.startS);
+    if (known) known.push(one);
+    else pulses.set(one.startS, [one]);
   }
-  return scaled;
+  return pulses;
 }
 
-/** State after everything that is released at once at this moment: mixture is pushed out evenly. */
-function afterPulses(
-  model: AirModel,
-  segment: FlowSegment,
-  t: number,
-  amounts: Float64Array,
-  capacities: Float64Array,
-  displacement: Displacement,
-): Float64Array<ArrayBuffer> {
-  const pulses = model.releases.filter((one) => one.endS <= one.startS && one.startS === t);
-  const state = Float64Array.from(amounts);
-  if (pulses.length === 0) return state;
+/** Volumes as the mixing factor of a segment has them; fractions stay. */
+function rescale(run: Run, segment: FlowSegment): void {
+  const m = run.model.components.length;
+  const next = Float64Array.from(
+    run.model.spaces,
+    (space, i) => space.capacityM3 * (segment.mixing[i] ?? 1),
+  );
+  for (let i = 0; i < next.length; i++) {
+    const factor = (next[i] ?? 1) / (run.capacities[i] ?? 1);
+    if (factor === 1) continue;
+    for (let k = 0; k < m; k++) run.state[i * m + k] = (run.state[i * m + k] ?? 0) * factor;
+  }
+  run.capacities = next;
+}
+
+/** Everything that is released at once at this moment: mixture is pushed out evenly. */
+function applyPulses(run: Run, segment: FlowSegment, t: number): void {
+  const pulses = run.pulses.get(t);
+  if (!pulses) return;
+  const { model, options } = run;
   const n = model.spaces.length;
-  const m = model.components.length;
   const net = new Float64Array(n);
-  const sources = new Float64Array(n * m);
+  const sources = new Float64Array(run.held);
   for (const release of pulses) {
-    addRelease(model, release, release.totalM3, sources, displacement);
-    if (displacement === 'pushOut')
+    addRelease(model, release, release.totalM3, sources, options.displacement);
+    if (options.displacement === 'pushOut') {
       net[release.space] = (net[release.space] ?? 0) + release.totalM3;
+    }
   }
   const pulse: FlowSegment = {
     ...segment,
@@ -145,123 +231,102 @@ function afterPulses(
     // A push goes one way through every opening; the exchange needs time.
     links: segment.links.map((link) => ({ ...link, vertical: [], floorHole: undefined })),
   };
-  const rates = mixedBalance(model, pulse, capacities, displacement).at(t, state);
-  return stepped(exponentialStep(rates.matrix, rates.rows, 1), state, rates.sources, rates.rows);
+  const balance = mixedBalance(model, pulse, run.capacities, options.displacement);
+  setFlows(balance, t, run.state);
+  advance(balance, run.state, 1, run.series);
 }
 
-function stepped(
-  step: ExponentialStep,
-  amounts: Float64Array,
-  sources: Float64Array,
-  rows: number,
-): Float64Array<ArrayBuffer> {
-  const m = amounts.length / rows;
-  const next = new Float64Array(amounts.length);
-  for (let i = 0; i < rows; i++) {
-    for (let j = 0; j < rows; j++) {
-      const keep = step.propagator[i * rows + j] ?? 0;
-      const gain = step.integral[i * rows + j] ?? 0;
-      if (keep === 0 && gain === 0) continue;
-      for (let k = 0; k < m; k++) {
-        next[i * m + k] =
-          (next[i * m + k] ?? 0) +
-          keep * (amounts[j * m + k] ?? 0) +
-          gain * (sources[j * m + k] ?? 0);
-      }
+/** A piece whose flows stay as they are: every node exactly from the one before. */
+function advancePiece(run: Run, balance: MixedBalance, first: number, until: number): void {
+  const { timesS, held, state, series } = run;
+  setFlows(balance, timesS[first] ?? 0, state);
+  for (let node = first; node < until; node++) {
+    if (node > first) advance(balance, state, (timesS[node] ?? 0) - (timesS[node - 1] ?? 0), series);
+    run.amounts.set(state.subarray(0, held), node * held);
+    if (run.slopes) {
+      writeSlopes(balance, timesS[node] ?? 0, state, series.rates);
+      run.slopes.set(series.rates.subarray(0, held), node * held);
     }
   }
-  return next;
+  if (!run.options.wantsBetween) return;
+  run.between.push((t) => {
+    const node = nodeBefore(timesS, first, until, t);
+    const from = new Float64Array(state.length);
+    from.set(run.amounts.subarray(node * held, (node + 1) * held));
+    advance(balance, from, t - (timesS[node] ?? t), series);
+    return from.subarray(0, held);
+  });
 }
 
-function steadyPiece(
-  segment: FlowSegment,
-  balance: MixedBalance,
-  times: readonly number[],
-  start: Float64Array,
-): MixedPiece {
-  const rates = balance.at(times[0] ?? 0, start);
-  const fixed = {
-    rows: rates.rows,
-    matrix: Float64Array.from(rates.matrix),
-    sources: Float64Array.from(rates.sources),
-  };
-  const steps = new Map<number, ExponentialStep>();
-  const stepOf = (dt: number): ExponentialStep => {
-    const key = Math.round(dt * 1e9);
-    const known = steps.get(key);
-    if (known) return known;
-    const fresh = exponentialStep(fixed.matrix, fixed.rows, dt);
-    steps.set(key, fresh);
-    return fresh;
-  };
-  const nodes: MixedNode[] = [];
-  let amounts = Float64Array.from(start);
-  let before = times[0] ?? 0;
-  for (const t of times) {
-    if (t > before) amounts = stepped(stepOf(t - before), amounts, fixed.sources, fixed.rows);
-    const slopes = new Float64Array(amounts.length);
-    applyRates(fixed, amounts, slopes);
-    nodes.push({ t, amounts, slopes, capacities: balance.capacities });
-    before = t;
+/** One accepted step, kept for times between the nodes. */
+interface KeptStep {
+  readonly t0: number;
+  readonly t1: number;
+  readonly dense: Float64Array;
+}
+
+/** A piece whose flows follow what the spaces hold, or the time. */
+function integratePiece(run: Run, balance: MixedBalance, first: number, until: number): void {
+  const { timesS, held, work, dense, amounts, slopes, tolerances, capacities } = run;
+  const m = run.model.components.length;
+  const tolerance = balance.segment.decaying.length > 0 ? DECAY_TOLERANCE : TOLERANCE;
+  const whole = capacities.reduce((sum, one) => sum + one, 0);
+  for (let i = 0; i < tolerances.length; i++) {
+    tolerances[i] = tolerance.fraction * (capacities[Math.floor(i / m)] ?? whole);
   }
-  return {
-    fromS: segment.fromS,
-    toS: segment.toS,
-    nodes,
-    segment,
-    stateAt: (t) => {
-      const node = nodeBefore(nodes, t);
-      if (!node || t <= node.t) return node?.amounts ?? start;
-      const step = exponentialStep(fixed.matrix, fixed.rows, t - node.t);
-      return stepped(step, node.amounts, fixed.sources, fixed.rows);
+  const kept: KeptStep[] = [];
+  let node = first;
+  work.before.set(run.state);
+  run.stepS = stepThrough(
+    (t, y, out) => {
+      writeSlopes(balance, t, y, out);
     },
-  };
+    work,
+    timesS[first] ?? 0,
+    timesS[until - 1] ?? 0,
+    {
+      relative: tolerance.relative,
+      absolute: tolerances,
+      firstStepS: run.stepS,
+      longestStepS: () => Math.min(MAX_STEP_S, MOST_TURNOVERS / balance.turnover),
+    },
+    (t0, t1) => {
+      const h = t1 - t0;
+      writeDense(work, h, dense);
+      for (; node < until && (timesS[node] ?? 0) <= t1; node++) {
+        const share = ((timesS[node] ?? 0) - t0) / h;
+        const row = node * held;
+        for (let i = 0; i < held; i++) amounts[row + i] = denseValue(dense, i, share);
+        if (!slopes) continue;
+        for (let i = 0; i < held; i++) slopes[row + i] = denseSlope(dense, i, share) / h;
+      }
+      if (run.options.wantsBetween) kept.push({ t0, t1, dense: Float64Array.from(dense) });
+    },
+  );
+  run.state.set(work.before);
+  if (!run.options.wantsBetween) return;
+  run.between.push((t) => {
+    const out = new Float64Array(held);
+    const step = stepAround(kept, t);
+    if (!step) return out;
+    const share = (t - step.t0) / (step.t1 - step.t0);
+    for (let i = 0; i < held; i++) out[i] = denseValue(step.dense, i, share);
+    return out;
+  });
 }
 
-function integratedPiece(
-  segment: FlowSegment,
-  balance: MixedBalance,
-  times: readonly number[],
-  start: Float64Array,
-): MixedPiece {
-  const derivative = (t: number, y: Float64Array, out: Float64Array): void => {
-    applyRates(balance.at(t, y), y, out);
-  };
-  const steps: AcceptedStep[] = [];
-  const from = times[0] ?? 0;
-  const to = times.at(-1) ?? from;
-  const options = { relative: RELATIVE, absolute: ABSOLUTE, maxStepS: MAX_STEP_S };
-  const end = integratedState(derivative, start, from, to, options, (step) => {
-    steps.push(step);
-    return undefined;
-  });
-  const stateAt = (t: number): Float64Array => {
-    if (t >= to) return end;
-    const step = stepAround(steps, t);
-    if (!step) return start;
-    return Float64Array.from(start, (_, index) => hermiteValue(step, index, t));
-  };
-  const nodes = times.map((t) => {
-    const amounts = stateAt(t);
-    const slopes = new Float64Array(amounts.length);
-    derivative(t, amounts, slopes);
-    return { t, amounts, slopes, capacities: balance.capacities };
-  });
-  return { fromS: segment.fromS, toS: segment.toS, nodes, segment, stateAt };
-}
-
-function nodeBefore(nodes: readonly MixedNode[], t: number): MixedNode | undefined {
-  let low = 0;
-  let high = nodes.length - 1;
+function nodeBefore(timesS: Float64Array, first: number, until: number, t: number): number {
+  let low = first;
+  let high = until - 1;
   while (low < high) {
     const middle = (low + high + 1) >> 1;
-    if ((nodes[middle]?.t ?? Infinity) <= t) low = middle;
+    if ((timesS[middle] ?? Infinity) <= t) low = middle;
     else high = middle - 1;
   }
-  return nodes[low];
+  return low;
 }
 
-function stepAround(steps: readonly AcceptedStep[], t: number): AcceptedStep | undefined {
+function stepAround(steps: readonly KeptStep[], t: number): KeptStep | undefined {
   let low = 0;
   let high = steps.length - 1;
   while (low < high) {

@@ -101,6 +101,50 @@ export function verticalOpeningFlows(
   return differingSides(openings, area, densityA, densityB, netM3PerS);
 }
 
+/**
+ * Both flows through one opening: `major` from the dense side, `minor` from the light one.
+ *
+ *   k_d h^(3/2) - k_l (H - h)^(3/2) = net,  k = (2/3) Cd W sqrt(2 g (rho_d - rho_l)/rho_upstream)
+ *
+ * h is the neutral level above the sill; Newton's method inside a bracket finds it.
+ */
+function oneOpening(
+  opening: VerticalOpening,
+  dense: number,
+  light: number,
+  net: number,
+): { major: number; minor: number } {
+  const H = opening.heightM;
+  const k = (2 / 3) * opening.effectiveWidthM * Math.sqrt(2 * GRAVITY_M_PER_S2 * (dense - light));
+  const kDense = k / Math.sqrt(dense);
+  const kLight = k / Math.sqrt(light);
+  const whole = H * Math.sqrt(H);
+  if (net >= kDense * whole) return { major: net, minor: 0 };
+  if (-net >= kLight * whole) return { major: 0, minor: -net };
+  let low = 0;
+  let high = H;
+  let h = 0.5 * H;
+  for (let i = 0; i < 60; i++) {
+    const rootBelow = Math.sqrt(h);
+    const rootAbove = Math.sqrt(H - h);
+    const excess = kDense * h * rootBelow - kLight * (H - h) * rootAbove - net;
+    if (excess > 0) high = h;
+    else low = h;
+    let next = h - excess / (1.5 * (kDense * rootBelow + kLight * rootAbove));
+    if (!(next > low && next < high)) next = 0.5 * (low + high);
+    const change = Math.abs(next - h);
+    h = next;
+    if (change <= 1e-14 * H) break;
+  }
+  // The net flow is kept exactly; what the search left over goes to the smaller stream.
+  if (net >= 0) {
+    const major = Math.max(net, kDense * h * Math.sqrt(h));
+    return { major, minor: major - net };
+  }
+  const minor = Math.max(-net, kLight * (H - h) * Math.sqrt(H - h));
+  return { major: minor + net, minor };
+}
+
 /** The balance of pressures for two sides whose densities differ for certain. */
 function differingSides(
   openings: readonly VerticalOpening[],
@@ -109,6 +153,15 @@ function differingSides(
   densityB: number,
   netM3PerS: number,
 ): SidesFlow {
+  const [only] = openings;
+  if (only && openings.length === 1) {
+    if (densityA >= densityB) {
+      const { major, minor } = oneOpening(only, densityA, densityB, netM3PerS);
+      return { aToBM3PerS: major, bToAM3PerS: minor };
+    }
+    const { major, minor } = oneOpening(only, densityB, densityA, -netM3PerS);
+    return { aToBM3PerS: minor, bToAM3PerS: major };
+  }
   const slope = GRAVITY_M_PER_S2 * (densityA - densityB);
   const bottom = Math.min(...openings.map((one) => one.sillM));
   const top = Math.max(...openings.map((one) => one.sillM + one.heightM));

@@ -1,0 +1,441 @@
+import { GRAVITY_M_PER_S2, MOLAR_GAS_CONSTANT } from './air-constants.js';
+import { flowsWithNet } from './doorway.js';
+import { rectangularFloorExchange } from './floor-opening.js';
+import { addFlow, addSharedFlow, addVariable, flowTable, type FlowTable } from './flow-table.js';
+import { basinArea } from './layer-geometry.js';
+import { grilleIntake, jetErosion, turbulentExchange, WEIR_CONSTANT } from './layer-flow.js';
+import type { LayerNetwork, LayerSource, LayerWeir } from './layer-network.js';
+import type { LayerParameters } from './layer-parameters.js';
+import type { LayerSegment } from './layer-segment.js';
+import { emptyZoneState, readZones, type ZoneLayout, type ZoneState } from './layer-zones.js';
+import { LINE_PLUME_CONSTANT } from './plume.js';
+import { releasedVolume } from './release-flow.js';
+import { verticalOpeningFlows } from './vertical-openings.js';
+
+/** Depth below which a layer counts as this deep for the smear [m]. */
+const LEAST_SMEAR_DEPTH_M = 1e-3;
+/** Depth over which what is drawn from a thin layer fades, and over which mouths enter it [m]. */
+const RAMP_M = 0.05;
+
+/** A layer begins beyond an edge only from this many times the contrast at which one ends. */
+const BIRTH_CONTRAST = 5;
+
+/** The flows of one segment, worked out anew for a state. */
+export interface LayerFlows {
+  /** Flows at a state, for a step from t to t + h; h 0: the rates of this moment. */
+  at(t: number, h: number, state: Float64Array): FlowTable;
+  /** Fractions and depths of the state last asked. */
+  readonly zones: ZoneState;
+  /** Number of outdoors where a flow begins or ends. */
+  readonly outdoors: number;
+  /** Whether a source or another layer feeds a layer, at the state last asked. */
+  isFed(layer: number): boolean;
+}
+
+/**
+ * The flows of the two-layer model between two edges of the schedule.
+ *
+ *   dVl/dt  = D q + E + F + I + Sl - L - J - O - sg S + Pl (sc - so)
+ *   dnkl/dt = qk + [(D-1) q + E + F] xku + X (xku - xkl) + I xkI + Sl ck
+ *             - (L + J + O + sg S) xkl + Pl bk
+ *   dnku/dt = the same with the other sign, and outdoor air, units, people, neighbours
+ *
+ * each term a flow between two zones with the fraction of the zone it leaves.
+ *
+ * @param network    layers and upper zones
+ * @param layout     layout of the state
+ * @param segment    what stays the same between the edges
+ * @param parameters what the run assumes
+ * @param joined     spaces that have become one mixed zone
+ * @returns flows by state; the same table every call
+ * Source: own-room-air (recommended layer model), robins-2001 for the exchange. Assumes: level
+ * layers, one temperature in the density differences of layers. Accuracy: scenario spread, never
+ * one number.
+ */
+export function layerFlows(
+  network: LayerNetwork,
+  layout: ZoneLayout,
+  segment: LayerSegment,
+  parameters: LayerParameters,
+  joined: ReadonlySet<number>,
+): LayerFlows {
+  const { k, layers, held } = layout;
+  const { model, components, floorLayerOf, ceilingLayerOf } = network;
+  const n = model.spaces.length;
+  const outdoors = layout.zones;
+  const { flows, units } = segment;
+  const zones = emptyZoneState(layout);
+  const { molarMasses, depths } = zones;
+  const air = network.airMolarMassKgPerMol;
+  const intakes = units.intakes.length;
+  const supplies = units.supplies.length;
+  const table = flowTable(
+    3 * layers +
+      4 * n +
+      2 * segment.sources.length +
+      3 * segment.weirs.length +
+      4 * intakes +
+      3 * supplies +
+      2 * segment.transfers.length +
+      4 * flows.links.length,
+    segment.weirs.length +
+      intakes +
+      supplies +
+      n +
+      segment.transfers.length +
+      2 * flows.links.length,
+    held,
+    k,
+  );
+  const fed = new Uint8Array(layers);
+  const net = new Float64Array(n);
+  const pressure = new Float64Array(n);
+  let state = new Float64Array(0);
+
+  const upperOf = (space: number): number => layers + (network.groupOf[space] ?? 0);
+  const layerIn = (space: number, list: readonly number[]): number =>
+    joined.has(space) ? -1 : (list[space] ?? -1);
+  const volume = (layer: number): number => state[layer] ?? 0;
+  const areaAt = (layer: number): number => {
+    const basin = network.layers[layer]?.basin;
+    return basin ? basinArea(basin, depths[layer] ?? 0) : 1;
+  };
+  /** Excess of a layer's molar mass over an upper zone's, along the side of the layer. */
+  const excess = (layer: number, upper: number): number => {
+    const sign = network.layers[layer]?.side === 'ceiling' ? -1 : 1;
+    return Math.max(0, sign * ((molarMasses[layer] ?? air) - (molarMasses[upper] ?? air)));
+  };
+  const addSource = (zone: number, column: number, flow: number): void => {
+    const at = zone * k + column;
+    table.amountSource[at] = (table.amountSource[at] ?? 0) + flow;
+  };
+  const addVolume = (zone: number, flow: number): void => {
+    table.volumeSource[zone] = (table.volumeSource[zone] ?? 0) + flow;
+  };
+  /** Air that leaves a space without a unit: from above, or by choice from the floor layer. */
+  const leave = (space: number, to: number, flow: number): void => {
+    if (flow <= 0) return;
+    const upper = upperOf(space);
+    const layer = parameters.surplusFromLayer > 0 ? layerIn(space, floorLayerOf) : -1;
+    if (layer < 0 || volume(layer) <= 0) {
+      addFlow(table, upper, to, flow);
+      return;
+    }
+    const share = parameters.surplusFromLayer * Math.min(1, (depths[layer] ?? 0) / RAMP_M);
+    const low = flow * share;
+    addVariable(table, low, layer, low / volume(layer), flow);
+    addSharedFlow(table, layer, to, 0, 1);
+    addSharedFlow(table, upper, to, flow, -1);
+  };
+
+  const sourceFlow = (source: LayerSource, t: number, h: number): number => {
+    const { plan } = source;
+    if (plan.decayS === undefined) return plan.totalM3 / (plan.endS - plan.startS);
+    const span = h > 0 ? h : 1e-3;
+    return (releasedVolume(plan, t + span) - releasedVolume(plan, t)) / span;
+  };
+  const addRelease = (source: LayerSource, q: number): void => {
+    const { plan } = source;
+    const upper = upperOf(plan.space);
+    const layer = source.layer >= 0 && !joined.has(plan.space) ? source.layer : -1;
+    const to = layer >= 0 ? layer : upper;
+    for (const { column, share } of source.columns) {
+      addSource(to, column, q * share);
+      table.into[column] = (table.into[column] ?? 0) + q * share;
+      if (components[column]?.gas === 'O2') {
+        addSource(to, 0, q * share);
+        table.into[0] = (table.into[0] ?? 0) + q * share;
+      }
+    }
+    addVolume(to, q * (1 - source.airShare));
+    addFlow(table, outdoors, to, q * source.airShare);
+    if (layer < 0 || q <= 0) return;
+    fed[layer] = 1;
+    const dilution = dilutionOf(source, parameters.sourceDilution);
+    const entrained =
+      source.plumeRiseM === undefined
+        ? (dilution - 1) * q
+        : parameters.plumeConstant *
+          Math.cbrt(source.gZero * q) *
+          Math.max(0, source.plumeRiseM - (depths[layer] ?? 0)) ** (5 / 3);
+    addFlow(table, upper, layer, entrained);
+  };
+
+  const addMixing = (h: number): void => {
+    for (let l = 0; l < layers; l++) {
+      const layer = network.layers[l];
+      if (!layer || joined.has(layer.space)) continue;
+      if (volume(l) <= 0 && fed[l] === 0) continue;
+      const upper = layers + layer.group;
+      const area = areaAt(l);
+      if (area <= 0) continue;
+      const mean = volume(l) / area;
+      if (parameters.diffusion > 0) {
+        // h^2 grows evenly while a layer only smears, so the mean over the step is known exactly.
+        const depth = Math.max(mean, LEAST_SMEAR_DEPTH_M);
+        const growth = Math.PI * layer.diffusivityM2PerS;
+        const deeper =
+          h > 0 ? (Math.sqrt(depth * depth + growth * h) - depth) / h : growth / (2 * depth);
+        addFlow(table, upper, l, area * deeper);
+      }
+      const gPrime = (GRAVITY_M_PER_S2 * excess(l, upper)) / air;
+      const exchange =
+        area *
+        (turbulentExchange(parameters.turbulenceMPerS, gPrime, mean) + parameters.walkingMPerS);
+      addFlow(table, upper, l, exchange);
+      addFlow(table, l, upper, exchange);
+    }
+  };
+
+  const addOutwardWeir = (weir: LayerWeir): void => {
+    const layer = network.layers[weir.a];
+    if (!layer || joined.has(layer.space)) return;
+    const depth = (depths[weir.a] ?? 0) - weir.sillA;
+    if (depth <= 0) return;
+    const head = Math.min(depth, weir.heightM);
+    const sign = layer.side === 'ceiling' ? -1 : 1;
+    const difference = Math.max(
+      0,
+      sign * ((molarMasses[weir.a] ?? air) - network.outdoorMolarMassKgPerMol),
+    );
+    const speed =
+      (weir.dischargeCoefficient / 3) *
+      weir.widthM *
+      smoothRoot((GRAVITY_M_PER_S2 * difference) / air);
+    const flow = speed * head ** 1.5;
+    if (flow <= 0) return;
+    const slope = depth < weir.heightM ? (1.5 * speed * Math.sqrt(head)) / areaAt(weir.a) : 0;
+    // What leaves through the lower part of an opening comes back as air through the rest.
+    addVariable(table, flow, weir.a, Math.max(slope, flow / volume(weir.a)), Infinity);
+    addSharedFlow(table, weir.a, outdoors, 0, 1);
+    addSharedFlow(table, outdoors, layers + layer.group, 0, 1);
+  };
+  /** Own part of a layer in a weir: its flow without the other side, and the slope to its volume. */
+  const own = { flow: 0, slope: 0 };
+  const readOwn = (weir: LayerWeir, layer: number, upper: number, sill: number): void => {
+    own.flow = 0;
+    own.slope = 0;
+    const head = (depths[layer] ?? 0) - sill;
+    if (head <= 0 || volume(layer) <= 0) return;
+    const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
+    const speed = WEIR_CONSTANT * weir.widthM * smoothRoot(gravity);
+    own.flow = speed * head ** 1.5;
+    own.slope = Math.max((1.5 * speed * Math.sqrt(head)) / areaAt(layer), own.flow / volume(layer));
+  };
+  const addWeir = (weir: LayerWeir): void => {
+    const first = network.layers[weir.a];
+    const second = network.layers[weir.b];
+    if (!first || !second) return;
+    const upperA = layers + first.group;
+    const upperB = layers + second.group;
+    if (joined.has(first.space)) own.flow = own.slope = 0;
+    else readOwn(weir, weir.a, upperB, weir.sillA);
+    const flowA = own.flow;
+    const slopeA = own.slope;
+    if (joined.has(second.space)) own.flow = own.slope = 0;
+    else readOwn(weir, weir.b, upperA, weir.sillB);
+    const flow = flowA - own.flow;
+    if (flow === 0) return;
+    const forward = flow > 0;
+    const size = Math.abs(flow);
+    const donor = forward ? weir.a : weir.b;
+    const receiver = forward ? weir.b : weir.a;
+    const donorUpper = forward ? upperA : upperB;
+    const receiverUpper = forward ? upperB : upperA;
+    // Below some contrast any draught decides, not the gas: what comes over the edge then mixes.
+    const least = volume(receiver) > 0 ? 1 : BIRTH_CONTRAST;
+    const isWeak = excess(donor, receiverUpper) < least * parameters.joinContrast * air;
+    const target =
+      isWeak || joined.has((forward ? second : first).space) ? receiverUpper : receiver;
+    addVariable(
+      table,
+      size,
+      donor,
+      forward ? slopeA : own.slope,
+      Infinity,
+      receiver,
+      forward ? -own.slope : -slopeA,
+    );
+    addSharedFlow(table, donor, target, 0, 1);
+    addSharedFlow(table, receiverUpper, donorUpper, 0, 1);
+    if (target !== receiver) return;
+    fed[receiver] = 1;
+    const fall = (forward ? weir.sillB : weir.sillA) - (depths[receiver] ?? 0);
+    if (fall <= 0) return;
+    const gPrime = (GRAVITY_M_PER_S2 * excess(donor, receiverUpper)) / air;
+    const plume =
+      LINE_PLUME_CONSTANT * Math.cbrt((gPrime * size) / weir.widthM) * weir.widthM * fall;
+    addFlow(table, receiverUpper, receiver, parameters.fallEntrainment * Math.max(0, plume - size));
+  };
+
+  const addUnits = (): void => {
+    for (const intake of units.intakes) {
+      const total = intake.grille.flowM3PerS;
+      if (total <= 0) continue;
+      const upper = upperOf(intake.space);
+      const mixer = held + intake.system;
+      const outdoorShare = intake.outdoorM3PerS / total;
+      const list = intake.level === 'low' ? floorLayerOf : ceilingLayerOf;
+      const layer = intake.level === 'mixed' ? -1 : layerIn(intake.space, list);
+      const full = layer >= 0 ? volume(layer) : 0;
+      let fromLayer = 0;
+      if (full > 0) {
+        const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
+        fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0);
+      }
+      if (fromLayer <= 0) {
+        addFlow(table, upper, outdoors, total * outdoorShare);
+        addFlow(table, upper, mixer, total * (1 - outdoorShare));
+        continue;
+      }
+      // Between plug flow and the thin-layer limit the intake grows with depth to the power 1.25.
+      const slope = fromLayer < total ? (1.25 * fromLayer) / full : fromLayer / full;
+      addVariable(table, fromLayer, layer, slope, total);
+      addSharedFlow(table, layer, outdoors, 0, outdoorShare);
+      addSharedFlow(table, layer, mixer, 0, 1 - outdoorShare);
+      addSharedFlow(table, upper, outdoors, total * outdoorShare, -outdoorShare);
+      addSharedFlow(table, upper, mixer, total * (1 - outdoorShare), outdoorShare - 1);
+    }
+    for (const supply of units.supplies) {
+      const layer = supply.level === 'low' ? layerIn(supply.space, floorLayerOf) : -1;
+      const to = layer >= 0 && volume(layer) > 0 ? layer : upperOf(supply.space);
+      addFlow(table, outdoors, to, supply.freshM3PerS);
+      addFlow(table, held + supply.system, to, supply.recirculatedM3PerS);
+      if (supply.jet === undefined) continue;
+      const below = layerIn(supply.space, floorLayerOf);
+      if (below < 0 || volume(below) <= 0) continue;
+      const upper = upperOf(supply.space);
+      const gPrime = (GRAVITY_M_PER_S2 * excess(below, upper)) / air;
+      const flow =
+        parameters.jets *
+        jetErosion(supply.jet.radiusM, supply.jet.speedMPerS, gPrime) *
+        Math.min(1, (depths[below] ?? 0) / RAMP_M);
+      if (flow <= 0) continue;
+      addVariable(table, flow, below, flow / volume(below), Infinity);
+      addSharedFlow(table, below, upper, 0, 1);
+    }
+  };
+
+  const addPeople = (): void => {
+    for (const one of segment.breath) {
+      const layer = one.heightM === undefined ? -1 : layerIn(one.space, floorLayerOf);
+      const inside =
+        layer >= 0 && one.heightM !== undefined && volume(layer) > 0
+          ? Math.min(1, Math.max(0, ((depths[layer] ?? 0) - one.heightM) / RAMP_M))
+          : 0;
+      for (let i = 0; i < 2; i++) {
+        const zone = i === 0 ? upperOf(one.space) : layer;
+        const share = i === 0 ? 1 - inside : inside;
+        if (zone < 0 || share <= 0) continue;
+        addSource(zone, 1, share * one.carbonDioxide);
+        addSource(zone, 0, -share * one.oxygen);
+        addVolume(zone, share * (one.carbonDioxide - one.oxygen));
+      }
+      table.into[1] = (table.into[1] ?? 0) + one.carbonDioxide;
+      table.out[0] = (table.out[0] ?? 0) + one.oxygen;
+    }
+  };
+
+  const densityOf = (space: number): number => {
+    const { pressurePa, temperatureK } = model.input.ambient;
+    const molar =
+      space < n ? (molarMasses[upperOf(space)] ?? air) : network.outdoorMolarMassKgPerMol;
+    const at = model.spaces[space]?.temperatureK ?? temperatureK;
+    return (molar * pressurePa) / (MOLAR_GAS_CONSTANT * at);
+  };
+  const pass = (from: number, to: number, flow: number): void => {
+    if (from >= n) addFlow(table, outdoors, upperOf(to), flow);
+    else leave(from, to >= n ? outdoors : upperOf(to), flow);
+  };
+  const addNeighbours = (t: number, h: number): void => {
+    net.set(flows.net);
+    for (const source of segment.sources) {
+      if (source.plan.decayS === undefined) continue;
+      const { space } = source.plan;
+      net[space] = (net[space] ?? 0) + sourceFlow(source, t, h);
+    }
+    for (let i = 0; i < n; i++) {
+      let value = 0;
+      for (let j = 0; j < n; j++) {
+        value += (flows.pressures[i * n + j] ?? 0) * (net[j] ?? 0);
+      }
+      pressure[i] = value;
+      const leak = value * (flows.leakM2[i] ?? 0);
+      if (leak > 0) leave(i, outdoors, leak);
+      else addFlow(table, outdoors, upperOf(i), -leak);
+      addFlow(table, outdoors, upperOf(i), segment.infiltration[i] ?? 0);
+    }
+    for (const { from, to, flow } of segment.transfers) {
+      if (from >= 0) leave(from, to >= 0 ? upperOf(to) : outdoors, flow);
+      else if (to >= 0) addFlow(table, outdoors, upperOf(to), flow);
+    }
+    for (const link of flows.links) {
+      const { a, b } = link;
+      const through = link.conductanceM2 * ((pressure[a] ?? 0) - (pressure[b] ?? 0));
+      if (a < n && b < n && upperOf(a) === upperOf(b)) continue;
+      const densityA = densityOf(a);
+      const densityB = densityOf(b);
+      if (link.floorHole) {
+        const gPrime = (2 * GRAVITY_M_PER_S2 * (densityA - densityB)) / (densityA + densityB);
+        const { widthM, lengthM } = link.floorHole;
+        const both = flowsWithNet(rectangularFloorExchange(widthM, lengthM, gPrime), through);
+        pass(a, b, both.outM3PerS);
+        pass(b, a, both.inM3PerS);
+      } else {
+        const both = verticalOpeningFlows(link.vertical, densityA, densityB, through);
+        pass(a, b, both.aToBM3PerS);
+        pass(b, a, both.bToAM3PerS);
+      }
+    }
+  };
+
+  return {
+    zones,
+    outdoors,
+    isFed: (layer) => fed[layer] === 1,
+    at: (t, h, now) => {
+      state = now as Float64Array<ArrayBuffer>;
+      table.count = 0;
+      table.variables = 0;
+      table.volumeSource.fill(0);
+      table.amountSource.fill(0);
+      table.into.fill(0);
+      table.out.fill(0);
+      fed.fill(0);
+      readZones(network, layout, segment.excess, state, zones);
+      for (const source of segment.sources) addRelease(source, sourceFlow(source, t, h));
+      for (const weir of segment.weirs) {
+        if (weir.b < 0) addOutwardWeir(weir);
+        else addWeir(weir);
+      }
+      addMixing(h);
+      addUnits();
+      addPeople();
+      addNeighbours(t, h);
+      return table;
+    },
+  };
+}
+
+/**
+ * First dilution of a release in one run [-].
+ *
+ * A sampled value spans 1 to 10 for what is let out gently; what bursts or blows is diluted tenfold
+ * at least, so for it the same draw spans its own range.
+ */
+function dilutionOf(source: LayerSource, sampled: number | undefined): number {
+  if (sampled === undefined) return source.manner.dilution;
+  const { dilutionLow, dilutionHigh } = source.manner;
+  if (dilutionLow < 10) return sampled;
+  return dilutionLow * (dilutionHigh / dilutionLow) ** Math.min(1, Math.log10(sampled));
+}
+
+/** Reduced gravity below which its root is made smooth [m/s2]: 0.2 ppm of carbon dioxide. */
+const SMOOTH_BELOW = 1e-5;
+
+/** Square root that ends in a smooth slope, so that flows fade and do not chatter. */
+function smoothRoot(gravity: number): number {
+  if (gravity >= SMOOTH_BELOW) return Math.sqrt(gravity);
+  const share = gravity / SMOOTH_BELOW;
+  return Math.sqrt(SMOOTH_BELOW) * share * (1.5 - 0.5 * share);
+}
