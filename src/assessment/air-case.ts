@@ -135,6 +135,21 @@ export function dayWindow(plan: ResolvedPlan): DayWindow {
   };
 }
 
+/**
+ * The day carried on until the last cold stock that stays in a space has left it or is all gas: a
+ * cold source ends with its mass, not with the show. The day itself where nothing stays.
+ */
+export function coldWindow(plan: ResolvedPlan, day: DayWindow): DayWindow {
+  const spaces = new Set(plan.spaces.map((space) => space.id));
+  const ends = plan.stock
+    .filter((item) => isCold(item) && spaces.has(item.place))
+    .map((item) => {
+      const startS = Math.max(item.fromS ?? day.startS, day.startS);
+      return Math.min(item.toS ?? Infinity, startS + 3600 / item.idleLossPerHour);
+    });
+  return { startS: day.startS, endS: Math.ceil(Math.max(day.endS, ...ends) / 60) * 60 };
+}
+
 /** The window of a worst credible release that begins at a given time. */
 export function worstWindow(day: DayWindow, startS: number): DayWindow {
   return { startS: Math.min(day.startS, startS), endS: startS + afterWorstS };
@@ -247,9 +262,14 @@ function freeShare(space: ResolvedSpace): number {
   return share < fullEnough ? share : 1;
 }
 
+/** More results than this are not kept: an unwatched box that lasts for weeks changes slowly. */
+const mostResults = 2880;
+
 /** Seconds between results: fine enough for a one-minute mean, coarse enough for a long day. */
 export function outputInterval(window: DayWindow): number {
-  return window.endS - window.startS > 4 * 3600 ? 60 : 30;
+  const lengthS = window.endS - window.startS;
+  if (lengthS <= 4 * 3600) return 30;
+  return Math.max(60, 60 * Math.ceil(lengthS / mostResults / 60));
 }
 
 /**

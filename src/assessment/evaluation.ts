@@ -3,6 +3,7 @@ import { actsBehind } from './act-attribution.js';
 import type { AirAnswers } from './air-answers.js';
 import {
   airCase,
+  coldWindow,
   dayWindow,
   idleReleases,
   plannedReleases,
@@ -61,8 +62,9 @@ function outcomesOf(
   caseName: 'planned' | 'fansOff' | 'worstCredible',
   resolved: ResolvedPlan,
   levelsOf: Evaluation['levelsOf'],
+  isBrief = false,
 ): readonly ZoneOutcome[] {
-  const full = answers(air.input, 'full');
+  const full = answers(air.input, isBrief ? 'mixed' : 'full');
   const straight = answers(air.input, 'straight');
   return zoneOutcomes(air, full, straight, caseName, resolved.groups, levelsOf);
 }
@@ -82,8 +84,27 @@ function worseOutcomes(
   });
 }
 
-/** The planned day with nothing running, and where plant recirculates also with no fresh air in it. */
+/**
+ * The planned day with nothing running, and where plant recirculates also with no fresh air in it.
+ * Cold stock that stays is followed, still with nothing running, until it is all gas.
+ */
 function fansOffOutcomes(
+  resolved: ResolvedPlan,
+  releases: readonly PlacedRelease[],
+  day: DayWindow,
+  planned: readonly ZoneOutcome[],
+  outcomes: (air: AirCase, isBrief: boolean) => readonly ZoneOutcome[],
+): readonly ZoneOutcome[] {
+  const ofDay = fansOffDay(resolved, releases, day, planned, (air) => outcomes(air, false));
+  const window = coldWindow(resolved, day);
+  if (window.endS <= day.endS) return ofDay;
+  const untilGone = [...idleReleases(resolved, window), ...plannedReleases(resolved)];
+  return worseOutcomes(ofDay, outcomes(airCase(resolved, untilGone, window, 'fansOff'), true)).map(
+    (outcome) => ({ ...outcome, caseName: 'fansOff' as const }),
+  );
+}
+
+function fansOffDay(
   resolved: ResolvedPlan,
   releases: readonly PlacedRelease[],
   day: DayWindow,
@@ -151,8 +172,8 @@ export function evaluation(
   const dayAir = airCase(resolved, dayReleases, day, 'planned');
   const dayResult = answers(dayAir.input, 'full');
   const planned = outcomesOf(dayAir, answers, 'planned', resolved, levelsOf);
-  const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air) =>
-    outcomesOf(air, answers, 'fansOff', resolved, levelsOf),
+  const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air, isBrief) =>
+    outcomesOf(air, answers, 'fansOff', resolved, levelsOf, isBrief),
   );
 
   const worst = worstReleases(resolved, policy).map((one) => {

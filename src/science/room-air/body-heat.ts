@@ -1,12 +1,12 @@
 /** Reduced gravity below which body heat lifts a layer to the mouth [m/s2]: 3 % carbon dioxide. */
-export const BODY_HEAT_GRAVITY = 0.15;
+export const BODY_HEAT_GRAVITY = 0.153;
 /** A layer shallower than this over the floor of a person lifts nothing to the mouth [m]. */
 export const BODY_HEAT_DEPTH_M = 0.05;
 
 /**
  * Whether a standing or sitting person breathes the layer whatever the mouth height.
  *
- *   g' < 0.15 m/s2 and the layer lies at least 5 cm deep over the own floor
+ *   g' < 0.153 m/s2 and the layer lies at least 5 cm deep over the own floor
  *
  * @param gPrime reduced gravity of the layer, air as reference [m/s2]
  * @param depthM depth of the layer over the floor of the person [m]
