@@ -30,6 +30,7 @@ import {
 import type { Evaluation } from './evaluation.js';
 import { freshAirOf, levelFigure, statisticFigure, plainFigure, sourceText } from './figures.js';
 import { planFindings } from './findings.js';
+import { driverResults, samplingOf } from './driver-results.js';
 import { holdTimes } from './hold-times.js';
 import { atNineDigits, canonicalHash } from './input-hash.js';
 import { knowledge, type Knowledge } from './knowledge.js';
@@ -552,7 +553,9 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     cautions: cautionsFor(data.catalogue.cautions, facts),
     assumptions: assumptionsOf(shown),
     events: dayEvents(shown),
-    section: sectionView(shown, drawnMoment(shown), 'when the planned day is at its worst'),
+    section: sectionView(shown, drawnMoment(shown), 'when the planned day is at its worst', nameOf),
+    drivers: driverResults(shown),
+    sampling: samplingOf(shown),
     site: {
       pressure: plainFigure(resolved.site.pressurePa, 'Pa', siteWords),
       temperature: plainFigure(resolved.site.temperatureK, 'K', {

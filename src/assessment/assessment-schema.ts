@@ -71,6 +71,18 @@ const zone = object({
       levels: object({ aim: orNull(figure), limit: orNull(figure), never: orNull(figure) }),
       standing: Type.Enum(['meets aim', 'meets limit', 'below limit', 'past never']),
       crossings: list(object({ level: Type.Enum(['aim', 'limit', 'never']), answer, at: figure })),
+      readings: list(
+        object({
+          atS: number,
+          why: list(object({ answer, what: Type.Enum(['worst', 'aim', 'limit', 'never']) })),
+          values: object({
+            mixed: optional(number),
+            layered: optional(number),
+            layeredP50: optional(number),
+            bound: optional(number),
+          }),
+        }),
+      ),
     }),
   ),
   series: list(
@@ -84,6 +96,15 @@ const zone = object({
   ),
   notComputed: orNull(text),
 });
+
+const layers = list(
+  object({
+    space: text,
+    at: Type.Enum(['floor', 'ceiling', 'whole']),
+    depthM: number,
+    gasFraction: figure,
+  }),
+);
 
 const schema = Type.Object(
   {
@@ -280,16 +301,39 @@ const schema = Type.Object(
           highestGas: orNull(figure),
         }),
       ),
-      layers: list(
+      layers,
+      moment: text,
+      meters: optional(list(object({ id: text, title: text, space: text, levelM: number }))),
+      moments: list(
         object({
-          space: text,
-          at: Type.Enum(['floor', 'ceiling', 'whole']),
-          depthM: number,
-          gasFraction: figure,
+          atS: number,
+          caseName: Type.Enum(['planned', 'worstCredible']),
+          kind: Type.Enum(['cue', 'worst']),
+          title: text,
+          layers,
+          zones: list(
+            object({
+              id: text,
+              oxygen: orNull(figure),
+              oxygenBound: orNull(figure),
+              gas: orNull(figure),
+              gasTitle: orNull(text),
+            }),
+          ),
         }),
       ),
-      moment: text,
     }),
+    drivers: list(
+      object({
+        zone: text,
+        zoneTitle: text,
+        quantity: text,
+        input: text,
+        inputTitle: text,
+        rankCorrelation: number,
+      }),
+    ),
+    sampling: orNull(object({ samples: number, seed: number })),
     site: object({
       pressure: figure,
       temperature: figure,

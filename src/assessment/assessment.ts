@@ -122,9 +122,24 @@ export interface ZoneQuantity {
   };
   readonly standing: 'meets aim' | 'meets limit' | 'below limit' | 'past never';
   readonly crossings: readonly Crossing[];
+  /** The answers side by side where one is at its worst or passes a level, in the order of time. */
+  readonly readings: readonly Reading[];
 }
 
-/** One series for the curve; times in seconds after midnight of the event day. */
+export interface Reading {
+  /** Seconds after midnight of the event day. */
+  readonly atS: number;
+  readonly why: readonly {
+    readonly answer: Answer;
+    readonly what: 'worst' | 'aim' | 'limit' | 'never';
+  }[];
+  readonly values: Partial<Record<Answer, number>>;
+}
+
+/**
+ * One series for the curve; times in seconds after midnight of the event day. Points that a straight
+ * line between their neighbours shows as well are left out; the two ends of the band share their times.
+ */
 export interface ZoneSeries {
   readonly caseName: CaseName;
   readonly quantity: string;
@@ -322,13 +337,61 @@ export interface SectionView {
     readonly highestGas: Figure | null;
   }[];
   /** Gas drawn at the moment of the governing number. */
-  readonly layers: readonly {
-    readonly space: string;
-    readonly at: 'floor' | 'ceiling' | 'whole';
-    readonly depthM: number;
-    readonly gasFraction: Figure;
-  }[];
+  readonly layers: readonly SectionLayer[];
   readonly moment: string;
+  /** Where the meters of the plan hang. */
+  readonly meters?: readonly {
+    readonly id: string;
+    readonly title: string;
+    readonly space: string;
+    readonly levelM: number;
+  }[];
+}
+
+export interface SectionLayer {
+  readonly space: string;
+  readonly at: 'floor' | 'ceiling' | 'whole';
+  readonly depthM: number;
+  readonly gasFraction: Figure;
+}
+
+/** The air at one moment worth a look: when a cue begins or ends, or when a case is at its worst. */
+export interface SectionMoment {
+  readonly atS: number;
+  readonly caseName: 'planned' | 'worstCredible';
+  readonly kind: 'cue' | 'worst';
+  readonly title: string;
+  readonly layers: readonly SectionLayer[];
+  /** What is breathed then; the answer that judges (layered, or mixed where none) and the bound. */
+  readonly zones: readonly {
+    readonly id: string;
+    readonly oxygen: Figure | null;
+    readonly oxygenBound: Figure | null;
+    readonly gas: Figure | null;
+    readonly gasTitle: string | null;
+  }[];
+}
+
+/** The section of an assessment: the view at the governing number, and the other moments. */
+export interface SectionOfDay extends SectionView {
+  readonly moments: readonly SectionMoment[];
+}
+
+/** How strongly one uncertain input moves the layered answer of a zone on the planned day. */
+export interface DriverResult {
+  readonly zone: string;
+  readonly zoneTitle: string;
+  readonly quantity: string;
+  readonly input: string;
+  readonly inputTitle: string;
+  /** Spearman, -1 to 1, with the worst value of the quantity. */
+  readonly rankCorrelation: number;
+}
+
+/** How the band of the layered answer was drawn. */
+export interface Sampling {
+  readonly samples: number;
+  readonly seed: number;
 }
 
 export interface Assessment {
@@ -360,7 +423,10 @@ export interface Assessment {
   readonly cautions: readonly { readonly id: string; readonly text: string }[];
   readonly assumptions: readonly StatedAssumption[];
   readonly events: readonly DayEvent[];
-  readonly section: SectionView;
+  readonly section: SectionOfDay;
+  readonly drivers: readonly DriverResult[];
+  /** Null where nothing was sampled. */
+  readonly sampling: Sampling | null;
   readonly site: {
     readonly pressure: Figure;
     readonly temperature: Figure;

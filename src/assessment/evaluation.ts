@@ -36,6 +36,13 @@ import type { ResolvedGroup, ResolvedPlan } from './resolved-plan.js';
 import { worstReleases, type WorstRelease } from './worst-releases.js';
 import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 
+/** One thing that goes wrong, with the air that follows. */
+export interface WorstCase extends WorstRelease {
+  readonly air: AirCase;
+  readonly result: AirResult;
+  readonly outcomes: readonly ZoneOutcome[];
+}
+
 /** A plan worked through once, at chosen ends of its open figures. */
 export interface Evaluation {
   readonly plan: PlanFile;
@@ -47,7 +54,7 @@ export interface Evaluation {
   readonly dayResult: AirResult;
   readonly planned: readonly ZoneOutcome[];
   readonly fansOff: readonly ZoneOutcome[];
-  readonly worst: readonly (WorstRelease & { readonly outcomes: readonly ZoneOutcome[] })[];
+  readonly worst: readonly WorstCase[];
   readonly places: readonly PlaceFailure[];
   readonly facts: FactValues;
   readonly refusals: readonly Refusal[];
@@ -181,7 +188,8 @@ export function evaluation(
     const before = dayReleases.filter(({ startS }) => startS < one.startS);
     const window = worstWindow(day, one.startS);
     const air = airCase(resolved, [...before, ...one.placed], window, 'planned');
-    return { ...one, outcomes: outcomesOf(air, answers, 'worstCredible', resolved, levelsOf) };
+    const outcomes = outcomesOf(air, answers, 'worstCredible', resolved, levelsOf);
+    return { ...one, air, result: answers(air.input, 'full'), outcomes };
   });
 
   const places = placeFailures(plan, resolved, levels.crew);

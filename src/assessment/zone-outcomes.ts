@@ -29,6 +29,8 @@ export interface ZoneOutcome {
   readonly level: JudgedLevel;
   readonly answers: Readonly<Partial<Record<Answer, AnswerOutcome>>>;
   readonly timesS: readonly number[];
+  /** The ends of the layered answer that 5 and 95 in 100 draws stay below, where it was sampled. */
+  readonly band?: { readonly p05: readonly number[]; readonly p95: readonly number[] };
   /** Lowest wet partial pressure of oxygen by answer [Pa]. */
   readonly oxygenPressurePa: Readonly<Partial<Record<Answer, number>>>;
 }
@@ -152,6 +154,13 @@ function worseTrack(a: Track, b: Track, level: JudgedLevel): Track {
   };
 }
 
+function bandOf(height: HeightAir, level: JudgedLevel): Pick<ZoneOutcome, 'band'> {
+  const { p05, p95 } = height.layered ?? {};
+  const low = p05 && seriesOf(p05, level);
+  const high = p95 && seriesOf(p95, level);
+  return low && high ? { band: { p05: low, p95: high } } : {};
+}
+
 /** The answers at one height, by name; the layered answer L is the worse of M and the layered P95. */
 function answersAt(
   height: HeightAir,
@@ -229,6 +238,7 @@ export function zoneOutcomes(
             level,
             answers,
             timesS: result.timesS.map((t) => t + originS),
+            ...bandOf(height, level),
             oxygenPressurePa:
               level.quantity === 'oxygenFraction'
                 ? {

@@ -2,12 +2,14 @@ import type {
   Answer,
   CaseName,
   Crossing,
+  Reading,
   ZoneQuantity,
   ZoneResult,
   ZoneSeries,
 } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { levelFigure, outcomeFigure, plainFigure } from './figures.js';
+import { linePoints } from './line-points.js';
 import type { LevelName } from './levels.js';
 import { openVessels } from './open-vessels.js';
 import { quantityWords } from './quantity-words.js';
@@ -78,24 +80,87 @@ function zoneQuantity(
     },
     standing: standingOf(outcome),
     crossings: crossingsOf(outcome),
+    readings: readingsOf(outcome),
   };
 }
 
+/** The answers where one of them is at its worst, or just past a level. */
+function readingsOf({ answers: found, timesS, level }: ZoneOutcome): readonly Reading[] {
+  const rows = new Map<number, { atS: number; why: Reading['why'][number][] }>();
+  const note = (index: number, atS: number, why: Reading['why'][number]) => {
+    const row = rows.get(index) ?? { atS, why: [] };
+    rows.set(index, { atS: Math.min(row.atS, atS), why: [...row.why, why] });
+  };
+  for (const answer of answers) {
+    const one = found[answer];
+    if (!one) continue;
+    note(closestTo(timesS, one.atS), one.atS, { answer, what: 'worst' });
+    for (const name of levelNames) {
+      const atS = one.firstPast[name];
+      if (atS === undefined) continue;
+      // A level is told at the output time before it is passed; the values are those after it.
+      const next = Math.min(closestTo(timesS, atS) + 1, timesS.length - 1);
+      note(next, atS, { answer, what: name });
+    }
+  }
+  return [...rows]
+    .sort(([one], [other]) => one - other)
+    .map(([index, { atS, why }]) => ({
+      atS,
+      why,
+      values: Object.fromEntries(
+        answers.flatMap((answer) => {
+          const one = found[answer];
+          if (!one) return [];
+          const isWorst = why.some((row) => row.answer === answer && row.what === 'worst');
+          const value = isWorst ? one.value : one.series[index];
+          return value === undefined ? [] : [[answer, value * level.scale]];
+        }),
+      ),
+    }));
+}
+
+function closestTo(timesS: readonly number[], atS: number): number {
+  const after = timesS.findIndex((time) => time >= atS);
+  if (after < 0) return timesS.length - 1;
+  const before = after - 1;
+  const isNearer = before >= 0 && atS - (timesS[before] ?? 0) < (timesS[after] ?? 0) - atS;
+  return isNearer ? before : after;
+}
+
+/** A line may leave out what lies within this share of its span: less than a pen is wide. */
+const lineShare = 1 / 800;
+
 function seriesOf(outcome: ZoneOutcome): readonly ZoneSeries[] {
-  return answers.flatMap((answer): ZoneSeries[] => {
-    const found = outcome.answers[answer];
-    if (!found) return [];
-    const { scale } = outcome.level;
-    return [
-      {
-        caseName: outcome.caseName,
-        quantity: outcome.level.quantity,
-        answer,
-        timesS: outcome.timesS,
-        values: scale === 1 ? found.series : found.series.map((value) => value * scale),
-      },
-    ];
-  });
+  const { caseName, level, timesS, band } = outcome;
+  const lines = (
+    rows: readonly { readonly answer: ZoneSeries['answer']; readonly values: readonly number[] }[],
+  ): readonly ZoneSeries[] => {
+    const points = linePoints(
+      timesS,
+      rows.map(({ values }) => values),
+      lineShare,
+    );
+    return rows.map(({ answer, values }) => ({
+      caseName,
+      quantity: level.quantity,
+      answer,
+      timesS: points.map((index) => timesS[index] ?? 0),
+      values: points.map((index) => (values[index] ?? 0) * level.scale),
+    }));
+  };
+  return [
+    ...answers.flatMap((answer) => {
+      const values = outcome.answers[answer]?.series;
+      return values ? lines([{ answer, values }]) : [];
+    }),
+    ...(band
+      ? lines([
+          { answer: 'layeredP05', values: band.p05 },
+          { answer: 'layeredP95', values: band.p95 },
+        ])
+      : []),
+  ];
 }
 
 /** Of several worst cases the one that leaves a zone worst off for a quantity. */
@@ -135,6 +200,8 @@ export function zoneResults(
       const shown: readonly CaseName[] = floorCheck
         ? ['planned', 'worstCredible']
         : ['planned', 'worstCredible', 'fansOff'];
+      // Fallen is checked against Never alone: its planned curve is enough.
+      const drawn: readonly CaseName[] = floorCheck ? ['planned'] : ['planned', 'worstCredible'];
       return {
         id: floorCheck ? `${group.id}@0.2` : group.id,
         title: floorCheck ? `${group.title}: 0.2 m above the floor` : group.title,
@@ -153,7 +220,7 @@ export function zoneResults(
         quantities: own
           .filter((outcome) => shown.includes(outcome.caseName))
           .map((outcome) => zoneQuantity(outcome, resolved, nameOf)),
-        series: own.filter((outcome) => outcome.caseName === 'planned').flatMap(seriesOf),
+        series: own.filter(({ caseName }) => drawn.includes(caseName)).flatMap(seriesOf),
         notComputed: null,
       };
     };

@@ -1,7 +1,8 @@
 import type {
-  Answer,
   Assessment,
   CaseName,
+  Reading,
+  SectionMoment,
   ZoneQuantity,
   ZoneResult,
   ZoneSeries,
@@ -26,14 +27,48 @@ function dip(from: number, change: number, halfMinutes: number): number[] {
 }
 
 function series(quantity: string, base: number, change: number, caseName: CaseName): ZoneSeries[] {
-  const line = (answer: Answer, share: number): ZoneSeries => ({
+  const line = (answer: ZoneSeries['answer'], share: number): ZoneSeries => ({
     caseName,
     quantity,
     answer,
     timesS,
     values: dip(base, change * share, 40),
   });
-  return [line('mixed', 0.35), line('bound', 1)];
+  const low = change < 0;
+  return [
+    line('mixed', 0.35),
+    line('layered', 0.8),
+    line('layeredP50', 0.55),
+    line('bound', 1),
+    line('layeredP05', low ? 0.8 : 0.4),
+    line('layeredP95', low ? 0.4 : 0.8),
+  ];
+}
+
+/** The answers at the worst moment of the invented curves, and where the bound passes the limit. */
+function readings(mixed: number, bound: number, passes: boolean): Reading[] {
+  const layered = mixed + 0.6 * (bound - mixed);
+  const layeredP50 = mixed + 0.3 * (bound - mixed);
+  const at = (share: number): Reading['values'] => ({
+    mixed: 0.209 + share * (mixed - 0.209),
+    layered: 0.209 + share * (layered - 0.209),
+    layeredP50: 0.209 + share * (layeredP50 - 0.209),
+    bound: 0.209 + share * (bound - 0.209),
+  });
+  return [
+    ...(passes
+      ? [{ atS: 19.8 * hour, why: [{ answer: 'bound', what: 'limit' } as const], values: at(0.5) }]
+      : []),
+    {
+      atS: 20 * hour,
+      why: [
+        { answer: 'mixed', what: 'worst' },
+        { answer: 'layered', what: 'worst' },
+        { answer: 'bound', what: 'worst' },
+      ],
+      values: at(1),
+    },
+  ];
 }
 
 function oxygen(
@@ -64,6 +99,7 @@ function oxygen(
             { level: 'never', answer: 'bound', at: figure(19.95 * hour, 's') },
           ]
         : [],
+    readings: readings(mixed, bound, standing === 'past never'),
   };
 }
 
@@ -85,6 +121,7 @@ function carbonDioxide(
     },
     standing,
     crossings: [],
+    readings: [],
   };
 }
 
@@ -123,11 +160,53 @@ function zone(
     ],
     series: [
       ...series('oxygen', 0.209, worst - 0.209, 'planned'),
+      ...series('oxygen', 0.209, worst - 0.222, 'worstCredible'),
       ...series('CO2', 0.0008, gas, 'planned'),
     ],
     notComputed: null,
   };
 }
+
+const moment = (
+  atS: number,
+  title: string,
+  more: Partial<Pick<SectionMoment, 'kind' | 'caseName'>> & { readonly depthM: number },
+): SectionMoment => ({
+  atS,
+  title,
+  kind: more.kind ?? 'cue',
+  caseName: more.caseName ?? 'planned',
+  layers:
+    more.depthM === 0
+      ? []
+      : [
+          {
+            space: 'pit',
+            at: 'floor',
+            depthM: more.depthM,
+            gasFraction: figure(0.09, 'gasFraction'),
+          },
+        ],
+  zones: theatreView.zones.map(({ id, lowestOxygen }, index) => ({
+    id,
+    oxygen: lowestOxygen === null ? null : figure(0.2085 - index * 0.0011, 'oxygenFraction'),
+    oxygenBound: lowestOxygen,
+    gas: figure(0.0011, 'gasFraction'),
+    gasTitle: 'carbon dioxide',
+  })),
+});
+
+/** Four moments of the invented evening, the worst of each case among them. */
+export const momentsFixture: readonly SectionMoment[] = [
+  moment(opening + 12 * 60, 'Bench fog begins', { depthM: 0 }),
+  moment(opening + 30 * 60, 'when the planned day is at its worst', { kind: 'worst', depthM: 0.9 }),
+  moment(opening + 50 * 60, 'Flue pipe begins', { depthM: 0.35 }),
+  moment(opening + 31 * 60, 'the worst of: whole box into warm water', {
+    kind: 'worst',
+    caseName: 'worstCredible',
+    depthM: 1.9,
+  }),
+];
 
 export const assessmentFixture: Assessment = {
   title: 'Three gases and a pipe & a bench of fog',
@@ -443,7 +522,33 @@ export const assessmentFixture: Assessment = {
     { atS: opening + 12 * 60, untilS: opening + 30 * 60, title: 'Bench fog', act: 'fog' },
     { atS: opening + 50 * 60, untilS: opening + 52 * 60, title: 'Flue pipe', act: 'pipe' },
   ],
-  section: theatreView,
+  section: {
+    ...theatreView,
+    meters: [
+      { id: 'm1', title: 'Pit oxygen', space: 'pit', levelM: -1.8 },
+      { id: 'm2', title: 'Stage oxygen', space: 'stage', levelM: 2.4 },
+    ],
+    moments: momentsFixture,
+  },
+  drivers: [
+    {
+      zone: 'players',
+      zoneTitle: 'Players',
+      quantity: 'oxygen',
+      input: 'sourceDilution',
+      inputTitle: 'dilution where the gas comes out',
+      rankCorrelation: 0.81,
+    },
+    {
+      zone: 'players',
+      zoneTitle: 'Players',
+      quantity: 'oxygen',
+      input: 'releaseFactor',
+      inputTitle: 'amount let out',
+      rankCorrelation: -0.22,
+    },
+  ],
+  sampling: { samples: 64, seed: 7 },
   site: {
     pressure: figure(99_800, 'Pa'),
     temperature: figure(293.15, 'K'),
@@ -494,7 +599,7 @@ export function largeAssessment(acts: number, spaces: number): Assessment {
         0.2,
       ),
     ),
-    section: longView(spaces),
+    section: { ...longView(spaces), moments: [] },
   };
 }
 
@@ -520,5 +625,7 @@ export const emptyAssessment: Assessment = {
   cautions: [],
   assumptions: [],
   events: [],
-  section: { spaces: [], openings: [], zones: [], layers: [], moment: '' },
+  section: { spaces: [], openings: [], zones: [], layers: [], moment: '', moments: [] },
+  drivers: [],
+  sampling: null,
 };
