@@ -2,6 +2,7 @@ import { venueSchema, type PlanFile, type PlanVenue } from '../assessment/plan-f
 import { referenceProblems } from '../assessment/plan-references.js';
 import { planReader, type End } from '../assessment/plan-reader.js';
 import { resolvedPlan, type ResolveContext } from '../assessment/resolve.js';
+import type { ResolvedPlan } from '../assessment/resolved-plan.js';
 import { schemaProblems } from '../assessment/schema-check.js';
 import { DomainError, type ErrorDetail } from '../errors.js';
 
@@ -21,6 +22,11 @@ const emptyPlanAt = (venue: PlanVenue): PlanFile => ({
   venue,
   acts: [],
 });
+
+/** The venue by itself with every figure settled as it is stated, defaults filled in. */
+export function venueAsRead(venue: PlanVenue, data: Omit<ResolveContext, 'reader'>): ResolvedPlan {
+  return resolvedPlan(emptyPlanAt(venue), { reader: planReader(() => 'stated'), ...data });
+}
 
 /**
  * Everything that keeps a venue from being calculated with: shape, references, ranges at either end.

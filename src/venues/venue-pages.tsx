@@ -7,6 +7,7 @@ import { Table } from '../web/layout/parts.js';
 import { Page } from '../web/layout/page.js';
 import { SectionDrawing } from '../web/section/section-drawing.js';
 import type { Viewer } from '../web/session/viewer.js';
+import { airLogTexts } from '../web/texts/en-air-log.js';
 import { venueTexts as words } from '../web/texts/en-venues.js';
 import { viewTexts } from '../web/texts/en-views.js';
 import type { NoticeName } from '../web/texts/en.js';
@@ -104,6 +105,10 @@ function Beside({ saved, plans }: Pick<VenuePageProps, 'saved' | 'plans'>): VNod
       )}
       {saved && (
         <>
+          <h2>{airLogTexts.title}</h2>
+          <p>
+            <a href={`/venues/${saved.id}/air-log`}>{airLogTexts.link}</a>
+          </p>
           <h2>{words.plansHere}</h2>
           {plans && plans.length > 0 && (
             <ul>

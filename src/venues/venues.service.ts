@@ -1,6 +1,7 @@
 import { Injectable } from '@nestjs/common';
 import { fitting } from '../assessment/schema-check.js';
 import { venueSchema, type PlanVenue } from '../assessment/plan-file.js';
+import type { ResolvedPlan } from '../assessment/resolved-plan.js';
 import { CatalogueData } from '../catalogue/catalogue.module.js';
 import { InvalidInput, type ErrorDetail } from '../errors.js';
 import {
@@ -9,7 +10,7 @@ import {
   type VenueSummary,
 } from '../storage/venues.repository.js';
 import { planVenue, venueContent } from './venue-mapper.js';
-import { venueProblems } from './venue-check.js';
+import { venueAsRead, venueProblems } from './venue-check.js';
 
 export interface SavedVenue {
   readonly id: string;
@@ -48,8 +49,12 @@ export class VenuesService {
 
   /** Everything that is wrong with a venue, by its place in the venue. */
   problemsOf(venue: PlanVenue): readonly ErrorDetail[] {
-    const { gases, catalogue } = this.data;
-    return venueProblems(venue, { gases, policy: catalogue.policy, controls: catalogue.controls });
+    return venueProblems(venue, this.#context());
+  }
+
+  /** The figures that a plan would use here: those entered, and the defaults for the rest. */
+  asRead(venue: PlanVenue): ResolvedPlan {
+    return venueAsRead(venue, this.#context());
   }
 
   /** @throws {InvalidInput} when the venue cannot be calculated with */
@@ -65,6 +70,11 @@ export class VenuesService {
   /** @throws {Conflict} while plans use it, or when it has moved on; {NotFound} */
   async remove(id: string, version: number): Promise<void> {
     await this.repository.remove(id, version);
+  }
+
+  #context() {
+    const { gases, catalogue } = this.data;
+    return { gases, policy: catalogue.policy, controls: catalogue.controls };
   }
 
   #checked(venue: PlanVenue): PlanVenue {
