@@ -7,7 +7,7 @@ import { grilleIntake, jetErosion, turbulentExchange, WEIR_CONSTANT } from './la
 import type { LayerNetwork, LayerSource, LayerWeir } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import type { LayerSegment } from './layer-segment.js';
-import { emptyZoneState, readZones, type ZoneLayout, type ZoneState } from './layer-zones.js';
+import { readDensities, type ZoneLayout, type ZoneState } from './layer-zones.js';
 import { LINE_PLUME_CONSTANT } from './plume.js';
 import { releasedVolume } from './release-flow.js';
 import { verticalOpeningFlows } from './vertical-openings.js';
@@ -24,12 +24,30 @@ const BIRTH_CONTRAST = 5;
 export interface LayerFlows {
   /** Flows at a state, for a step from t to t + h; h 0: the rates of this moment. */
   at(t: number, h: number, state: Float64Array): FlowTable;
-  /** Fractions and depths of the state last asked. */
-  readonly zones: ZoneState;
   /** Number of outdoors where a flow begins or ends. */
   readonly outdoors: number;
   /** Whether a source or another layer feeds a layer, at the state last asked. */
   isFed(layer: number): boolean;
+}
+
+/** A table that holds all flows that any segment of a network may have. */
+export function layerFlowTable(network: LayerNetwork, layout: ZoneLayout): FlowTable {
+  const { airSystems = [], transfers = [], openings = [] } = network.model.input;
+  const n = network.model.spaces.length;
+  const served = airSystems.reduce((sum, one) => sum + (one.serves?.length ?? 1), 0);
+  const weirs = network.weirs.length;
+  return flowTable(
+    3 * layout.layers +
+      4 * n +
+      2 * network.sources.length +
+      3 * weirs +
+      7 * served +
+      2 * transfers.length +
+      4 * openings.length,
+    weirs + 2 * served + n + transfers.length + 2 * openings.length,
+    layout.held,
+    layout.k,
+  );
 }
 
 /**
@@ -47,6 +65,8 @@ export interface LayerFlows {
  * @param segment    what stays the same between the edges
  * @param parameters what the run assumes
  * @param joined     spaces that have become one mixed zone
+ * @param table      work space (layerFlowTable), written by every call
+ * @param zones      work space (emptyZoneState), its molar masses and depths written by every call
  * @returns flows by state; the same table every call
  * Source: own-room-air (recommended layer model), robins-2001 for the exchange. Assumes: level
  * layers, one temperature in the density differences of layers. Accuracy: scenario spread, never
@@ -58,35 +78,16 @@ export function layerFlows(
   segment: LayerSegment,
   parameters: LayerParameters,
   joined: ReadonlySet<number>,
+  table: FlowTable,
+  zones: ZoneState,
 ): LayerFlows {
   const { k, layers, held } = layout;
   const { model, components, floorLayerOf, ceilingLayerOf } = network;
   const n = model.spaces.length;
   const outdoors = layout.zones;
   const { flows, units } = segment;
-  const zones = emptyZoneState(layout);
   const { molarMasses, depths } = zones;
   const air = network.airMolarMassKgPerMol;
-  const intakes = units.intakes.length;
-  const supplies = units.supplies.length;
-  const table = flowTable(
-    3 * layers +
-      4 * n +
-      2 * segment.sources.length +
-      3 * segment.weirs.length +
-      4 * intakes +
-      3 * supplies +
-      2 * segment.transfers.length +
-      4 * flows.links.length,
-    segment.weirs.length +
-      intakes +
-      supplies +
-      n +
-      segment.transfers.length +
-      2 * flows.links.length,
-    held,
-    k,
-  );
   const fed = new Uint8Array(layers);
   const net = new Float64Array(n);
   const pressure = new Float64Array(n);
@@ -390,7 +391,6 @@ export function layerFlows(
   };
 
   return {
-    zones,
     outdoors,
     isFed: (layer) => fed[layer] === 1,
     at: (t, h, now) => {
@@ -402,7 +402,7 @@ export function layerFlows(
       table.into.fill(0);
       table.out.fill(0);
       fed.fill(0);
-      readZones(network, layout, segment.excess, state, zones);
+      readDensities(network, layout, segment.excess, state, zones);
       for (const source of segment.sources) addRelease(source, sourceFlow(source, t, h));
       for (const weir of segment.weirs) {
         if (weir.b < 0) addOutwardWeir(weir);

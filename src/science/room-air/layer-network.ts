@@ -97,6 +97,10 @@ export interface LayerNetwork {
   readonly weirs: readonly LayerWeir[];
   readonly airMolarMassKgPerMol: number;
   readonly outdoorMolarMassKgPerMol: number;
+  /** By component: excess over the molar mass of air above the layers [kg/mol]. */
+  readonly excessAbove: Float64Array;
+  /** By component: fraction outdoors [-]. */
+  readonly outdoor: Float64Array;
 }
 
 /** An opening of at least this area joins the upper air of both sides into one zone [m2]. */
@@ -205,6 +209,8 @@ export function layerNetwork(
     weirs: layerWeirs(model, layerAt),
     airMolarMassKgPerMol: air,
     outdoorMolarMassKgPerMol: outdoor,
+    excessAbove: Float64Array.from(components, (one) => one.excessKgPerMol),
+    outdoor: Float64Array.from(components, (one) => one.outdoors),
   };
 }
 

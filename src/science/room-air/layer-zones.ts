@@ -50,16 +50,17 @@ export function emptyZoneState(layout: ZoneLayout): ZoneState {
 }
 
 /**
- * Reads a state into fractions, molar masses and depths; an empty layer has the air above it.
+ * Reads what drives the flows at a state: molar masses and depths; an empty layer weighs what the air
+ * above it weighs.
  *
  * @param network layers and upper zones
  * @param layout  layout of the state
  * @param excess  by component, excess over the molar mass of air in a layer [kg/mol]; a cold gas
  *   weighs more there than in the warm air above
  * @param state   state to read
- * @param into    written
+ * @param into    its molar masses and depths are written
  */
-export function readZones(
+export function readDensities(
   network: LayerNetwork,
   layout: ZoneLayout,
   excess: Float64Array,
@@ -67,20 +68,48 @@ export function readZones(
   into: ZoneState,
 ): void {
   const { k, layers, held, amounts } = layout;
-  const { fractions, molarMasses, depths } = into;
+  const { molarMasses, depths } = into;
   const air = network.airMolarMassKgPerMol;
+  const { excessAbove } = network;
   for (let z = held - 1; z >= 0; z--) {
     const volume = state[z] ?? 0;
-    const layer = z < layers ? network.layers[z] : undefined;
-    if (layer) depths[z] = basinLevel(layer.basin, volume);
-    const isEmpty = volume <= 0;
-    const from = isEmpty && layer ? (layers + layer.group) * k : amounts + z * k;
-    let molar = air;
-    for (let c = 0; c < k; c++) {
-      const x = isEmpty ? (fractions[from + c] ?? 0) : (state[from + c] ?? 0) / volume;
-      fractions[z * k + c] = x;
-      molar += x * (layer ? (excess[c] ?? 0) : (network.components[c]?.excessKgPerMol ?? 0));
+    const isLayer = z < layers;
+    if (isLayer) {
+      const layer = network.layers[z];
+      if (!layer) continue;
+      if (volume <= 0) {
+        depths[z] = 0;
+        molarMasses[z] = molarMasses[layers + layer.group] ?? air;
+        continue;
+      }
+      depths[z] = basinLevel(layer.basin, volume);
     }
-    molarMasses[z] = molar;
+    const weights = isLayer ? excess : excessAbove;
+    const from = amounts + z * k;
+    let sum = 0;
+    for (let c = 0; c < k; c++) sum += (state[from + c] ?? 0) * (weights[c] ?? 0);
+    molarMasses[z] = volume > 0 ? air + sum / volume : air;
+  }
+}
+
+/** Reads a state whole: what drives the flows, and the fractions, within 0 and 1. */
+export function readZones(
+  network: LayerNetwork,
+  layout: ZoneLayout,
+  excess: Float64Array,
+  state: Float64Array,
+  into: ZoneState,
+): void {
+  readDensities(network, layout, excess, state, into);
+  const { k, layers, held, amounts } = layout;
+  const { fractions } = into;
+  for (let z = held - 1; z >= 0; z--) {
+    const volume = state[z] ?? 0;
+    const above = z < layers ? layers + (network.layers[z]?.group ?? 0) : z;
+    for (let c = 0; c < k; c++) {
+      const x =
+        volume > 0 ? (state[amounts + z * k + c] ?? 0) / volume : (fractions[above * k + c] ?? 0);
+      fractions[z * k + c] = x < 0 ? 0 : x > 1 ? 1 : x;
+    }
   }
 }

@@ -1,12 +1,19 @@
 import { NotComputable } from '../../errors.js';
 import { hermiteValue, type AcceptedStep } from '../numerics/runge-kutta.js';
 import { flowSegment } from './air-flows.js';
-import { layerFlows, type LayerFlows } from './layer-flows.js';
+import { layerFlows, layerFlowTable, type LayerFlows } from './layer-flows.js';
 import type { LayerNetwork } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import { layerSegment } from './layer-segment.js';
-import { implicitStep, layerRates, type ImplicitStep } from './layer-step.js';
-import { emptyZoneState, readZones, zoneLayout, type ZoneLayout } from './layer-zones.js';
+import { layerRates } from './layer-rates.js';
+import { implicitStep } from './layer-step.js';
+import {
+  emptyZoneState,
+  readZones,
+  zoneLayout,
+  type ZoneLayout,
+  type ZoneState,
+} from './layer-zones.js';
 
 /** One moment of the two-layer answer. */
 export interface LayerNode {
@@ -20,15 +27,10 @@ export interface LayerNode {
   readonly molarMasses: Float64Array;
 }
 
-export interface LayerTrack {
+export interface LayerTrack extends LayerRunReport {
   readonly network: LayerNetwork;
   readonly layout: ZoneLayout;
   readonly nodes: readonly LayerNode[];
-  /** Largest share of any component that the run gained or lost [-]. */
-  readonly balanceError: number;
-  /** Steps taken, and those taken back because they were too long. */
-  readonly steps: number;
-  readonly rejected: number;
 }
 
 /** How closely the layers are followed. */
@@ -42,7 +44,7 @@ export interface LayerAccuracy {
 /** Single runs: far below what the printed digits show. */
 export const FINE: LayerAccuracy = { relative: 1e-4, order: 3 };
 /** One of many runs of a band, whose inputs are known to a few per cent at best. */
-export const COARSE: LayerAccuracy = { relative: 2e-3, order: 2 };
+export const COARSE: LayerAccuracy = { relative: 1e-2, order: 2 };
 
 /** Upper air below this share of its zone: the whole becomes one mixed zone [-]. */
 const LEAST_UPPER_SHARE = 0.02;
@@ -52,6 +54,8 @@ const FRACTION_SCALE = 0.01;
 /** A layer thinner than this is not reported; its fraction need not be followed closely [m]. */
 const THIN_M = 0.002;
 const FIRST_STEP_S = 0.05;
+/** After an edge of the schedule a step is no longer than this [s]. */
+const RESTART_STEP_S = 30;
 const MAX_STEP_S = 600;
 const MAX_STEPS = 200_000;
 /** Excess of the wrong sign, over the molar mass of air, at which a layer turns over [-]. */
@@ -85,34 +89,69 @@ export function layeredTrack(
   timesS: readonly number[],
   accuracy: LayerAccuracy = FINE,
 ): LayerTrack {
-  const { model } = network;
   const layout = zoneLayout(network);
-  const outdoor = Float64Array.from(network.components, (one) => one.outdoors);
-  const stepper = implicitStep(layout, outdoor);
-  const extrapolated = extrapolation(network, layout, stepper, accuracy);
-  const state = startState(network, layout);
   const nodes: LayerNode[] = [];
+  const run = followLayers(network, layout, parameters, timesS, accuracy, (t, state, zones) => {
+    nodes.push({
+      t,
+      volumes: state.slice(0, layout.held),
+      fractions: zones.fractions.slice(),
+      depths: zones.depths.slice(),
+      molarMasses: zones.molarMasses.slice(),
+    });
+  });
+  return { network, layout, nodes, ...run };
+}
+
+/** What a run reports besides its nodes. */
+interface LayerRunReport {
+  /** Largest share of any component that the run gained or lost [-]. */
+  readonly balanceError: number;
+  /** Steps taken, and those taken back because they were too long. */
+  readonly steps: number;
+  readonly rejected: number;
+}
+
+/**
+ * Follows the layers and shows each wanted time in turn; state and zones are lent for the call only.
+ * The run of layeredTrack, for callers that keep less than all of it.
+ */
+export function followLayers(
+  network: LayerNetwork,
+  layout: ZoneLayout,
+  parameters: LayerParameters,
+  timesS: readonly number[],
+  accuracy: LayerAccuracy,
+  visit: (t: number, state: Float64Array, zones: ZoneState) => void,
+): LayerRunReport {
+  const { model } = network;
+  const extrapolated = extrapolation(network, layout, accuracy);
+  const state = startState(network, layout);
+  const next = new Float64Array(layout.size);
+  const between = new Float64Array(layout.size);
+  const table = layerFlowTable(network, layout);
+  const work = emptyZoneState(layout);
+  const shown = emptyZoneState(layout);
   const joined = new Set<number>();
   const edges = edgesWithWarming(network);
   let wanted = 0;
   let steps = 0;
   let rejected = 0;
   let step = FIRST_STEP_S;
-  const next = new Float64Array(layout.size);
+  const show = (t: number, now: Float64Array, excess: Float64Array): void => {
+    readZones(network, layout, excess, now, shown);
+    visit(t, now, shown);
+    wanted++;
+  };
   for (let e = 0; e + 1 < edges.length; e++) {
     const from = edges[e] ?? 0;
     const to = edges[e + 1] ?? 0;
     const segment = layerSegment(network, flowSegment(model, from, to, 'pushOut'));
-    const flows = layerFlows(network, layout, segment, parameters, joined);
-    const rates = layerRates(layout, flows, outdoor);
-    if (e === 0) {
-      while ((timesS[wanted] ?? Infinity) <= from) {
-        nodes.push(nodeOf(network, layout, segment.excess, state, from));
-        wanted++;
-      }
-    }
+    const { excess } = segment;
+    const flows = layerFlows(network, layout, segment, parameters, joined, table, work);
+    if (e === 0) while ((timesS[wanted] ?? Infinity) <= from) show(from, state, excess);
     let t = from;
-    step = Math.min(step, 10);
+    step = Math.min(step, RESTART_STEP_S);
     while (t < to) {
       if (steps + rejected > MAX_STEPS || step < 1e-9) throw notThrough(t);
       const isLast = t + step * (1 + 1e-6) >= to;
@@ -125,30 +164,25 @@ export function layeredTrack(
       }
       steps++;
       const end = isLast ? to : t + h;
-      const before = wanted;
-      while ((timesS[wanted] ?? Infinity) <= end) wanted++;
-      if (wanted > before) {
-        const between = stateBetween(rates, accuracy, t, end, state, next);
-        for (let i = before; i < wanted; i++) {
-          const at = timesS[i] ?? end;
-          nodes.push(nodeOf(network, layout, segment.excess, at < end ? between(at) : next, at));
+      let slopes: AcceptedStep | undefined;
+      while ((timesS[wanted] ?? Infinity) <= end) {
+        const at = timesS[wanted] ?? end;
+        if (at === end) show(at, next, excess);
+        else {
+          if (accuracy.order > 2)
+            slopes ??= stepWithSlopes(network, layout, flows, t, end, state, next);
+          writeBetween(t, end, state, next, slopes, at, between);
+          show(at, between, excess);
         }
       }
       state.set(next);
       t = end;
-      join(network, layout, segment.excess, state, flows, joined, parameters.joinContrast);
-      const factor = Math.min(3, 0.85 * Math.max(error, 1e-6) ** (-1 / accuracy.order));
+      join(network, layout, excess, state, flows, joined, parameters.joinContrast);
+      const factor = Math.min(5, 0.85 * Math.max(error, 1e-6) ** (-1 / accuracy.order));
       if (!isLast || h * factor < step) step = Math.min(MAX_STEP_S, h * Math.max(0.3, factor));
     }
   }
-  return {
-    network,
-    layout,
-    nodes,
-    balanceError: worstImbalance(layout, state),
-    steps,
-    rejected,
-  };
+  return { balanceError: worstImbalance(layout, state), steps, rejected };
 }
 
 /** Edges of the schedule, and the times at which a cold gas has warmed. */
@@ -159,33 +193,39 @@ function edgesWithWarming({ model, components }: LayerNetwork): readonly number[
   return [...all].sort((a, b) => a - b);
 }
 
-/** The state inside a step: cubic from the slopes at both ends, or straight where that will do. */
-function stateBetween(
-  rates: ReturnType<typeof layerRates>,
-  accuracy: LayerAccuracy,
+/** A step with its slopes at both ends, from which the state inside is cubic. */
+function stepWithSlopes(
+  network: LayerNetwork,
+  layout: ZoneLayout,
+  flows: LayerFlows,
   t0: number,
   t1: number,
   y0: Float64Array,
   y1: Float64Array,
-): (t: number) => Float64Array {
-  if (accuracy.order === 2) {
-    return (t) => {
-      const share = (t - t0) / (t1 - t0);
-      return y0.map((value, i) => value + share * ((y1[i] ?? 0) - value));
-    };
+): AcceptedStep {
+  const rates = layerRates(network, layout, flows);
+  const f0 = new Float64Array(layout.size);
+  const f1 = new Float64Array(layout.size);
+  rates(t0, y0, f0);
+  rates(t1, y1, f1);
+  return { t0, t1, y0, y1, f0, f1 };
+}
+
+/** The state inside a step: cubic where its slopes are known, else straight. */
+function writeBetween(
+  t0: number,
+  t1: number,
+  y0: Float64Array,
+  y1: Float64Array,
+  slopes: AcceptedStep | undefined,
+  t: number,
+  into: Float64Array,
+): void {
+  const share = (t - t0) / (t1 - t0);
+  for (let i = 0; i < into.length; i++) {
+    const a = y0[i] ?? 0;
+    into[i] = slopes ? hermiteValue(slopes, i, t) : a + share * ((y1[i] ?? 0) - a);
   }
-  let step: AcceptedStep | undefined;
-  return (t) => {
-    if (!step) {
-      const f0 = new Float64Array(y0.length);
-      const f1 = new Float64Array(y0.length);
-      rates(t0, y0, f0);
-      rates(t1, y1, f1);
-      step = { t0, t1, y0, y1, f0, f1 };
-    }
-    const known = step;
-    return y0.map((_, i) => hermiteValue(known, i, t));
-  };
 }
 
 /** A step with its error over what is allowed; above 1 it must be taken again, shorter. */
@@ -200,48 +240,42 @@ type Extrapolated = (
 function extrapolation(
   network: LayerNetwork,
   layout: ZoneLayout,
-  step: ImplicitStep,
   accuracy: LayerAccuracy,
 ): Extrapolated {
   const { k, layers, held, amounts, size } = layout;
+  const step = implicitStep(layout, network.outdoor);
   const { order, relative } = accuracy;
   const columns = Array.from({ length: order }, () => new Float64Array(size));
   const part = new Float64Array(size);
-  const finest = new Float64Array(size);
   const column = (i: number): Float64Array => columns[i] ?? part;
+  const areas = Float64Array.from(network.layers, (layer) => layer.basin.areaM2);
 
-  const isInRange = (state: Float64Array): boolean => {
-    for (let z = 0; z < held; z++) {
-      const volume = state[z] ?? 0;
-      if (volume < 0) return false;
-      for (let c = 0; c < k; c++) {
-        const amount = state[amounts + z * k + c] ?? 0;
-        if (amount < -1e-12 || amount > volume + 1e-12) return false;
-      }
-    }
-    return true;
-  };
-  /** Largest difference of two results over what is allowed. */
+  /** Largest difference of two results over what is allowed; NaN where the first is out of range. */
   const difference = (a: Float64Array, b: Float64Array): number => {
     let worst = 0;
     for (let z = 0; z < held; z++) {
-      const volume = Math.max(a[z] ?? 0, b[z] ?? 0);
-      if (volume <= 0) continue;
-      const change = (a[z] ?? 0) - (b[z] ?? 0);
+      const volume = a[z] ?? 0;
+      const other = b[z] ?? 0;
+      if (volume < 0) return Number.NaN;
+      if (volume <= 0 && other <= 0) continue;
+      const scale = Math.max(volume, other);
+      const change = volume - other;
       let weight = 1;
       if (z < layers) {
-        const area = network.layers[z]?.basin.areaM2 ?? 1;
-        worst = Math.max(worst, Math.abs(change) / (relative * (volume + DEPTH_SCALE_M * area)));
-        weight = Math.min(1, volume / (THIN_M * area));
+        const area = areas[z] ?? 1;
+        worst = Math.max(worst, Math.abs(change) / (scale + DEPTH_SCALE_M * area));
+        weight = Math.min(1, scale / (THIN_M * area));
       }
+      const from = amounts + z * k;
       for (let c = 0; c < k; c++) {
-        const amount = a[amounts + z * k + c] ?? 0;
-        const x = amount / Math.max(a[z] ?? 0, 1e-300);
-        const off = Math.abs(amount - (b[amounts + z * k + c] ?? 0) - x * change) / volume;
-        worst = Math.max(worst, (weight * off) / (relative * (x + FRACTION_SCALE)));
+        const amount = a[from + c] ?? 0;
+        if (amount < -1e-12 || amount > volume + 1e-12) return Number.NaN;
+        const x = volume > 0 ? amount / volume : 0;
+        const off = Math.abs(amount - (b[from + c] ?? 0) - x * change) / scale;
+        worst = Math.max(worst, (weight * off) / (x + FRACTION_SCALE));
       }
     }
-    return worst;
+    return worst / relative;
   };
 
   return (flows, t, h, state, next) => {
@@ -250,27 +284,28 @@ function extrapolation(
       let now = state;
       for (let i = 0; i < parts; i++) {
         const length = h / parts;
-        const table = flows.at(t + i * length, length, now);
-        const target = i % 2 === parts % 2 ? part : finest;
-        if (!step(table, length, now, target)) return 1e6;
+        const target = (parts - i) % 2 === 1 ? column(j) : part;
+        if (!step(flows.at(t + i * length, length, now), length, now, target)) return 1e6;
         now = target;
       }
-      if (now !== finest) finest.set(now);
-      // Aitken-Neville: from the right, so that one row of columns is enough.
-      let left = Float64Array.from(finest);
-      for (let i = 0; i < j; i++) {
-        const old = Float64Array.from(column(i));
-        const weight = 1 / (parts / (parts - i - 1) - 1);
-        column(i).set(left);
-        left = left.map((value, at) => value + weight * (value - (old[at] ?? 0)));
+      for (let i = j; i > 0; i--) {
+        const weight = 1 / (parts / i - 1);
+        const right = column(i);
+        const left = column(i - 1);
+        for (let at = 0; at < size; at++) {
+          const value = right[at] ?? 0;
+          left[at] = value + weight * (value - (left[at] ?? 0));
+        }
       }
-      column(j).set(left);
     }
+    const error = difference(column(0), column(1));
+    if (!Number.isNaN(error)) {
+      next.set(column(0));
+      return error;
+    }
+    // The finest of the parts is a mean of means: it never leaves the range.
     next.set(column(order - 1));
-    const error = difference(next, column(order - 2));
-    if (isInRange(next)) return error;
-    next.set(finest);
-    return difference(finest, column(0)) * 0.5 + error * 0.5;
+    return difference(next, column(order - 2));
   };
 }
 
@@ -292,22 +327,6 @@ function startState(network: LayerNetwork, layout: ZoneLayout): Float64Array {
     }
   }
   return state;
-}
-
-function nodeOf(
-  network: LayerNetwork,
-  layout: ZoneLayout,
-  excess: Float64Array,
-  state: Float64Array,
-  t: number,
-): LayerNode {
-  const zones = emptyZoneState(layout);
-  readZones(network, layout, excess, state, zones);
-  const { fractions, molarMasses, depths } = zones;
-  for (let i = 0; i < fractions.length; i++) {
-    fractions[i] = Math.min(1, Math.max(0, fractions[i] ?? 0));
-  }
-  return { t, volumes: state.slice(0, layout.held), fractions, depths, molarMasses };
 }
 
 /** Layers that have ended join the air above them, in the state itself. */
