@@ -21,6 +21,15 @@ export interface AcceptedStep {
 
 const MAX_STEPS = 200_000;
 
+/** Weights of the slopes in the state at the end of a step, with their place in the step [-]. */
+export const STEP_WEIGHTS = [
+  [35 / 384, 0],
+  [500 / 1113, 3 / 10],
+  [125 / 192, 4 / 5],
+  [-2187 / 6784, 8 / 9],
+  [11 / 84, 1],
+] as const;
+
 /** Work space of a span of steps; reused from span to span. */
 export interface RungeKuttaWork {
   /** State before the step last tried. */
@@ -56,6 +65,8 @@ export interface SpanOptions {
   readonly absolute: Float64Array;
   /** First step to try [s]; what the last span ended with is a good guess. */
   readonly firstStepS: number;
+  /** Told of every step before it is tried. */
+  onTry?(t: number, h: number): void;
   /** Longest step from here [s], asked after every derivative at the start of a step. */
   longestStepS(): number;
 }
@@ -106,6 +117,7 @@ export function stepThrough(
     }
     const last = t + step * (1 + 1e-9) >= t1;
     const h = last ? t1 - t : step;
+    options.onTry?.(t, h);
     for (let i = 0; i < n; i++) z[i] = (y[i] ?? 0) + h * (1 / 5) * (k1[i] ?? 0);
     f(t + h / 5, z, k2);
     for (let i = 0; i < n; i++) {
@@ -225,7 +237,17 @@ export function writeDense(work: RungeKuttaWork, h: number, out: Float64Array): 
   }
 }
 
-/** Entry of the interpolant at a share of the step [unit of the state]. */
+/**
+ * Entry of the interpolant at a share of the step [unit of the state].
+ *
+ *   y0 + s (r2 + (1 - s) (r3 + s (r4 + (1 - s) r5)))
+ *
+ * @param dense coefficients of `writeDense` [unit of the state]
+ * @param entry entry of the state [-], from 0
+ * @param share time since the start of the step over its length s [-]
+ * @returns the entry [unit of the state]
+ * Source: hairer-norsett-wanner-1993, II.6. Assumes: s from 0 to 1. Accuracy: as writeDense.
+ */
 export function denseValue(dense: Float64Array, entry: number, share: number): number {
   const at = 5 * entry;
   const rest = 1 - share;
@@ -238,7 +260,15 @@ export function denseValue(dense: Float64Array, entry: number, share: number): n
   );
 }
 
-/** Slope of the interpolant at a share of the step, times its length [unit of the state]. */
+/**
+ * Slope of the interpolant at a share of the step, times its length [unit of the state].
+ *
+ * @param dense coefficients of `writeDense` [unit of the state]
+ * @param entry entry of the state [-], from 0
+ * @param share time since the start of the step over its length [-]
+ * @returns slope of the entry times the length of the step [unit of the state]
+ * Source: hairer-norsett-wanner-1993, II.6. Assumes: share from 0 to 1. Accuracy: third order.
+ */
 export function denseSlope(dense: Float64Array, entry: number, share: number): number {
   const at = 5 * entry;
   const [r2, r3, r4, r5] = [

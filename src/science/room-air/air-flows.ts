@@ -168,14 +168,7 @@ function pressureAnswer(n: number, links: readonly OpenLink[], leaks: Float64Arr
 /** The part of the flows that only schedules of openings and plant change. */
 type Ventilation = Pick<
   FlowSegment,
-  | 'between'
-  | 'freshM3PerS'
-  | 'extractM3PerS'
-  | 'net'
-  | 'links'
-  | 'leakM2'
-  | 'pressures'
-  | 'mixing'
+  'between' | 'freshM3PerS' | 'extractM3PerS' | 'net' | 'links' | 'leakM2' | 'pressures' | 'mixing'
 >;
 
 function ventilation(model: AirModel, t: number): Ventilation {
@@ -293,10 +286,7 @@ function segmentAt(edges: readonly number[], t: number): number {
   return low;
 }
 
-const timedSpan = (one: Timed): readonly [number, number] => [
-  one.fromS ?? 0,
-  one.toS ?? Infinity,
-];
+const timedSpan = (one: Timed): readonly [number, number] => [one.fromS ?? 0, one.toS ?? Infinity];
 
 /**
  * All flows of a run in segments between edges, in order.

@@ -3,19 +3,30 @@ import { InvalidInput } from '../../errors.js';
 import type { AirGasTable } from './air-gases.js';
 import type { AirInput, AirZone } from './air-input.js';
 import type {
+  AirAnswer,
   AirResult,
   AirSeries,
   Crossing,
+  Extreme,
   GasBalance,
   HeightAir,
+  OxygenExtreme,
   SpaceAir,
   SpaceLayers,
   ZoneAir,
 } from './air-result.js';
-import { FALLEN_HEIGHT_M, OXYGEN_IN_DRY_AIR } from './air-constants.js';
-import type { Displacement } from './air-flows.js';
+import { FALLEN_HEIGHT_M } from './air-constants.js';
+import { flowSegments, type Displacement } from './air-flows.js';
 import { airModel, OXYGEN, type AirModel } from './air-model.js';
-import { crossingsOf, gasMaxima, oxygenMinimum, type AnswerTrack } from './answer-track.js';
+import { outputRows, seriesOf } from './air-series.js';
+import {
+  crossingsOf,
+  flatTrack,
+  gasMaxima,
+  oxygenMinimum,
+  rowsOf,
+  type FlatTrack,
+} from './answer-track.js';
 import {
   layerCase,
   layeredRows,
@@ -27,23 +38,13 @@ import { adverseLayers, usualLayers, type LayerParameters } from './layer-parame
 import { layeredTrack, type LayerTrack } from './layered-track.js';
 import { layeredBands, type Band, type BandMouth } from './layered-band.js';
 import { mixedTrack } from './mixed-track.js';
-import {
-  pieceRows,
-  quantitiesOf,
-  runFractions,
-  spaceFractions,
-  worseOf,
-  type MixedRuns,
-  type QuantityRow,
-} from './mixed-values.js';
+import { keepWorse, spaceTrack, type MixedRuns } from './mixed-values.js';
 import { purePoolDepths } from './pure-pool.js';
-import { oxygenPartialPressure } from './water-vapour.js';
 import {
   boundMouth,
   boundReleases,
+  boundTrack,
   FIRST_PASS_FROM_S,
-  firstPassEnd,
-  writeZoneBound,
   type BoundMouth,
   type BoundRelease,
 } from './zone-bound.js';
@@ -59,7 +60,7 @@ export interface AirRunOptions {
  * Oxygen and gas in every space and zone over time [-, Pa, mol].
  *
  *   mixed  dN/dt = A N + B, each space well mixed, mixture pushed out (mixedTrack)
- *   bound  mixed background + inventory bound of the current episode (writeZoneBound)
+ *   bound  mixed background + inventory bound of all gas that no reading closed (boundTrack)
  *
  * @param input   spaces, openings, air systems, releases, people and zones
  * @param gases   molar masses and diffusivities by gas id
@@ -67,7 +68,8 @@ export interface AirRunOptions {
  * @returns series at the output times, extremes and crossings between them, balance per gas
  * @throws {InvalidInput} naming every name, sum or geometry that does not hold together
  * Source: own-room-air. Assumes: constant pressure, ideal gas, each space well mixed (mixed) or a
- * level layer (bound), no wind. Accuracy: mixed is exact to 1e-8 for the balance as stated.
+ * level layer (bound), no wind. Accuracy: mixed is exact where flows are constant, else within 1e-6 of
+ * the balance as stated.
  */
 export function airRun(
   input: AirInput,
@@ -88,49 +90,45 @@ export function airRun(
   const timesS = outputTimes(input);
   const releases = boundReleases(model);
   const nodes = nodeTimes(model, releases, timesS);
-  const poorMixing = (input.airSystems ?? []).some((system) => (system.effectiveness ?? 1) < 1);
-  const runs: MixedRuns = {
-    displacement,
-    tracks: [
-      mixedTrack(model, nodes, displacement, false),
-      ...(poorMixing ? [mixedTrack(model, nodes, displacement, true)] : []),
-    ],
-  };
-  const mixed = model.spaces.map((_, space) => mixedAnswer(model, runs, space));
+  const runs = mixedRuns(model, nodes, displacement);
+  const mixed = model.spaces.map((_, space) =>
+    answerOf(spaceTrack(model, runs, space), model.gases),
+  );
+  const rows = outputRows(runs.tracks[0].timesS, timesS);
   const depths = purePoolDepths(model, releases);
   const wantsLayers = displacement === 'pushOut' && (options.layered ?? true);
-  const layers = wantsLayers ? layerRuns(model, gases, mixed[0]) : undefined;
+  const layers = wantsLayers ? layerRuns(model, gases, runs.tracks[0].timesS) : undefined;
   const spaces: Record<string, SpaceAir> = {};
   for (const [i, space] of model.spaces.entries()) {
-    const track = mixed[i];
-    if (!track) continue;
+    const one = mixed[i];
+    if (!one) continue;
+    const series = seriesOf(model, one.track, rows);
     spaces[space.id] = {
-      mixed: seriesOf(model, track, timesS),
-      ...(layers ? { layered: layersOfSpace(model, layers, i, track, timesS) } : {}),
+      mixed: series,
+      ...(layers ? { layered: layersOfSpace(model, layers, i, series, timesS) } : {}),
       purePoolDepthM: depths[i] ?? 0,
     };
   }
   const zones: Record<string, ZoneAir> = {};
   const crossings: Crossing[] = [];
   for (const zone of input.zones ?? []) {
-    const index = model.indexOf.get(zone.space) ?? 0;
-    const track = mixed[index];
+    const one = mixed[model.indexOf.get(zone.space) ?? 0];
     const series = spaces[zone.space]?.mixed;
-    if (!track || !series) continue;
-    const place = {
+    if (!one || !series) continue;
+    const place: ZonePlace = {
       model,
       runs,
       releases,
       zone,
-      mixed: track,
+      mixed: one,
       mixedSeries: series,
+      rows,
       timesS,
       layers,
+      isStraight: displacement === 'straight',
     };
-    zones[zone.id] = {
-      ...heightAnswer(place, zone.heightM, crossings),
-      at02M: heightAnswer(place, FALLEN_HEIGHT_M, crossings),
-    };
+    const at02M = heightAnswer(place, FALLEN_HEIGHT_M, crossings);
+    zones[zone.id] = Object.assign(heightAnswer(place, zone.heightM, crossings), { at02M });
   }
   crossings.sort((a, b) => a.atS - b.atS);
   const answer = { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
@@ -155,24 +153,36 @@ function nodeTimes(
   const times = new Set(timesS);
   for (const release of releases) {
     if (release.gathering !== 'below' || !release.startsLayered) continue;
-    const area = model.spaces[release.plan.space]?.curve.floorAreaM2 ?? 0;
     times.add(release.plan.startS + FIRST_PASS_FROM_S);
-    times.add(firstPassEnd(release, area));
+    times.add(release.passEndS);
   }
   return [...times].filter((t) => t <= model.input.durationS).sort((a, b) => a - b);
 }
 
-function mixedAnswer(model: AirModel, runs: MixedRuns, space: number): AnswerTrack {
-  const count = runs.tracks[0]?.length ?? 0;
-  return {
-    pieces: Array.from({ length: count }, (_, piece) => ({
-      rows: pieceRows(model, runs, piece, space),
-      valuesAt: (t: number) =>
-        runFractions(model, runs, piece, space, t)
-          .map((fractions) => quantitiesOf(model, fractions))
-          .reduce(worseOf),
-    })),
-  };
+/** The well-mixed run; where a mixing factor is below 1 also the one in which it shrinks volumes. */
+function mixedRuns(
+  model: AirModel,
+  nodesS: readonly number[],
+  displacement: Displacement,
+): MixedRuns {
+  const { airSystems = [], thresholds = [] } = model.input;
+  const poorMixing = airSystems.some((system) => (system.effectiveness ?? 1) < 1);
+  const segments = flowSegments(model, displacement);
+  const track = (useMixingVolume: boolean) =>
+    mixedTrack(model, segments, nodesS, {
+      displacement,
+      useMixingVolume,
+      wantsSlopes: displacement === 'pushOut' && !poorMixing,
+      wantsBetween: thresholds.length > 0,
+    });
+  return { displacement, tracks: poorMixing ? [track(false), track(true)] : [track(false)] };
+}
+
+/** A track with its extremes, which several zones of one space share. */
+interface Answer {
+  readonly track: FlatTrack;
+  readonly minimum: OxygenExtreme;
+  readonly maximum: Readonly<Record<string, Extreme>>;
 }
 
 /** What a mouth in a zone needs to be answered. */
@@ -181,10 +191,13 @@ interface ZonePlace {
   readonly runs: MixedRuns;
   readonly releases: readonly BoundRelease[];
   readonly zone: AirZone;
-  readonly mixed: AnswerTrack;
+  readonly mixed: Answer;
   readonly mixedSeries: AirSeries;
+  /** Row of each output time among the nodes. */
+  readonly rows: Int32Array;
   readonly timesS: readonly number[];
   readonly layers: LayerRuns | undefined;
+  readonly isStraight: boolean;
 }
 
 /** The zones with the band of their layered answer, and what drives it. */
@@ -203,27 +216,20 @@ function withBands(
   const mouths = places.map(({ zone, heightM }): BandMouth => {
     const space = model.indexOf.get(zone.space) ?? 0;
     const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-    const bound = boundAnswer({ model, runs, releases }, mouth);
     return {
       zone: heightM === zone.heightM ? zone.id : '',
       at: layerMouth(model, mouth, zone.floorLevelM),
-      bounds: bound.pieces.flatMap((piece) => piece.rows),
+      bounds: rowsOf(boundTrack(model, runs, releases, mouth)),
     };
   });
   const { bands, drivers } = layeredBands(input, gases, mouths, timesS, model.gases);
-  const seriesAt = (rows: readonly Float64Array[]): AirSeries =>
-    seriesOf(
-      model,
-      {
-        pieces: [
-          {
-            rows: rows.map((values, i) => ({ t: timesS[i] ?? 0, values, slopes: undefined })),
-            valuesAt: () => new Float64Array(0),
-          },
-        ],
-      },
-      timesS,
-    );
+  const everyRow = Int32Array.from(timesS, (_, i) => i);
+  const width = model.gases.length + 1;
+  const seriesAt = (rows: readonly Float64Array[]): AirSeries => {
+    const values = new Float64Array(rows.length * width);
+    for (const [i, row] of rows.entries()) values.set(row, i * width);
+    return seriesOf(model, { values, width }, everyRow);
+  };
   const banded = (height: HeightAir, band: Band | undefined): HeightAir =>
     band && height.layered
       ? {
@@ -262,10 +268,9 @@ interface LayerRuns {
   readonly adverse: readonly LayerRun[];
 }
 
-function layerRuns(model: AirModel, gases: AirGasTable, rows: AnswerTrack | undefined): LayerRuns {
+function layerRuns(model: AirModel, gases: AirGasTable, nodesS: Float64Array): LayerRuns {
   const one = layerCase(model, gases);
-  const times = new Set(rows?.pieces.flatMap((piece) => piece.rows.map((row) => row.t)) ?? []);
-  const timesS = [...times].sort((a, b) => a - b);
+  const timesS = [...new Set(nodesS)];
   const { network } = one;
   const overrides = model.input.layers ?? {};
   const hasFalls = network.weirs.some((weir) => weir.b >= 0 && weir.sillA !== weir.sillB);
@@ -285,14 +290,13 @@ function layersOfSpace(
   model: AirModel,
   layers: LayerRuns,
   space: number,
-  mixed: AnswerTrack,
+  { oxygenFraction, gasFraction }: AirSeries,
   timesS: readonly number[],
 ): SpaceLayers {
   if (layers.usual) {
     return spaceLayers(layers.one, layers.usual.track, space, model.gases, timesS);
   }
   const none = timesS.map(() => 0);
-  const { oxygenFraction, gasFraction } = seriesOf(model, mixed, timesS);
   const same = { oxygenFraction, gasFraction };
   return {
     floorLayerDepthM: none,
@@ -303,168 +307,140 @@ function layersOfSpace(
   };
 }
 
-function boundAnswer(
-  place: Pick<ZonePlace, 'model' | 'runs' | 'releases'>,
-  mouth: BoundMouth,
-): AnswerTrack {
-  const { model, runs, releases } = place;
-  const width = model.gases.length + 1;
-  const boundOf = (t: number, fractions: Float64Array): Float64Array => {
-    const values = new Float64Array(width);
-    writeZoneBound(model, releases, mouth, t, fractions, values);
-    return values;
-  };
-  const pieces = runs.tracks[0] ?? [];
-  return {
-    pieces: pieces.map((piece, at) => {
-      const isLast = at + 1 === pieces.length;
-      return {
-        rows: piece.nodes.map((node, i): QuantityRow => {
-          // At the end of a piece nothing of the next one has been released yet.
-          const t = i + 1 === piece.nodes.length && !isLast ? justBefore(node.t) : node.t;
-          const values = runs.tracks
-            .flatMap((track) => {
-              const one = track[at]?.nodes[i];
-              if (!one) return [];
-              return [
-                boundOf(
-                  t,
-                  spaceFractions(
-                    model,
-                    one.amounts,
-                    one.capacities,
-                    mouth.space,
-                    runs.displacement,
-                  ),
-                ),
-              ];
-            })
-            .reduce(worseOf);
-          return { t: node.t, values, slopes: undefined };
-        }),
-        valuesAt: (t: number) =>
-          runFractions(model, runs, at, mouth.space, t)
-            .map((fractions) => boundOf(t, fractions))
-            .reduce(worseOf),
-      };
-    }),
-  };
-}
-
-function justBefore(t: number): number {
-  return t - 1e-9 * Math.max(1, t);
+/** A track with its extremes. */
+function answerOf(track: FlatTrack, gases: readonly string[]): Answer {
+  return { track, minimum: oxygenMinimum(track), maximum: gasMaxima(track, gases) };
 }
 
 function heightAnswer(place: ZonePlace, heightM: number, crossings: Crossing[]): HeightAir {
-  const { model, zone, mixed, mixedSeries, timesS, releases } = place;
-  const mouth = boundMouth(
-    model,
-    releases,
-    model.indexOf.get(zone.space) ?? 0,
-    zone.floorLevelM,
+  const { model, runs, zone, mixed, mixedSeries, rows, releases } = place;
+  const space = model.indexOf.get(zone.space) ?? 0;
+  const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
+  const boundAnswer = (): Answer => answerOf(boundTrack(model, runs, releases, mouth), model.gases);
+  if (place.isStraight) {
+    const bound = onFirstUse(boundAnswer);
+    const series = onFirstUse(() => seriesOf(model, bound().track, rows));
+    addCrossings(
+      place,
+      heightM,
+      { mixed: () => mixed.track, bound: () => bound().track },
+      crossings,
+    );
+    return {
+      heightM,
+      mixed: mixedSeries,
+      get bound() {
+        return series();
+      },
+      minimum: {
+        mixed: mixed.minimum,
+        get bound() {
+          return bound().minimum;
+        },
+      },
+      maximum: {
+        mixed: mixed.maximum,
+        get bound() {
+          return bound().maximum;
+        },
+      },
+    };
+  }
+  const bound = boundAnswer();
+  const layered = layeredAnswers(place, mouth, bound.track);
+  const tracks = { mixed: () => mixed.track, bound: () => bound.track };
+  addCrossings(
+    place,
     heightM,
+    layered ? { ...tracks, layered: () => layered.usual.track } : tracks,
+    crossings,
   );
-  const bound = boundAnswer(place, mouth);
-  const layered = layeredAnswers(place, mouth, bound);
-  const answers = [
-    ['mixed', mixed],
-    ['bound', bound],
-    ...(layered ? ([['layered', layered.usual]] as const) : []),
-  ] as const;
+  const common = { heightM, mixed: mixedSeries, bound: seriesOf(model, bound.track, rows) };
+  const minimum = { mixed: mixed.minimum, bound: bound.minimum };
+  const maximum = { mixed: mixed.maximum, bound: bound.maximum };
+  if (!layered) return { ...common, minimum, maximum };
+  const { usual, adverse } = layered;
+  return {
+    ...common,
+    layered: {
+      ...seriesOf(model, usual.track, layered.rows),
+      adverse: seriesOf(model, adverse, layered.rows),
+    },
+    minimum: { ...minimum, layered: usual.minimum },
+    maximum: { ...maximum, layered: usual.maximum },
+  };
+}
+
+/**
+ * A value worked out when it is first asked for. Of a straight run most callers want the mixed
+ * answer alone, and its bound is the dearer part.
+ */
+function onFirstUse<T>(work: () => T): () => T {
+  let known: { readonly value: T } | undefined;
+  return () => {
+    known ??= { value: work() };
+    return known.value;
+  };
+}
+
+function addCrossings(
+  { model, zone }: ZonePlace,
+  heightM: number,
+  tracks: Readonly<Partial<Record<AirAnswer, () => FlatTrack>>>,
+  crossings: Crossing[],
+): void {
   for (const { quantity, value } of model.input.thresholds ?? []) {
     const column = quantity === 'oxygenFraction' ? 0 : model.gases.indexOf(quantity) + 1;
     if (quantity !== 'oxygenFraction' && column === 0) continue;
-    for (const [answer, track] of answers) {
+    for (const answer of ['mixed', 'bound', 'layered'] as const) {
+      const track = tracks[answer]?.();
+      if (!track) continue;
       for (const found of crossingsOf(track, column, value)) {
         crossings.push({ zone: zone.id, heightM, answer, quantity, value, ...found });
       }
     }
   }
-  const common = {
-    heightM,
-    mixed: mixedSeries,
-    bound: seriesOf(model, bound, timesS),
-  };
-  const minimum = { mixed: oxygenMinimum(mixed), bound: oxygenMinimum(bound) };
-  const maximum = {
-    mixed: gasMaxima(mixed, model.gases),
-    bound: gasMaxima(bound, model.gases),
-  };
-  if (!layered) return { ...common, minimum, maximum };
-  return {
-    ...common,
-    layered: {
-      ...seriesOf(model, layered.usual, timesS),
-      adverse: seriesOf(model, layered.adverse, timesS),
-    },
-    minimum: { ...minimum, layered: oxygenMinimum(layered.usual) },
-    maximum: { ...maximum, layered: gasMaxima(layered.usual, model.gases) },
-  };
 }
 
 /** The usual two-layer answer at a mouth, and the worst of the runs without any mixing. */
 function layeredAnswers(
   place: ZonePlace,
   mouth: BoundMouth,
-  bound: AnswerTrack,
-): { readonly usual: AnswerTrack; readonly adverse: AnswerTrack } | undefined {
+  bound: FlatTrack,
+): { readonly usual: Answer; readonly adverse: FlatTrack; readonly rows: Int32Array } | undefined {
   const { model, zone, layers } = place;
   if (!layers) return undefined;
-  if (!layers.usual) return { usual: place.mixed, adverse: place.mixed };
+  if (!layers.usual) return { usual: place.mixed, adverse: place.mixed.track, rows: place.rows };
   const at = layerMouth(model, mouth, zone.floorLevelM);
-  const bounds = bound.pieces.flatMap((piece) => piece.rows);
-  const rowsOf = (run: LayerRun): AnswerTrack =>
-    layeredRows(layers.one, run.track, at, run.parameters, bounds);
-  return { usual: rowsOf(layers.usual), adverse: worstTrack(layers.adverse.map(rowsOf)) };
+  const bounds = rowsOf(bound);
+  const width = model.gases.length + 1;
+  const rowsIn = (run: LayerRun): FlatTrack =>
+    flatTrack(layeredRows(layers.one, run.track, at, run.parameters, bounds), width);
+  const usual = rowsIn(layers.usual);
+  return {
+    usual: answerOf(usual, model.gases),
+    adverse: worstTrack(layers.adverse.map(rowsIn), usual),
+    rows: outputRows(usual.timesS, place.timesS),
+  };
 }
 
 /** The worse of several answers at each row; all have the same times. */
-function worstTrack(tracks: readonly AnswerTrack[]): AnswerTrack {
-  const all = tracks.map((track) => track.pieces.flatMap((piece) => piece.rows));
-  const [first = []] = all;
-  const rows = first.map((row, i): QuantityRow => ({
-    t: row.t,
-    values: all.map((one) => one[i]?.values ?? row.values).reduce(worseOf),
-    slopes: undefined,
-  }));
-  return { pieces: [{ rows, valuesAt: () => new Float64Array(0) }] };
-}
-
-/** The rows at the output times; at a jump the state after it. */
-function seriesOf(model: AirModel, track: AnswerTrack, timesS: readonly number[]): AirSeries {
-  const { pressurePa } = model.input.ambient;
-  const rows = track.pieces.flatMap((piece) => piece.rows);
-  const oxygenFraction: number[] = [];
-  const oxygenPartialPressurePa: number[] = [];
-  const gasFraction = model.gases.map((): number[] => []);
-  let at = 0;
-  for (const t of timesS) {
-    while ((rows[at + 1]?.t ?? Infinity) <= t) at++;
-    const values = rows[at]?.values ?? new Float64Array(model.gases.length + 1);
-    const oxygen = values[0] ?? 0;
-    oxygenFraction.push(oxygen);
-    oxygenPartialPressurePa.push(
-      oxygenPartialPressure(
-        oxygen,
-        Math.max(0, 1 - oxygen / OXYGEN_IN_DRY_AIR),
-        pressurePa,
-        model.vapourPressurePa,
-      ),
-    );
-    for (const [i, column] of gasFraction.entries()) column.push(values[i + 1] ?? 0);
+function worstTrack(tracks: readonly FlatTrack[], like: FlatTrack): FlatTrack {
+  const [first = like, ...others] = tracks;
+  const values = Float64Array.from(first.values);
+  for (const one of others) {
+    for (let at = 0; at < values.length; at += one.width) {
+      keepWorse(one.values.subarray(at, at + one.width), values, at, one.width);
+    }
   }
-  return {
-    oxygenFraction,
-    oxygenPartialPressurePa,
-    gasFraction: Object.fromEntries(model.gases.map((gas, i) => [gas, gasFraction[i] ?? []])),
-  };
+  return { ...first, values };
 }
 
 /** What came in, left and stayed, per gas and for oxygen, from the run without mixing volume. */
 function gasBalances(model: AirModel, runs: MixedRuns): Readonly<Record<string, GasBalance>> {
   const n = model.spaces.length;
   const m = model.components.length;
-  const amounts = runs.tracks[0]?.at(-1)?.nodes.at(-1)?.amounts ?? new Float64Array((n + 2) * m);
+  const amounts = runs.tracks[0].last;
   const balances: Record<string, GasBalance> = {};
   for (const gas of new Set(['O2', ...model.gases])) {
     let held = 0;

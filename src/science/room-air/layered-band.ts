@@ -2,13 +2,15 @@ import { sortedQuantile } from '../numerics/quantile.js';
 import { rankCorrelation } from '../numerics/rank-correlation.js';
 import type { AirGasTable } from './air-gases.js';
 import type { AirInput } from './air-input.js';
-import { airModel } from './air-model.js';
+import { flowSegments } from './air-flows.js';
+import { airModel, type AirModel } from './air-model.js';
 import type { Driver } from './air-result.js';
+import { rowsOf, type QuantityRow } from './answer-track.js';
 import { SAMPLED_INPUTS } from './input-distributions.js';
 import { layerCase, layeredRows, type LayerMouth } from './layered-answer.js';
 import { COARSE, layeredTrack } from './layered-track.js';
 import { mixedTrack } from './mixed-track.js';
-import { quantitiesOf, spaceFractions, type QuantityRow } from './mixed-values.js';
+import { spaceTrack, type MixedRuns } from './mixed-values.js';
 import { sampledInput, sampledLayers, uncertaintyDraws } from './sampled-input.js';
 
 /** A mouth whose band is wanted, with the rows of its bound in the usual run. */
@@ -69,25 +71,13 @@ export function layeredBands(
     const parameters = sampledLayers(input, draw);
     const hasLayers = one.network.layers.length > 0;
     const track = hasLayers ? layeredTrack(one.network, parameters, timesS, COARSE) : undefined;
-    const pieces = hasLayers ? [] : mixedTrack(model, timesS, 'pushOut', false);
+    const mixed = hasLayers ? undefined : mixedOf(model, timesS);
     for (const [m, mouth] of mouths.entries()) {
       const rows = track
         ? (layeredRows(one, track, mouth.at, parameters, mouth.bounds).pieces[0]?.rows ?? [])
-        : pieces.flatMap((piece) =>
-            piece.nodes.map((node) => ({
-              t: node.t,
-              values: quantitiesOf(
-                model,
-                spaceFractions(
-                  model,
-                  node.amounts,
-                  node.capacities,
-                  mouth.at.mouth.space,
-                  'pushOut',
-                ),
-              ),
-            })),
-          );
+        : mixed
+          ? rowsOf(spaceTrack(model, mixed, mouth.at.mouth.space))
+          : [];
       let at = 0;
       for (const [i, t] of timesS.entries()) {
         while ((rows[at + 1]?.t ?? Infinity) <= t) at++;
@@ -120,6 +110,18 @@ export function layeredBands(
       ),
     ),
   };
+}
+
+/** The mixed answer of a draw in which nothing lies as a layer. */
+function mixedOf(model: AirModel, timesS: readonly number[]): MixedRuns {
+  const options = {
+    displacement: 'pushOut',
+    useMixingVolume: false,
+    wantsSlopes: false,
+    wantsBetween: false,
+  } as const;
+  const segments = flowSegments(model, 'pushOut');
+  return { displacement: 'pushOut', tracks: [mixedTrack(model, segments, timesS, options)] };
 }
 
 function bandOf(store: Float32Array, times: number, width: number, count: number): Band {

@@ -1,11 +1,28 @@
 import { exponentialStep } from '../numerics/matrix-exponential.js';
+import { STEP_WEIGHTS } from '../numerics/runge-kutta.js';
 import { GRAVITY_M_PER_S2, MOLAR_GAS_CONSTANT } from './air-constants.js';
 import { addRelease, type Displacement, type FlowSegment, type OpenLink } from './air-flows.js';
 import type { AirModel } from './air-model.js';
 import { flowsWithNet } from './doorway.js';
 import { rectangularFloorExchange } from './floor-opening.js';
-import { releaseFlow } from './release-flow.js';
+import { releaseFlow, releasedVolume, type ReleasePlan } from './release-flow.js';
 import { verticalOpeningFlows } from './vertical-openings.js';
+
+/** A release that decays through a segment. */
+interface DecayingSource {
+  readonly plan: ReleasePlan;
+  readonly decayS: number;
+  /** Flow at the start of the release [m3/s]. */
+  readonly firstM3PerS: number;
+  /** Entries of B that it feeds, per m3/s. */
+  readonly entries: Int32Array;
+  readonly shares: Float64Array;
+  /** Brings the sum that a step forms of the flow to what is let out in it [-]. */
+  factor: number;
+  /** The factor with which the slope at the start of the step was formed, and that start. */
+  startFactor: number;
+  startS: number;
+}
 
 /**
  * The linear balance of all spaces at one moment, dN/dt = A N + B, as a list of flows.
@@ -49,6 +66,7 @@ export interface MixedBalance {
   readonly replaced: Float64Array;
   /** Exchange of each link at a reduced gravity of 1 m/s2 [m3/s]; holes only. */
   readonly holeExchange: Float64Array;
+  readonly decaying: readonly DecayingSource[];
   /** The largest of `replaced`, of the flows last set [1/s]. */
   turnover: number;
 }
@@ -117,6 +135,7 @@ export function mixedBalance(
     holeExchange: Float64Array.from(segment.links, ({ floorHole }) =>
       floorHole ? rectangularFloorExchange(floorHole.widthM, floorHole.lengthM, 1) : 0,
     ),
+    decaying: segment.decaying.flatMap((plan) => decayingSource(model, plan, displacement)),
     turnover: 0,
   };
   for (const [from, to, flow] of fixed) addFlow(balance, from, to, flow);
@@ -133,16 +152,74 @@ function addFlow(balance: MixedBalance, from: number, to: number, flow: number):
   balance.flow[at] = flow;
 }
 
+function decayingSource(
+  model: AirModel,
+  plan: ReleasePlan,
+  displacement: Displacement,
+): readonly DecayingSource[] {
+  const { decayS } = plan;
+  if (decayS === undefined) return [];
+  const unit = new Float64Array(model.spaces.length * model.components.length);
+  addRelease(model, plan, 1, unit, displacement);
+  const entries = Int32Array.from([...unit.keys()].filter((at) => unit[at] !== 0));
+  return [
+    {
+      plan,
+      decayS,
+      firstM3PerS: releaseFlow(plan, plan.startS),
+      entries,
+      shares: Float64Array.from(entries, (at) => unit[at] ?? 0),
+      factor: 1,
+      startFactor: 1,
+      startS: NaN,
+    },
+  ];
+}
+
+/** Flow of a decaying release, its last moment included [m3/s]. */
+function decayingFlow({ plan, decayS, firstM3PerS }: DecayingSource, t: number): number {
+  return firstM3PerS * Math.exp(-(t - plan.startS) / decayS);
+}
+
+/**
+ * Sets for each decaying release the factor with which a step lets out just what the release does.
+ *
+ * @param t start of the step [s]
+ * @param h its length [s]
+ */
+export function fitDecays(balance: MixedBalance, t: number, h: number): void {
+  for (const source of balance.decaying) {
+    const { plan } = source;
+    const letOut = releasedVolume(plan, t + h) - releasedVolume(plan, t);
+    // The slope at the start of a step was formed with the factor of the last one that was accepted;
+    // a step tried again still starts where it did.
+    if (t !== source.startS) source.startFactor = source.factor;
+    source.startS = t;
+    let rest = letOut / h;
+    let formed = 0;
+    for (const [weight, share] of STEP_WEIGHTS) {
+      const flow = weight * decayingFlow(source, t + share * h);
+      if (share === 0) rest -= flow * source.startFactor;
+      else formed += flow;
+    }
+    if (formed > 0 && rest > 0) source.factor = rest / formed;
+  }
+}
+
 /** What is let out at a time, and the pressures that pass it on. */
 function setPushes(balance: MixedBalance, t: number): void {
-  const { model, segment, displacement, own, net, pressure } = balance;
+  const { segment, displacement, own, net, pressure } = balance;
   const n = net.length;
   own.set(segment.sources);
   net.set(segment.net);
-  for (const release of segment.decaying) {
-    const flow = releaseFlow(release, t);
-    addRelease(model, release, flow, own, displacement);
-    if (displacement === 'pushOut') net[release.space] = (net[release.space] ?? 0) + flow;
+  for (const source of balance.decaying) {
+    const flow = decayingFlow(source, t) * source.factor;
+    for (let e = 0; e < source.entries.length; e++) {
+      const at = source.entries[e] ?? 0;
+      own[at] = (own[at] ?? 0) + flow * (source.shares[e] ?? 0);
+    }
+    const { space } = source.plan;
+    if (displacement === 'pushOut') net[space] = (net[space] ?? 0) + flow;
   }
   for (let i = 0; i < n; i++) {
     let value = 0;
@@ -171,7 +248,7 @@ export function setFlows(balance: MixedBalance, t: number, amounts: Float64Array
   const { segment, fresh, pressure, capacities, inverse } = balance;
   const n = capacities.length;
   const { links, leakM2 } = segment;
-  if (segment.decaying.length > 0) setPushes(balance, t);
+  if (balance.decaying.length > 0) setPushes(balance, t);
   balance.count = balance.fixedCount;
   fresh.set(segment.freshM3PerS);
   for (let i = 0; i < n; i++) {
@@ -204,8 +281,7 @@ function addLink(balance: MixedBalance, link: OpenLink, index: number): void {
   const n = pressure.length;
   const { a, b } = link;
   const through =
-    link.conductanceM2 *
-    ((a < n ? (pressure[a] ?? 0) : 0) - (b < n ? (pressure[b] ?? 0) : 0));
+    link.conductanceM2 * ((a < n ? (pressure[a] ?? 0) : 0) - (b < n ? (pressure[b] ?? 0) : 0));
   const densityA = a < n ? (density[a] ?? 0) : outdoorDensity;
   const densityB = b < n ? (density[b] ?? 0) : outdoorDensity;
   let aToB: number;

@@ -10,6 +10,7 @@ import { addRelease, type Displacement, type FlowSegment } from './air-flows.js'
 import type { AirModel } from './air-model.js';
 import {
   advance,
+  fitDecays,
   isSteady,
   mixedBalance,
   seriesWork,
@@ -49,8 +50,6 @@ export interface MixedOptions {
 
 /** Tolerances where flows depend on what the spaces hold: relative, and as a fraction of a space. */
 const TOLERANCE = { relative: 1e-6, fraction: 1e-10 } as const;
-/** Where a release decays: so close that what comes in is what the release lets out. */
-const DECAY_TOLERANCE = { relative: 1e-8, fraction: 1e-11 } as const;
 /**
  * Longest step, over the time in which the quickest space is replaced once [-]. Within it the pair
  * of formulas keeps amounts not below 0 for flows that do not change: its radius of absolute
@@ -241,7 +240,8 @@ function advancePiece(run: Run, balance: MixedBalance, first: number, until: num
   const { timesS, held, state, series } = run;
   setFlows(balance, timesS[first] ?? 0, state);
   for (let node = first; node < until; node++) {
-    if (node > first) advance(balance, state, (timesS[node] ?? 0) - (timesS[node - 1] ?? 0), series);
+    if (node > first)
+      advance(balance, state, (timesS[node] ?? 0) - (timesS[node - 1] ?? 0), series);
     run.amounts.set(state.subarray(0, held), node * held);
     if (run.slopes) {
       writeSlopes(balance, timesS[node] ?? 0, state, series.rates);
@@ -269,10 +269,9 @@ interface KeptStep {
 function integratePiece(run: Run, balance: MixedBalance, first: number, until: number): void {
   const { timesS, held, work, dense, amounts, slopes, tolerances, capacities } = run;
   const m = run.model.components.length;
-  const tolerance = balance.segment.decaying.length > 0 ? DECAY_TOLERANCE : TOLERANCE;
   const whole = capacities.reduce((sum, one) => sum + one, 0);
   for (let i = 0; i < tolerances.length; i++) {
-    tolerances[i] = tolerance.fraction * (capacities[Math.floor(i / m)] ?? whole);
+    tolerances[i] = TOLERANCE.fraction * (capacities[Math.floor(i / m)] ?? whole);
   }
   const kept: KeptStep[] = [];
   let node = first;
@@ -285,9 +284,12 @@ function integratePiece(run: Run, balance: MixedBalance, first: number, until: n
     timesS[first] ?? 0,
     timesS[until - 1] ?? 0,
     {
-      relative: tolerance.relative,
+      relative: TOLERANCE.relative,
       absolute: tolerances,
       firstStepS: run.stepS,
+      onTry: (t, h) => {
+        fitDecays(balance, t, h);
+      },
       longestStepS: () => Math.min(MAX_STEP_S, MOST_TURNOVERS / balance.turnover),
     },
     (t0, t1) => {

@@ -3,13 +3,7 @@ import type { FlatTrack } from './answer-track.js';
 import { OXYGEN, type AirModel } from './air-model.js';
 import type { MixedTrack } from './mixed-track.js';
 
-/** Columns of a quantity row: oxygen first, then the gases of the model. */
-export interface QuantityRow {
-  readonly t: number;
-  readonly values: Float64Array;
-  /** Slopes where the answer is smooth; undefined where only the nodes are known. */
-  readonly slopes: Float64Array | undefined;
-}
+export type { QuantityRow } from './answer-track.js';
 
 /**
  * Fractions of one space, one per component [-].
@@ -100,12 +94,7 @@ export function worseOf(a: Float64Array, b: Float64Array): Float64Array {
 }
 
 /** Writes a row into a table where it is worse than what stands there, quantity by quantity. */
-export function keepWorse(
-  row: Float64Array,
-  table: Float64Array,
-  at: number,
-  width: number,
-): void {
+export function keepWorse(row: Float64Array, table: Float64Array, at: number, width: number): void {
   if ((row[0] ?? 0) < (table[at] ?? 0)) table[at] = row[0] ?? 0;
   for (let q = 1; q < width; q++) {
     if ((row[q] ?? 0) > (table[at + q] ?? 0)) table[at + q] = row[q] ?? 0;

@@ -1,5 +1,7 @@
 import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { OXYGEN, spaceAt, type AirModel } from './air-model.js';
+import type { FlatTrack } from './answer-track.js';
+import { episodeEndsS } from './episode-end.js';
 import { frontRadiusAtOnce, frontRadiusContinuous } from './gravity-current.js';
 import { fogDensityRatio } from './fog-density.js';
 import {
@@ -13,6 +15,13 @@ import {
 import type { GasJet } from './momentum.js';
 import { DEFAULT_MANNER, startsAsLayer } from './release-manner.js';
 import { releasedVolume, releaseFlow, type ReleasePlan } from './release-flow.js';
+import {
+  keepWorse,
+  runFractions,
+  worseOf,
+  writeFractions,
+  type MixedRuns,
+} from './mixed-values.js';
 import { reachTimes } from './release-reach.js';
 import { ownVolumeAbove, ownVolumeBelow } from './volume-curve.js';
 
@@ -28,6 +37,12 @@ export interface BoundRelease {
   readonly warmFactor: number;
   readonly gPrime: number;
   readonly startsLayered: boolean;
+  /** End of its first pass in the space where it is let out [s]. */
+  readonly passEndS: number;
+  /** From when on a later episode has closed it, by space; undefined: never. */
+  readonly endsS: Float64Array | undefined;
+  /** Share of each gas, air left out: index among the gases of the model, fraction. */
+  readonly gases: readonly (readonly [gas: number, share: number])[];
 }
 
 /** Earliest moment at which the first-pass bound is asked [s]: before, it is still the source. */
@@ -75,12 +90,17 @@ function jetOf(model: AirModel, plan: ReleasePlan, roomK: number): GasJet | unde
 
 /** All releases with the spaces they reach and how they gather. */
 export function boundReleases(model: AirModel): readonly BoundRelease[] {
-  return model.releases.map((plan) => {
-    const reachS = reachTimes(model, plan);
+  const reach = reachTimes(model);
+  const ends = episodeEndsS(
+    model.releases.map((plan, i) => ({ plan, reachS: reach[i] ?? new Float64Array(0) })),
+    model.spaces.length,
+  );
+  return model.releases.map((plan, i) => {
+    const reachS = reach[i] ?? new Float64Array(0);
     const ambientK = model.input.ambient.temperatureK;
     const warmest = model.spaces.reduce(
-      (most, space, i) =>
-        Number.isFinite(reachS[i] ?? Infinity) ? Math.max(most, space.temperatureK) : most,
+      (most, space, at) =>
+        Number.isFinite(reachS[at] ?? Infinity) ? Math.max(most, space.temperatureK) : most,
       model.spaces[plan.space]?.temperatureK ?? ambientK,
     );
     const roomK = model.spaces[plan.space]?.temperatureK ?? ambientK;
@@ -88,21 +108,36 @@ export function boundReleases(model: AirModel): readonly BoundRelease[] {
     const stages = densityStages(model, plan, roomK);
     const manner = plan.source.manner ?? DEFAULT_MANNER;
     const volumeM3 = model.spaces[plan.space]?.curve.volumeM3 ?? 1;
-    return {
+    const spreading: Spreading = {
       plan,
-      reachS,
       gathering: gatheringOf(stages),
-      isHeavyAtFirst: Math.max(...stages) > NEUTRAL_DENSITY_RATIO.max,
-      isLightAtFirst: Math.min(...stages) < NEUTRAL_DENSITY_RATIO.min,
       warmFactor: warmest / ambientK,
       gPrime: GRAVITY_M_PER_S2 * Math.max(0, warmRatio - 1),
       startsLayered: startsAsLayer(manner, jetOf(model, plan, roomK), volumeM3),
     };
+    return {
+      ...spreading,
+      reachS,
+      isHeavyAtFirst: Math.max(...stages) > NEUTRAL_DENSITY_RATIO.max,
+      isLightAtFirst: Math.min(...stages) < NEUTRAL_DENSITY_RATIO.min,
+      passEndS: firstPassEnd(spreading, spaceAt(model, plan.space).curve.floorAreaM2),
+      endsS: ends.get(plan.episode),
+      gases: Object.entries(plan.shares).flatMap(([gas, share]) => {
+        const at = model.gases.indexOf(gas);
+        return at < 0 ? [] : [[at, share] as const];
+      }),
+    };
   });
 }
 
+/** What the spreading of a release over a floor depends on. */
+type Spreading = Pick<
+  BoundRelease,
+  'plan' | 'gathering' | 'warmFactor' | 'gPrime' | 'startsLayered'
+>;
+
 /** Floor covered by the current of a release [m2], free spreading. */
-function coveredArea(release: BoundRelease, t: number): number {
+function coveredArea(release: Spreading, t: number): number {
   const { plan, warmFactor, gPrime } = release;
   const since = t - plan.startS;
   const gas = releasedVolume(plan, t) * warmFactor;
@@ -125,7 +160,7 @@ function coveredArea(release: BoundRelease, t: number): number {
  * Source: own-room-air (front after huppert-simpson-1980; twice is engineering judgement).
  * Assumes: round front, still air, no entrainment. Accuracy: judgement.
  */
-export function firstPassEnd(release: BoundRelease, floorAreaM2: number): number {
+export function firstPassEnd(release: Spreading, floorAreaM2: number): number {
   const { plan } = release;
   if (!hasFirstPass(release)) return plan.startS;
   let low = 0;
@@ -139,7 +174,7 @@ export function firstPassEnd(release: BoundRelease, floorAreaM2: number): number
   return plan.startS + 2 * high;
 }
 
-function hasFirstPass(release: BoundRelease): boolean {
+function hasFirstPass(release: Spreading): boolean {
   return release.gathering === 'below' && release.startsLayered && release.gPrime > 0;
 }
 
@@ -171,7 +206,7 @@ export function boundMouth(
     aboveM3: ownVolumeAbove(curve, floor, heightM),
     floorAreaM2: curve.floorAreaM2,
     firstPassEndS: releases.map((release) =>
-      release.plan.space === space ? firstPassEnd(release, curve.floorAreaM2) : release.plan.startS,
+      release.plan.space === space ? release.passEndS : release.plan.startS,
     ),
   };
 }
@@ -205,106 +240,260 @@ function releaseBound(
   }
 }
 
-/**
- * Episodes whose gas is bounded and not taken as mixed, at a time in a space.
- *
- * An episode is over once another that reaches the space has started after its own last release.
- */
-function isCurrent(
-  releases: readonly BoundRelease[],
-  episode: string,
-  space: number,
-  t: number,
-): boolean {
-  let end = -Infinity;
-  let started = false;
-  for (const { plan, reachS } of releases) {
-    if (plan.episode !== episode || (reachS[space] ?? Infinity) > t) continue;
-    started = true;
-    end = Math.max(end, Math.min(plan.endS, t));
-  }
-  if (!started) return false;
-  return !releases.some(
-    ({ plan, reachS }) =>
-      plan.episode !== episode &&
-      plan.startS > firstStart(releases, episode) &&
-      plan.startS <= t &&
-      Math.max(plan.startS, reachS[space] ?? Infinity) <= t &&
-      plan.startS >= end &&
-      firstStart(releases, plan.episode) >= end,
-  );
+/** Adds the bound of one release to the sums by gas. */
+function addBound(release: BoundRelease, bound: number, byGas: Float64Array): void {
+  for (const [gas, share] of release.gases) byGas[gas] = (byGas[gas] ?? 0) + bound * share;
 }
 
-function firstStart(releases: readonly BoundRelease[], episode: string): number {
-  return releases.reduce(
-    (first, { plan }) => (plan.episode === episode ? Math.min(first, plan.startS) : first),
-    Infinity,
-  );
-}
+const isClosed = (release: BoundRelease, space: number, t: number): boolean =>
+  release.endsS !== undefined && t >= (release.endsS[space] ?? Infinity);
 
 /**
- * The bound at a mouth: mixed background plus the inventory bound of the current episode [-].
+ * Sums of the bounds of all gas that no reading has closed, by gas of the model [-].
  *
- *   gas: mixed of what is not current + sum of the bounds, at most 1
- *   oxygen: oxygen of the background x (1 - sum of the bounds), at least 0
- *
- * @param model     resolved input
- * @param releases  all releases
- * @param mouth     mouth
- * @param t         time [s]
- * @param fractions well-mixed fraction of each component in the space of the mouth
- * @param out       written: oxygen, then each gas of the model
+ * @param releases all releases
+ * @param mouth    mouth
+ * @param t        time [s]
+ * @param byGas    written; not capped
  */
-export function writeZoneBound(
-  model: AirModel,
+function writeBoundSums(
   releases: readonly BoundRelease[],
   mouth: BoundMouth,
   t: number,
+  byGas: Float64Array,
+): void {
+  byGas.fill(0);
+  for (const [index, release] of releases.entries()) {
+    if (isClosed(release, mouth.space, t)) continue;
+    addBound(release, releaseBound(release, mouth, mouth.firstPassEndS[index] ?? 0, t), byGas);
+  }
+}
+
+/**
+ * The same sums at all nodes of a run, in one pass.
+ *
+ * A release that is over and has settled does not change any more: it is added once to a sum that is
+ * kept. Only what flows, spreads or has yet to come is asked at every node.
+ */
+function boundSums(
+  releases: readonly BoundRelease[],
+  mouth: BoundMouth,
+  timesS: Float64Array,
+  gases: number,
+): Float64Array {
+  const { space, firstPassEndS } = mouth;
+  const coming = [...releases.keys()]
+    .filter((index) => (releases[index]?.reachS[space] ?? Infinity) < Infinity)
+    .sort((a, b) => (releases[a]?.reachS[space] ?? 0) - (releases[b]?.reachS[space] ?? 0));
+  const settled = new Float64Array(gases);
+  const now = new Float64Array(gases);
+  // Closed episodes leave the kept sum again, so theirs are not put there.
+  let active: number[] = [];
+  let next = 0;
+  const sums = new Float64Array(timesS.length * gases);
+  for (let node = 0; node < timesS.length; node++) {
+    const t = timesS[node] ?? 0;
+    for (; next < coming.length; next++) {
+      const index = coming[next] ?? 0;
+      if ((releases[index]?.reachS[space] ?? Infinity) > t) break;
+      active.push(index);
+    }
+    now.set(settled);
+    let ended = false;
+    for (const index of active) {
+      const release = releases[index];
+      if (!release) continue;
+      const passEndS = firstPassEndS[index] ?? 0;
+      if (isClosed(release, space, t)) {
+        ended = true;
+        continue;
+      }
+      const bound = releaseBound(release, mouth, passEndS, t);
+      addBound(release, bound, now);
+      if (release.endsS || t < release.plan.endS || t < passEndS) continue;
+      addBound(release, bound, settled);
+      ended = true;
+    }
+    if (ended) {
+      active = active.filter((index) => {
+        const release = releases[index];
+        if (!release || isClosed(release, space, t)) return false;
+        return (
+          release.endsS !== undefined || t < release.plan.endS || t < (firstPassEndS[index] ?? 0)
+        );
+      });
+    }
+    sums.set(now, node * gases);
+  }
+  return sums;
+}
+
+/** For each component, when its gas in a space is bounded instead of mixed [s]: from, until. */
+function boundedSpans(
+  model: AirModel,
+  releases: readonly BoundRelease[],
+  space: number,
+): readonly (readonly [fromS: number, untilS: number])[] {
+  const spans = new Map<string, [number, number]>();
+  for (const { plan, reachS, endsS } of releases) {
+    const origin = model.origins.get(plan.index) ?? '';
+    const from = reachS[space] ?? Infinity;
+    const known = spans.get(origin);
+    if (known) known[0] = Math.min(known[0], from);
+    else spans.set(origin, [from, endsS?.[space] ?? Infinity]);
+  }
+  return model.components.map(
+    (one) => (one.origin === undefined ? undefined : spans.get(one.origin)) ?? [Infinity, Infinity],
+  );
+}
+
+/**
+ * Bound from the mixed fractions and the sums of the bounds [-].
+ *
+ *   gas: mixed of what is not bounded + sum of the bounds, at most 1
+ *   oxygen: oxygen of the background x (1 - sum of the bounds), at least 0
+ *
+ * @param model    resolved input
+ * @param bounded  by component: whether its gas is bounded
+ * @param fractions well-mixed fraction of each component in the space of the mouth
+ * @param byGas    sums of the bounds, from `sumsAt` on
+ * @param out      written: oxygen, then each gas of the model
+ */
+function writeBound(
+  model: AirModel,
+  bounded: Uint8Array,
   fractions: Float64Array,
+  byGas: Float64Array,
+  sumsAt: number,
+  work: BoundWork,
   out: Float64Array,
 ): void {
-  const current = new Set(
-    model.episodes.filter((episode) => isCurrent(releases, episode, mouth.space, t)),
-  );
-  const byGas = new Float64Array(model.gases.length);
-  let sum = 0;
-  let oxygenBound = 0;
-  for (const [index, release] of releases.entries()) {
-    if (!current.has(release.plan.episode)) continue;
-    const bound = releaseBound(release, mouth, mouth.firstPassEndS[index] ?? 0, t);
-    if (bound === 0) continue;
-    for (const [gas, share] of Object.entries(release.plan.shares)) {
-      if (gas === 'air') continue;
-      if (gas === 'O2') oxygenBound += bound * share;
-      else sum += bound * share;
-      const at = model.gases.indexOf(gas);
-      if (at >= 0) byGas[at] = (byGas[at] ?? 0) + bound * share;
-    }
-  }
-  let currentMixed = 0;
-  let currentOxygen = 0;
-  const mixed = new Float64Array(model.gases.length);
-  const background = new Float64Array(model.gases.length);
-  for (const [k, one] of model.components.entries()) {
+  const { columns, oxygenGas, mixed, background } = work;
+  const gases = model.gases.length;
+  mixed.fill(0);
+  background.fill(0);
+  let boundedMixed = 0;
+  let boundedOxygen = 0;
+  for (let k = 0; k < columns.length; k++) {
     if (k === OXYGEN) continue;
     const x = fractions[k] ?? 0;
-    const at = model.gases.indexOf(one.gas);
+    const at = columns[k] ?? 0;
     mixed[at] = (mixed[at] ?? 0) + x;
-    if (one.episode !== undefined && current.has(one.episode)) {
-      currentMixed += x;
-      if (one.gas === 'O2') currentOxygen += x;
+    if (bounded[k] === 1) {
+      boundedMixed += x;
+      if (at === oxygenGas) boundedOxygen += x;
     } else background[at] = (background[at] ?? 0) + x;
   }
+  let sum = 0;
+  for (let g = 0; g < gases; g++) if (g !== oxygenGas) sum += byGas[sumsAt + g] ?? 0;
   const oxygen = fractions[OXYGEN] ?? 0;
-  const left = 1 - currentMixed;
-  const before = left > 1e-9 ? Math.max(0, oxygen - currentOxygen) / left : 0;
+  const left = 1 - boundedMixed;
+  const before = left > 1e-9 ? Math.max(0, oxygen - boundedOxygen) / left : 0;
   out[0] = Math.min(oxygen, before * Math.max(0, 1 - Math.min(1, sum)));
-  for (const [at, gas] of model.gases.entries()) {
-    if (gas === 'O2') {
-      const enriched = Math.min(1, oxygenBound);
-      out[at + 1] = Math.max(oxygen, before * (1 - enriched) + enriched);
+  for (let g = 0; g < gases; g++) {
+    const most = byGas[sumsAt + g] ?? 0;
+    if (g === oxygenGas) {
+      const enriched = Math.min(1, most);
+      out[g + 1] = Math.max(oxygen, before * (1 - enriched) + enriched);
     } else {
-      out[at + 1] = Math.min(1, Math.max(mixed[at] ?? 0, (background[at] ?? 0) + (byGas[at] ?? 0)));
+      out[g + 1] = Math.min(1, Math.max(mixed[g] ?? 0, (background[g] ?? 0) + most));
     }
   }
+}
+
+interface BoundWork {
+  /** Gas of each component; oxygen as a gas, or -1. */
+  readonly columns: Int32Array;
+  readonly oxygenGas: number;
+  readonly mixed: Float64Array;
+  readonly background: Float64Array;
+}
+
+function boundWork(model: AirModel): BoundWork {
+  return {
+    columns: Int32Array.from(model.components, (one) => model.gases.indexOf(one.gas)),
+    oxygenGas: model.gases.indexOf('O2'),
+    mixed: new Float64Array(model.gases.length),
+    background: new Float64Array(model.gases.length),
+  };
+}
+
+/** At the end of a piece nothing of the next one has been released yet. */
+const justBefore = (t: number): number => t - 1e-9 * Math.max(1, t);
+
+/**
+ * The bound at a mouth over the whole time: mixed background plus the inventory bound of all gas
+ * that no reading has closed [-]; the worse of all runs.
+ *
+ * @param model    resolved input
+ * @param runs     well-mixed runs
+ * @param releases all releases
+ * @param mouth    mouth
+ * @returns oxygen, then each gas of the model, at the nodes of the runs
+ */
+export function boundTrack(
+  model: AirModel,
+  runs: MixedRuns,
+  releases: readonly BoundRelease[],
+  mouth: BoundMouth,
+): FlatTrack {
+  const { displacement, tracks } = runs;
+  const [first] = tracks;
+  const { timesS, firstNode } = first;
+  const n = model.spaces.length;
+  const m = model.components.length;
+  const { space } = mouth;
+  const gases = model.gases.length;
+  const width = gases + 1;
+  const spans = boundedSpans(model, releases, space);
+  const work = boundWork(model);
+  const askedS = Float64Array.from(timesS);
+  for (let piece = 1; piece + 1 < firstNode.length; piece++) {
+    const end = (firstNode[piece] ?? 0) - 1;
+    askedS[end] = justBefore(askedS[end] ?? 0);
+  }
+  const sums = boundSums(releases, mouth, askedS, gases);
+  const values = new Float64Array(timesS.length * width);
+  const fractions = new Float64Array(m);
+  const row = new Float64Array(width);
+  const bounded = new Uint8Array(m);
+  const setBounded = (t: number): void => {
+    for (let k = 0; k < m; k++) {
+      const span = spans[k];
+      bounded[k] = span && t >= span[0] && t < span[1] ? 1 : 0;
+    }
+  };
+  for (let piece = 0; piece + 1 < firstNode.length; piece++) {
+    const until = firstNode[piece + 1] ?? 0;
+    for (let node = firstNode[piece] ?? 0; node < until; node++) {
+      setBounded(askedS[node] ?? 0);
+      const offset = (node * n + space) * m;
+      for (const track of tracks) {
+        const capacity = track.capacities[piece]?.[space] ?? 1;
+        writeFractions(model, track.amounts, offset, capacity, displacement, fractions);
+        writeBound(model, bounded, fractions, sums, node * gases, work, row);
+        if (track === first) values.set(row, node * width);
+        else keepWorse(row, values, node * width, width);
+      }
+    }
+  }
+  const byGas = new Float64Array(gases);
+  return {
+    timesS,
+    firstNode,
+    width,
+    values,
+    slopes: undefined,
+    valuesAt: (piece, t) => {
+      setBounded(t);
+      writeBoundSums(releases, mouth, t, byGas);
+      return runFractions(model, runs, piece, space, t)
+        .map((one): Float64Array => {
+          const found = new Float64Array(width);
+          writeBound(model, bounded, one, byGas, 0, work, found);
+          return found;
+        })
+        .reduce(worseOf);
+    },
+  };
 }

@@ -1,0 +1,43 @@
+import { OXYGEN_IN_DRY_AIR } from './air-constants.js';
+import type { AirModel } from './air-model.js';
+import type { AirSeries } from './air-result.js';
+import type { FlatTrack } from './answer-track.js';
+import { oxygenPartialPressure } from './water-vapour.js';
+
+/** Of each output time the last node at or before it; at a jump the state after it. */
+export function outputRows(nodesS: Float64Array, timesS: readonly number[]): Int32Array {
+  let at = 0;
+  return Int32Array.from(timesS, (t) => {
+    while ((nodesS[at + 1] ?? Infinity) <= t) at++;
+    return at;
+  });
+}
+
+/** The series of a track at chosen rows. */
+export function seriesOf(
+  model: AirModel,
+  { values, width }: Pick<FlatTrack, 'values' | 'width'>,
+  rows: Int32Array,
+): AirSeries {
+  const { pressurePa } = model.input.ambient;
+  const count = rows.length;
+  const column = (): number[] => new Array<number>(count).fill(0.5);
+  const oxygenFraction = column();
+  const oxygenPartialPressurePa = column();
+  const gasFraction = model.gases.map((gas) => [gas, column()] as const);
+  for (let i = 0; i < count; i++) {
+    const at = (rows[i] ?? 0) * width;
+    const oxygen = values[at] ?? 0;
+    oxygenFraction[i] = oxygen;
+    oxygenPartialPressurePa[i] = oxygenPartialPressure(
+      oxygen,
+      Math.max(0, 1 - oxygen / OXYGEN_IN_DRY_AIR),
+      pressurePa,
+      model.vapourPressurePa,
+    );
+  }
+  for (const [g, [, series]] of gasFraction.entries()) {
+    for (let i = 0; i < count; i++) series[i] = values[(rows[i] ?? 0) * width + g + 1] ?? 0;
+  }
+  return { oxygenFraction, oxygenPartialPressurePa, gasFraction: Object.fromEntries(gasFraction) };
+}
