@@ -42,6 +42,10 @@ import type { ResolvedRelease } from './resolved-plan.js';
 import { cautionsFor, rulesCited } from './rules-cited.js';
 import { fitting } from './schema-check.js';
 import { sectionView } from './section-view.js';
+import { escapeFindings } from './escape-findings.js';
+import { leastFreshAir } from './least-fresh-air.js';
+import { meterFindings } from './meter-findings.js';
+import { repeatsPerDay } from './repeats-per-day.js';
 import { exposureFindings } from './exposure-findings.js';
 import { pressureFindings } from './pressure-findings.js';
 import { streamFindings } from './stream-findings.js';
@@ -541,6 +545,10 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
       ...streamFindings(resolved),
       ...pressureFindings(resolved, data.catalogue.policy),
       ...exposureFindings(shown.planned, resolved, pack, nameOf),
+      ...escapeFindings(shown, data.catalogue.policy, nameOf),
+      ...meterFindings(shown, data.catalogue.policy, nameOf),
+      ...leastFreshAir(shown, answers, nameOf),
+      ...repeatsPerDay(shown, answers, nameOf),
     ],
     refusals: shown.refusals,
     zones: zoneResults(shown, nameOf),

@@ -6,6 +6,8 @@ import type { Evaluation } from './evaluation.js';
 import { plainFigure } from './figures.js';
 import type { JudgedLevel } from './levels.js';
 import { policyDefault } from './policy-rows.js';
+import type { ZoneOutcome } from './zone-outcomes.js';
+import { clearFrom, holdTime, type ClearSide } from '../science/room-air/hold-time.js';
 
 const followedS = 12 * 3600;
 const stepS = 60;
@@ -53,14 +55,34 @@ function criteriaOf(policy: Policy, levels: readonly JudgedLevel[]): readonly Cr
   ];
 }
 
-/** The moment from which a series meets its level for good, or null. */
-function metFrom(
-  timesS: readonly number[],
-  series: readonly number[],
-  isMet: (value: number) => boolean,
-): number | null {
-  const lastFailing = series.findLastIndex((value) => !isMet(value));
-  return timesS[lastFailing + 1] ?? null;
+interface Cleared {
+  /** Seconds after the end; undefined when not reached while it was followed. */
+  readonly afterS: number | undefined;
+  readonly where: string;
+}
+
+/**
+ * When the layered answer is clear for good where people are in a space, followed as far as the day
+ * is. The mixed answer alone would release a house into a layer on the floor.
+ */
+function layersCleared(
+  planned: readonly ZoneOutcome[],
+  space: string,
+  criterion: Criterion,
+  side: ClearSide,
+  lastEndS: number,
+): readonly Cleared[] {
+  return planned.flatMap((outcome): Cleared[] => {
+    const { level, group, answers, floorCheck } = outcome;
+    const isSame =
+      side === 'atLeast'
+        ? level.quantity === 'oxygenFraction'
+        : level.gas === criterion.quantity && level.failsWhen === 'above';
+    if (group.space !== space || !isSame || !answers.layered) return [];
+    const series = answers.layered.series.map((value) => value * level.scale);
+    const afterS = holdTime(outcome.timesS, series, criterion.value, side, lastEndS);
+    return [{ afterS, where: floorCheck ? `${group.title}, 0.2 m` : group.title }];
+  });
 }
 
 /**
@@ -68,7 +90,7 @@ function metFrom(
  * may enter. The clock never releases a house: a reading does.
  */
 export function holdTimes(
-  { resolved: plan, dayAir: air, dayResult: result, levelsOf }: Evaluation,
+  { resolved: plan, dayAir: air, dayResult: result, planned, levelsOf }: Evaluation,
   answers: AirAnswers,
   policy: Policy,
 ): readonly HoldTime[] {
@@ -110,13 +132,19 @@ export function holdTimes(
       const isOxygen = criterion.quantity === 'oxygenFraction';
       const series = isOxygen ? mixed.oxygenFraction : mixed.gasFraction[criterion.quantity];
       if (!series) return [];
-      const isMet = (value: number) =>
-        isOxygen ? value >= criterion.value : value <= criterion.value;
-      return [{ criterion, isOxygen, at: metFrom(cleared.timesS, series, isMet) }];
+      const side: ClearSide = isOxygen ? 'atLeast' : 'atMost';
+      const mixedAt = clearFrom(cleared.timesS, series, criterion.value, side);
+      const all: readonly Cleared[] = [
+        { afterS: mixedAt, where: 'well mixed' },
+        ...layersCleared(planned, space.id, criterion, side, lastEndS),
+      ];
+      const times = all.flatMap(({ afterS }) => afterS ?? []);
+      const at = times.length < all.length ? null : Math.max(...times);
+      return [{ criterion, isOxygen, at, all, mixedAt }];
     });
     // A space without an act is told of only where something of the day has reached it.
     if (!actSpaces.has(space.id) && times.every(({ at }) => at === 0)) return [];
-    return times.map(({ criterion, isOxygen, at }): HoldTime => ({
+    return times.map(({ criterion, isOxygen, at, all, mixedAt }): HoldTime => ({
       space: space.id,
       spaceTitle: space.title,
       quantity: criterion.quantity,
@@ -129,15 +157,36 @@ export function holdTimes(
         at === null
           ? null
           : plainFigure(at, 's', {
-              method: 'empty space, planned air, well mixed',
-              formula: 'time from which the mixed value meets the level',
+              method:
+                all.length > 1
+                  ? 'empty space, planned air: the longest of well mixed and layered at each place'
+                  : 'empty space, planned air, well mixed',
+              formula: 'time from which the value meets the level for good',
               source: 'own-room-air',
-              range: 'a pit or a floor layer clears more slowly: read it there',
+              range:
+                all.length > 1
+                  ? 'a pit clears more slowly than the air above it: read it there'
+                  : 'a pit or a floor layer clears more slowly: read it there',
+              inputs: all.flatMap(({ afterS, where }) =>
+                afterS === undefined ? [] : [{ name: where, value: Math.ceil(afterS), unit: 's' }],
+              ),
             }),
-      words:
-        at === null
-          ? 'Not reached within 12 hours with the planned air. Open doors or raise the fresh air.'
-          : 'Then take the reading at the lowest places; the clock alone releases nobody.',
+      words: holdWords(at, mixedAt, all),
     }));
   });
+}
+
+function holdWords(
+  at: number | null,
+  mixedAt: number | undefined,
+  all: readonly Cleared[],
+): string {
+  if (at !== null) {
+    return 'Then take the reading at the lowest places; the clock alone releases nobody.';
+  }
+  if (mixedAt === undefined) {
+    return 'Not reached within 12 hours with the planned air. Open doors or raise the fresh air.';
+  }
+  const late = all.filter(({ afterS }) => afterS === undefined).map(({ where }) => where);
+  return `A layer has not cleared by the end of the time followed: ${late.join('; ')}. Stir the air, and let a reading there decide.`;
 }

@@ -51,6 +51,26 @@ export function leastAmount(
   return lastOf(passes, search.high, search.low, search.relative ?? 1e-3);
 }
 
+/**
+ * Largest count that still passes [-], 0 when not even one does: shows of a day, one after another.
+ *
+ * @param passes whether a count is allowed; one more never helps
+ * @param most   largest count asked about, a whole number
+ * @returns whole number from 0 to `most` [-]
+ * Source: own-room-air. Assumes: once a count fails, every larger one fails. Accuracy: exact.
+ * @example largestCount((count) => count <= 5, 24) // 5
+ */
+export function largestCount(passes: (count: number) => boolean, most: number): number {
+  let yes = 0;
+  let no = most + 1;
+  while (no - yes > 1) {
+    const middle = Math.floor((yes + no) / 2);
+    if (passes(middle)) yes = middle;
+    else no = middle;
+  }
+  return yes;
+}
+
 function lastOf(
   passes: (amount: number) => boolean,
   good: number,
