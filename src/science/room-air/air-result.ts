@@ -53,8 +53,22 @@ export interface LayeredSeries extends AirSeries {
   readonly p05?: AirSeries;
   readonly p50?: AirSeries;
   readonly p95?: AirSeries;
+  /** Quantiles of the worst that each draw reaches, at times of its own. */
+  readonly peak?: BandPeak;
   /** The run without any mixing, worst over fall entrainment and source dilution. */
   readonly adverse?: AirSeries;
+}
+
+/** Worst values of the draws: lowest oxygen, highest gases. */
+export interface BandPeak {
+  readonly p05: PeakValues;
+  readonly p50: PeakValues;
+  readonly p95: PeakValues;
+}
+
+export interface PeakValues {
+  readonly oxygenFraction: number;
+  readonly gasFraction: Readonly<Record<string, number>>;
 }
 
 /** The answers at one mouth height. */
@@ -99,8 +113,20 @@ export interface AirResult {
   readonly crossings: readonly Crossing[];
   readonly balance: Readonly<Record<string, GasBalance>>;
   readonly drivers?: readonly Driver[];
+  readonly chances?: readonly Chance[];
 }
 
+/** How many of the draws pass a threshold, and when they first do [s]. */
+export interface Chance {
+  readonly zone: string;
+  readonly heightM: number;
+  readonly quantity: string;
+  readonly value: number;
+  readonly share: number;
+  readonly firstS?: { readonly p05: number; readonly p50: number; readonly p95: number };
+}
+
+/** Rank correlation of an uncertain input with the worst value at a zone's own mouth height. */
 export interface Driver {
   readonly zone: string;
   readonly quantity: string;

@@ -27,16 +27,11 @@ import {
   rowsOf,
   type FlatTrack,
 } from './answer-track.js';
-import {
-  layerCase,
-  layeredRows,
-  layerMouth,
-  spaceLayers,
-  type LayerCase,
-} from './layered-answer.js';
+import { bandedZones } from './air-band.js';
+import { layerCase, layerMouth, type LayerCase } from './layer-case.js';
+import { layeredRows, spaceLayers } from './layered-answer.js';
 import { adverseLayers, usualLayers, type LayerParameters } from './layer-parameters.js';
 import { layeredTrack, type LayerTrack } from './layered-track.js';
-import { layeredBands, type Band, type BandMouth } from './layered-band.js';
 import { mixedTrack } from './mixed-track.js';
 import { keepWorse, spaceTrack, type MixedRuns } from './mixed-values.js';
 import { purePoolDepths } from './pure-pool.js';
@@ -133,7 +128,7 @@ export function airRun(
   crossings.sort((a, b) => a.atS - b.atS);
   const answer = { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
   if (!wantsLayers || !input.uncertainty) return answer;
-  return { ...answer, ...withBands(model, gases, runs, releases, zones, timesS) };
+  return { ...answer, ...bandedZones({ model, gases, runs, releases, timesS }, zones) };
 }
 
 function outputTimes(input: AirInput): readonly number[] {
@@ -198,61 +193,6 @@ interface ZonePlace {
   readonly timesS: readonly number[];
   readonly layers: LayerRuns | undefined;
   readonly isStraight: boolean;
-}
-
-/** The zones with the band of their layered answer, and what drives it. */
-function withBands(
-  model: AirModel,
-  gases: AirGasTable,
-  runs: MixedRuns,
-  releases: readonly BoundRelease[],
-  zones: Readonly<Record<string, ZoneAir>>,
-  timesS: readonly number[],
-): Pick<AirResult, 'zones' | 'drivers'> {
-  const input = model.input;
-  const places = (input.zones ?? []).flatMap((zone) =>
-    [zone.heightM, FALLEN_HEIGHT_M].map((heightM) => ({ zone, heightM })),
-  );
-  const mouths = places.map(({ zone, heightM }): BandMouth => {
-    const space = model.indexOf.get(zone.space) ?? 0;
-    const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-    return {
-      zone: heightM === zone.heightM ? zone.id : '',
-      at: layerMouth(model, mouth, zone.floorLevelM),
-      bounds: rowsOf(boundTrack(model, runs, releases, mouth)),
-    };
-  });
-  const { bands, drivers } = layeredBands(input, gases, mouths, timesS, model.gases);
-  const everyRow = Int32Array.from(timesS, (_, i) => i);
-  const width = model.gases.length + 1;
-  const seriesAt = (rows: readonly Float64Array[]): AirSeries => {
-    const values = new Float64Array(rows.length * width);
-    for (const [i, row] of rows.entries()) values.set(row, i * width);
-    return seriesOf(model, { values, width }, everyRow);
-  };
-  const banded = (height: HeightAir, band: Band | undefined): HeightAir =>
-    band && height.layered
-      ? {
-          ...height,
-          layered: {
-            ...height.layered,
-            p05: seriesAt(band.p05),
-            p50: seriesAt(band.p50),
-            p95: seriesAt(band.p95),
-          },
-        }
-      : height;
-  return {
-    zones: Object.fromEntries(
-      (input.zones ?? []).flatMap((zone, i) => {
-        const air = zones[zone.id];
-        if (!air) return [];
-        const at02M = banded(air.at02M, bands[2 * i + 1]);
-        return [[zone.id, { ...air, ...banded(air, bands[2 * i]), at02M }]];
-      }),
-    ),
-    drivers: drivers.filter((driver) => driver.zone !== ''),
-  };
 }
 
 interface LayerRun {

@@ -1,0 +1,142 @@
+import { GRAVITY_M_PER_S2 } from './air-constants.js';
+import { spaceAt } from './air-model.js';
+import { liftsToMouth } from './body-heat.js';
+import type { LayerCase, LayerMouth } from './layer-case.js';
+import type { LayerParameters } from './layer-parameters.js';
+import type { ZoneState } from './layer-zones.js';
+import { reportedFraction, smearHeight } from './smear.js';
+import { firstPassEnd } from './zone-bound.js';
+
+/** Depth below which a layer is not reported [m]. */
+const LEAST_REPORTED_M = 0.002;
+
+/**
+ * Writes what the two-layer answer shows at a mouth at one moment: oxygen, then each gas [-].
+ *
+ * @param t     time [s], not before that of the call before
+ * @param zones fractions, depths and molar masses at that time
+ * @param bound oxygen and gases of the inventory bound at the mouth, from an index on
+ * @param out   written from an index on
+ */
+export type MouthReader = (
+  t: number,
+  zones: ZoneState,
+  bound: Float64Array,
+  boundAt: number,
+  out: Float64Array,
+  outAt: number,
+) => void;
+
+interface LayerHere {
+  readonly zone: number;
+  readonly side: 'floor' | 'ceiling';
+  readonly diffusivityM2PerS: number;
+  /** From the base of the layer to the mouth [m]. */
+  readonly distanceM: number;
+  readonly passes: readonly { readonly from: number; readonly until: number }[];
+}
+
+/**
+ * What a mouth breathes of the two-layer answer, moment by moment.
+ *
+ *   max(xu, min(xl, bound)) where a layer with its smear reaches the mouth, else xu; a weak layer
+ *   is breathed at any height (liftsToMouth); while the first pass lasts the bound does not cut
+ *
+ * @param one        layers of a model
+ * @param at         mouth
+ * @param parameters what the run assumes: the least smear is one of it
+ * @returns reader, to be asked in rising time: smear grows from when a layer was last gone
+ * Source: own-room-air (reporting at breathing height, rule on body heat). Assumes: level layers.
+ * Accuracy: judgement.
+ */
+export function mouthReader(
+  one: LayerCase,
+  at: LayerMouth,
+  parameters: LayerParameters,
+): MouthReader {
+  const { network, releases, columnsOf } = one;
+  const { space } = at.mouth;
+  const { curve } = spaceAt(network.model, space);
+  const k = network.components.length;
+  const upper = network.layers.length + (network.groupOf[space] ?? 0);
+  const width = columnsOf.length + 1;
+  const columns = columnsOf.flatMap((list, q) => list.map((column) => [q + 1, column] as const));
+  const started = releases.map((release) => ({
+    from: Math.max(release.plan.startS, release.reachS[space] ?? Infinity),
+    until: firstPassEnd(release, curve.floorAreaM2),
+    side: release.gathering === 'above' ? 'ceiling' : 'floor',
+  }));
+  const here = network.layers.flatMap((layer, zone): LayerHere[] =>
+    layer.space === space
+      ? [
+          {
+            zone,
+            side: layer.side,
+            diffusivityM2PerS: layer.diffusivityM2PerS,
+            distanceM: layer.side === 'floor' ? at.levelM : curve.heightM - at.levelM,
+            passes: started.filter((pass) => pass.side === layer.side),
+          },
+        ]
+      : [],
+  );
+  const bornS = new Float64Array(here.length).fill(Number.NaN);
+  const above = new Float64Array(width);
+  const inside = new Float64Array(width);
+  const read = (zones: ZoneState, zone: number, into: Float64Array): void => {
+    into.fill(0);
+    into[0] = zones.fractions[zone * k] ?? 0;
+    for (const [q, column] of columns) {
+      into[q] = Math.min(1, (into[q] ?? 0) + (zones.fractions[zone * k + column] ?? 0));
+    }
+  };
+  return (t, zones, bound, boundAt, out, outAt) => {
+    read(zones, upper, above);
+    for (let q = 0; q < width; q++) out[outAt + q] = above[q] ?? 0;
+    for (const [i, layer] of here.entries()) {
+      const depth = zones.depths[layer.zone] ?? 0;
+      if (depth < LEAST_REPORTED_M) {
+        bornS[i] = Number.NaN;
+        continue;
+      }
+      let isFirstPass = false;
+      let latest = -Infinity;
+      for (const { from, until } of layer.passes) {
+        if (from > t) continue;
+        latest = Math.max(latest, from);
+        if (until > t) isFirstPass = true;
+      }
+      // A layer seen for the first time is as old as the release that made it.
+      if (Number.isNaN(bornS[i])) bornS[i] = Number.isFinite(latest) ? latest : t;
+      const smear = smearHeight(
+        layer.diffusivityM2PerS,
+        t - (bornS[i] ?? t),
+        parameters.smearM,
+        isFirstPass ? depth : 0,
+      );
+      const sign = layer.side === 'floor' ? 1 : -1;
+      const heavier =
+        sign * ((zones.molarMasses[layer.zone] ?? 0) - (zones.molarMasses[upper] ?? 0));
+      const gPrime = (GRAVITY_M_PER_S2 * heavier) / network.airMolarMassKgPerMol;
+      const lifted = layer.side === 'floor' && liftsToMouth(gPrime, depth - at.floorM);
+      const reach = lifted ? Infinity : depth;
+      if (reach + smear < layer.distanceM) continue;
+      const isCut = !isFirstPass && !lifted;
+      read(zones, layer.zone, inside);
+      const oxygen = inside[0] ?? 0;
+      const least = isCut ? Math.max(oxygen, bound[boundAt] ?? 0) : oxygen;
+      out[outAt] = Math.min(out[outAt] ?? 1, least);
+      for (let q = 1; q < width; q++) {
+        const limit = isCut ? (bound[boundAt + q] ?? 1) : 1;
+        const seen = reportedFraction(
+          inside[q] ?? 0,
+          above[q] ?? 0,
+          limit,
+          reach,
+          smear,
+          layer.distanceM,
+        );
+        out[outAt + q] = Math.max(out[outAt + q] ?? 0, seen);
+      }
+    }
+  };
+}
