@@ -19,6 +19,7 @@ import type {
 import type { AssessmentData } from './assessment-data.js';
 import type { RulePack } from './catalogue-types.js';
 import { conditionsOf, hitReason } from './conditions.js';
+import { requireContainers } from './container-problems.js';
 import { controlledPlan, isCredited } from './controlled-plan.js';
 import {
   decisionRows,
@@ -47,6 +48,7 @@ import { leastFreshAir } from './least-fresh-air.js';
 import { meterFindings } from './meter-findings.js';
 import { repeatsPerDay } from './repeats-per-day.js';
 import { exposureFindings } from './exposure-findings.js';
+import { holdFindings } from './plausibility-findings.js';
 import { pressureFindings } from './pressure-findings.js';
 import { streamFindings } from './stream-findings.js';
 import { stopReading } from './stop-reading.js';
@@ -428,6 +430,11 @@ function tableOf(hits: readonly Hit[], known: Knowledge): Assessment['decisionTa
  */
 export function assess(plan: PlanFile, data: AssessmentData): Assessment {
   requireReferences(plan, data.gases);
+  requireContainers(plan, {
+    gases: data.gases,
+    policy: data.catalogue.policy,
+    controls: data.catalogue.controls,
+  });
   const pack = packOf(plan, data);
   const nameOf = (gas: string) => data.gases.species[gas]?.name.toLowerCase() ?? gas;
 
@@ -476,6 +483,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     .filter((figure) => figure.kind === 'unknown')
     .map((figure) => ({ figure, space: statedPlace(figure.path, plan) }));
 
+  const holds = holdTimes(shown, answers, data.catalogue.policy);
   const conditions = conditionsOf(controlled.shown.hits, {
     quantity: (hit) => (hit.outcome ? quantityWords(hit.outcome.level, nameOf) : ''),
     space: spaceTitle,
@@ -545,6 +553,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
       ...streamFindings(resolved),
       ...pressureFindings(resolved, data.catalogue.policy),
       ...exposureFindings(shown.planned, resolved, pack, nameOf),
+      ...holdFindings(holds, resolved),
       ...escapeFindings(shown, data.catalogue.policy, nameOf),
       ...meterFindings(shown, data.catalogue.policy, nameOf),
       ...leastFreshAir(shown, answers, nameOf),
@@ -554,7 +563,7 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     zones: zoneResults(shown, nameOf),
     sound,
     largestAmounts: largestAmounts(shown, answers),
-    holdTimes: holdTimes(shown, answers, data.catalogue.policy),
+    holdTimes: holds,
     questionsThatDecide: asFiled.questions,
     controls: controlResults(asFiled, controlled, data),
     rulesCited: rulesCited(pack, facts),

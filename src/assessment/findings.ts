@@ -3,6 +3,7 @@ import type { Policy } from './catalogue-types.js';
 import type { PlanFile } from './plan-file.js';
 import { standardPressure } from '../science/atmosphere.js';
 import type { ResolvedPlan } from './resolved-plan.js';
+import { plausibilityFindings } from './plausibility-findings.js';
 import { freshAirOf } from './figures.js';
 
 const limits = {
@@ -34,7 +35,7 @@ export function planFindings(
   stockFindings(plan, resolved, find);
   actFindings(plan, resolved, find);
   meterFindings(plan, find);
-  return findings;
+  return [...findings, ...plausibilityFindings(plan, resolved, policy)];
 }
 
 type Find = (code: string, kind: FindingKind, path: string, text: string) => void;

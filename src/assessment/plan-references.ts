@@ -1,6 +1,7 @@
 import { InvalidInput, type ErrorDetail } from '../errors.js';
 import type { GasLibrary } from '../science/gases/gas-library.js';
-import type { PlanFile } from './plan-file.js';
+import { airPathProblems } from '../science/room-air/air-path-problems.js';
+import type { PhysicalFigure, PlanFile } from './plan-file.js';
 
 /** Names in the plan that point nowhere, stand twice, or say two things at once. */
 export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly ErrorDetail[] {
@@ -66,6 +67,7 @@ export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly E
     }
   };
 
+  timeProblems(plan, complain);
   plan.venue.openings?.forEach((opening, index) => {
     space(opening.from, `/venue/openings/${String(index)}/from`, true);
     space(opening.to, `/venue/openings/${String(index)}/to`, true);
@@ -103,6 +105,7 @@ export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly E
     space(row.from, `/venue/transfers/${String(index)}/from`);
     space(row.to, `/venue/transfers/${String(index)}/to`);
   });
+  transferProblems(plan, complain);
   plan.event.audience.forEach((group, index) => {
     space(group.zone.space, `/event/audience/${String(index)}/zone/space`);
   });
@@ -162,6 +165,107 @@ export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly E
     space(control.space, `/controls/${String(index)}/space`);
   });
   return problems;
+}
+
+type Complain = (path: string, problem: string) => void;
+interface Timed {
+  readonly fromS?: number;
+  readonly toS?: number;
+}
+
+const isAtTheSameTime = (one: Timed, other: Timed): boolean =>
+  (one.fromS ?? 0) < (other.toS ?? Infinity) && (other.fromS ?? 0) < (one.toS ?? Infinity);
+
+/** Times that run backwards, and two states of one thing, or two performances, at the same time. */
+function timeProblems(plan: PlanFile, complain: Complain): void {
+  const lists = [
+    ['/venue/openings', plan.venue.openings ?? []],
+    ['/venue/airSystems', plan.venue.airSystems ?? []],
+    ['/stock', plan.stock ?? []],
+  ] as const;
+  for (const [path, list] of lists) {
+    list.forEach((one: Timed & { readonly id?: string }, index) => {
+      if (one.toS !== undefined && one.toS <= (one.fromS ?? 0)) {
+        complain(`${path}/${String(index)}/toS`, 'is not after its start');
+      }
+      const before = list
+        .slice(0, index)
+        .find(
+          (other: Timed & { readonly id?: string }) =>
+            one.id !== undefined && other.id === one.id && isAtTheSameTime(other, one),
+        );
+      // Stock of one id twice is named as such already.
+      if (before && path !== '/stock') {
+        complain(
+          `${path}/${String(index)}`,
+          `overlaps another time of ${one.id ?? ''}: end the one before the other begins`,
+        );
+      }
+    });
+  }
+  (plan.venue.infiltration ?? []).forEach((row, index, all) => {
+    if (all.slice(0, index).some((other) => other.space === row.space)) {
+      complain(`/venue/infiltration/${String(index)}`, `gives the gaps of ${row.space} twice`);
+    }
+  });
+  const minuteOf = (startsAt: string): number => {
+    const [hours = '0', minutes = '0'] = startsAt.split(':');
+    return 60 * Number(hours) + Number(minutes);
+  };
+  const shows = plan.event.performances.map(({ startsAt, durationMin }, index) => ({
+    index,
+    start: minuteOf(startsAt),
+    end: minuteOf(startsAt) + durationMin,
+  }));
+  for (const show of shows) {
+    const earlier = shows.find(
+      (other) =>
+        other.start < show.end &&
+        show.start < other.end &&
+        (other.start < show.start || (other.start === show.start && other.index < show.index)),
+    );
+    if (!earlier) continue;
+    complain(
+      `/event/performances/${String(show.index)}/startsAt`,
+      `begins before performance ${String(earlier.index + 1)} has ended`,
+    );
+  }
+}
+
+/** Transfers whose air comes from nowhere, told with the places of the plan. */
+function transferProblems({ venue }: PlanFile, complain: Complain): void {
+  const stated = (figure: PhysicalFigure | undefined): number => {
+    const value = typeof figure === 'object' ? (figure.high ?? figure.value) : figure;
+    return value ?? Number.NaN;
+  };
+  const problems = airPathProblems({
+    spaces: venue.spaces.map(({ id }) => ({ id, floorAreaM2: 1, heightM: 1 })),
+    openings: (venue.openings ?? []).map(({ from, to }) => ({
+      from,
+      to,
+      kind: 'doorway',
+      widthM: 1,
+      heightM: 1,
+    })),
+    airSystems: (venue.airSystems ?? []).map(({ space, serves, drive }) => ({
+      ...(space === undefined ? {} : { space }),
+      ...(serves ? { serves } : {}),
+      drive,
+    })),
+    // A space whose gaps nobody stated has the usual ones.
+    infiltration: venue.spaces.map(({ id }) => ({
+      space: id,
+      airChangesPerHour: stated(
+        venue.infiltration?.find((row) => row.space === id)?.airChangesPerHour,
+      ),
+    })),
+    transfers: (venue.transfers ?? []).map(({ from, to, flowM3PerS }) => ({
+      from,
+      to,
+      flowM3PerS: stated(flowM3PerS),
+    })),
+  });
+  for (const { path, problem } of problems) complain(`/venue${path}`, problem);
 }
 
 /** @throws {InvalidInput} naming every reference that leads nowhere */

@@ -1,6 +1,7 @@
 import type { ErrorDetail } from '../../errors.js';
 import type { AirGasTable } from './air-gases.js';
-import type { AirInput, AirRelease, AirSpace } from './air-input.js';
+import type { AirInput, AirOpening, AirRelease, AirSpace, Timed } from './air-input.js';
+import { airPathProblems } from './air-path-problems.js';
 import { volumeCurve } from './volume-curve.js';
 
 /** Measured volume against the shape: more than this apart is a contradiction [-]. */
@@ -28,16 +29,10 @@ export function airInputProblems(input: AirInput): readonly ErrorDetail[] {
       if (opening[side] !== 'outside') mustBeSpace(opening[side], `${path}/${side}`);
     }
     if (opening.from === opening.to) note(`${path}/to`, 'joins a space to itself');
-    if (opening.kind === 'floorOpening') continue;
-    for (const side of [opening.from, opening.to]) {
-      const space = input.spaces.find((one) => one.id === side);
-      if (!space || opening.sillLevelM === undefined) continue;
-      const ceiling = lowestFloor(space) + space.heightM;
-      if (opening.sillLevelM + opening.heightM > ceiling + 0.05) {
-        note(`${path}/sillLevelM`, `reaches above the ceiling of ${side}`);
-      }
-    }
+    openingProblems(opening, input.spaces, path, note);
   }
+  noteOverlaps(input.openings ?? [], '/openings', note);
+  noteOverlaps(input.airSystems ?? [], '/airSystems', note);
   for (const [i, system] of (input.airSystems ?? []).entries()) {
     const path = `/airSystems/${String(i)}`;
     if (system.space !== undefined) mustBeSpace(system.space, `${path}/space`);
@@ -66,12 +61,7 @@ export function airInputProblems(input: AirInput): readonly ErrorDetail[] {
     mustBeSpace(one.space, `/infiltration/${String(i)}/space`);
     const overlap = (input.infiltration ?? [])
       .slice(0, i)
-      .some(
-        (other) =>
-          other.space === one.space &&
-          (other.fromS ?? 0) < (one.toS ?? Infinity) &&
-          (one.fromS ?? 0) < (other.toS ?? Infinity),
-      );
+      .some((other) => other.space === one.space && isAtTheSameTime(other, one));
     if (overlap) note(`/infiltration/${String(i)}`, 'overlaps another entry for the same space');
   }
   for (const [i, one] of (input.transfers ?? []).entries()) {
@@ -96,6 +86,7 @@ export function airInputProblems(input: AirInput): readonly ErrorDetail[] {
     mustBeSpace(one.space, `${path}/space`);
     releaseProblems(one, path, note);
   }
+  found.push(...airPathProblems(input));
   const timed = ['openings', 'airSystems', 'infiltration', 'transfers', 'occupants'] as const;
   for (const list of timed) {
     for (const [i, one] of (input[list] ?? []).entries()) {
@@ -108,6 +99,57 @@ export function airInputProblems(input: AirInput): readonly ErrorDetail[] {
 }
 
 type Note = (path: string, problem: string) => void;
+
+const isAtTheSameTime = (one: Timed, other: Timed): boolean =>
+  (one.fromS ?? 0) < (other.toS ?? Infinity) && (other.fromS ?? 0) < (one.toS ?? Infinity);
+
+/** Rows of one id are the times of one thing: it cannot be in two states at once. */
+function noteOverlaps(
+  list: readonly (Timed & { readonly id?: string })[],
+  path: string,
+  note: Note,
+): void {
+  for (const [i, one] of list.entries()) {
+    const before = list
+      .slice(0, i)
+      .find((other) => one.id !== undefined && other.id === one.id && isAtTheSameTime(other, one));
+    if (!before) continue;
+    note(
+      `${path}/${String(i)}`,
+      `overlaps another time of ${one.id ?? ''}: end the one before the other begins`,
+    );
+  }
+}
+
+function openingProblems(
+  opening: AirOpening,
+  spaces: readonly AirSpace[],
+  path: string,
+  note: Note,
+): void {
+  const sides = [opening.from, opening.to].flatMap((side) => {
+    const space = spaces.find((one) => one.id === side);
+    return space ? [space] : [];
+  });
+  if (opening.kind === 'floorOpening') {
+    for (const { id, floorAreaM2 } of sides) {
+      if (opening.widthM * opening.heightM > 1.01 * floorAreaM2) {
+        note(`${path}/widthM`, `is larger than the floor of ${id}; give the clear hole`);
+      }
+    }
+    return;
+  }
+  // Where no sill is given it is the floor of the side named first in the list of spaces.
+  const first = spaces.find((one) => one.id === opening.from || one.id === opening.to);
+  const sillM = opening.sillLevelM ?? (first ? lowestFloor(first) : 0);
+  for (const space of sides) {
+    if (sillM + opening.heightM <= lowestFloor(space) + space.heightM + 0.05) continue;
+    note(
+      `${path}/${opening.sillLevelM === undefined ? 'heightM' : 'sillLevelM'}`,
+      `reaches above the ceiling of ${space.id}; levels are from the datum of the venue`,
+    );
+  }
+}
 
 function noteTwice(list: readonly { readonly id: string }[], path: string, note: Note): void {
   const seen = new Set<string>();
