@@ -5,26 +5,30 @@ import type { LevelName } from './levels.js';
 import { policyDefault } from './policy-rows.js';
 import { durationWords } from './duration-words.js';
 import { quantityWords } from './quantity-words.js';
+import { passedAfter, slipOutcomes } from './slip-outcomes.js';
 import type { ZoneOutcome } from './zone-outcomes.js';
 
 interface Passing {
+  readonly worst: WorstCase;
   readonly outcome: ZoneOutcome;
   readonly afterS: number;
 }
 
+const sooner = (one: Passing | null, other: Passing): Passing =>
+  one === null || other.afterS < one.afterS ? other : one;
+
 /** The zone that passes a level first after a slip, by the answer that judges, at a declared height. */
-function firstPassing(worst: WorstCase, level: LevelName): Passing | null {
-  return worst.outcomes.reduce<Passing | null>((first, outcome) => {
-    const atS = (outcome.answers.layered ?? outcome.answers.mixed)?.firstPast[level];
-    if (atS === undefined || !outcome.judgedFully) return first;
-    const afterS = Math.max(0, atS - worst.startS);
-    return first === null || afterS < first.afterS ? { outcome, afterS } : first;
+function firstPassing(worst: WorstCase, evaluation: Evaluation, level: LevelName): Passing | null {
+  return slipOutcomes(worst, evaluation).reduce<Passing | null>((first, outcome) => {
+    const atS = outcome.judgedFully ? passedAfter(outcome, level, worst.startS) : undefined;
+    if (atS === undefined) return first;
+    return sooner(first, { worst, outcome, afterS: atS - worst.startS });
   }, null);
 }
 
 /**
- * After each slip the time to the limit and to Never, against the time that people need to get out:
- * the practised time with the margin of the policy.
+ * After the slip that passes a limit soonest the time to it and to Never, against the time that people
+ * need to get out: the practised time with the margin of the policy.
  */
 export function escapeFindings(
   evaluation: Evaluation,
@@ -33,29 +37,31 @@ export function escapeFindings(
 ): readonly Finding[] {
   const { escapeTimeS } = evaluation.resolved;
   const factor = policyDefault(policy, 'escapeTimeFactor').value;
-  return evaluation.worst.flatMap((worst): Finding[] => {
-    const limit = firstPassing(worst, 'limit');
-    if (!limit) return [];
-    const never = firstPassing(worst, 'never');
-    const needed = escapeTimeS === null ? null : factor * escapeTimeS;
-    const inTime = needed !== null && limit.afterS >= needed;
-    const place = `${quantityWords(limit.outcome.level, nameOf)} at ${limit.outcome.group.title}`;
-    const passed = `${worst.title}: the limit for ${place} is passed ${durationWords(limit.afterS)} after it begins`;
-    const past =
-      never === null ? ', Never is not reached' : `, Never ${durationWords(never.afterS)} after it`;
-    const out =
-      needed === null
-        ? '. Nobody has practised how long it takes to leave: practise and enter it.'
-        : inTime
-          ? `. People need ${durationWords(needed)} to leave, margin included: enough, if they start at once.`
-          : `. People need ${durationWords(needed)} to leave, margin included: too long to rely on it.`;
-    return [
-      {
-        code: 'time-to-limit',
-        kind: inTime ? 'note' : 'caution',
-        path: '/event/escapeTimeS',
-        text: `${passed}${past}${out}`,
-      },
-    ];
-  });
+  const passing = evaluation.worst.flatMap((one) => firstPassing(one, evaluation, 'limit') ?? []);
+  const soonest = passing.reduce<Passing | null>(sooner, null);
+  if (!soonest) return [];
+  const { worst, outcome, afterS } = soonest;
+  const never = firstPassing(worst, evaluation, 'never');
+  const needed = escapeTimeS === null ? null : factor * escapeTimeS;
+  const inTime = needed !== null && afterS >= needed;
+  const place = `${quantityWords(outcome.level, nameOf)} at ${outcome.group.title}`;
+  const passed = `${worst.title}: the limit for ${place} is passed ${durationWords(afterS)} after it begins`;
+  const past =
+    never === null ? ', Never is not reached' : `, Never ${durationWords(never.afterS)} after it`;
+  const others =
+    passing.length > 1 ? ` Other slips that pass a limit: ${String(passing.length - 1)}.` : '';
+  const out =
+    needed === null
+      ? '. Nobody has practised how long it takes to leave: practise and enter it.'
+      : inTime
+        ? `. People need ${durationWords(needed)} to leave, margin included: enough, if they start at once.`
+        : `. People need ${durationWords(needed)} to leave, margin included: too long to rely on it.`;
+  return [
+    {
+      code: 'time-to-limit',
+      kind: inTime ? 'note' : 'caution',
+      path: '/event/escapeTimeS',
+      text: `${passed}${past}${out}${others}`,
+    },
+  ];
 }

@@ -5,6 +5,7 @@ import type { Finding } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { freshAirOf } from './figures.js';
 import { quantityWords } from './quantity-words.js';
+import type { ZoneOutcome } from './zone-outcomes.js';
 import type { ResolvedAirSystem, ResolvedPlan } from './resolved-plan.js';
 import { mixedAimFailure } from './mixed-aim-failure.js';
 
@@ -12,7 +13,8 @@ import { mixedAimFailure } from './mixed-aim-failure.js';
 const mostTimes = 10;
 /** Air changes beyond which nobody ventilates a room of people [1/h]. */
 const mostChangesPerHour = 20;
-const fineness = 0.01;
+/** Every try is a day worked through; what is told is rounded upwards anyway. */
+const fineness = 0.03;
 
 const scaled = (system: ResolvedAirSystem, factor: number): ResolvedAirSystem => ({
   ...system,
@@ -61,19 +63,34 @@ export function leastFreshAir(
   const space = resolved.spaces.find(({ id }) => id === act?.space);
   if (!act || !space) return [];
   const served = freshAirOf(resolved, space.id);
+  // No system is asked to clear a space that it does not serve.
+  const asked = new Set([
+    space.id,
+    ...resolved.airSystems.flatMap(({ serves }) => serves.map((one) => one.space)),
+  ]);
+  // The planned day has been worked through: it says on which side of 1 to look.
+  const isAsked = ({ group }: ZoneOutcome) => asked.has(group.space);
+  const plannedPasses = !evaluation.planned.some(
+    (outcome) =>
+      outcome.judgedFully && isAsked(outcome) && (outcome.answers.mixed?.fails.aim ?? false),
+  );
   const failureAt = (airSystems: readonly ResolvedAirSystem[]) => {
     const plan: ResolvedPlan = { ...resolved, airSystems };
     const air = airCase(plan, dayReleases, dayAir.window, 'planned');
-    return mixedAimFailure(evaluation, plan, air, answers);
+    return mixedAimFailure(evaluation, plan, air, answers, isAsked);
   };
   const hasAir = served > 0;
   const systemsAt = (amount: number) =>
     hasAir
       ? resolved.airSystems.map((system) => scaled(system, amount))
       : [...resolved.airSystems, plainSupply(space.id, amount)];
-  const high = hasAir ? mostTimes : (mostChangesPerHour * space.volumeM3) / 3600;
+  const high = hasAir
+    ? plannedPasses
+      ? 1
+      : mostTimes
+    : (mostChangesPerHour * space.volumeM3) / 3600;
   const least = leastAmount((amount) => failureAt(systemsAt(amount)) === null, {
-    low: 0,
+    low: hasAir && !plannedPasses ? 1 : 0,
     high,
     relative: fineness,
   });

@@ -96,9 +96,9 @@ describe('least fresh air for a plan', () => {
     const finding = found(result, 'least-fresh-air');
     const least = numberIn(finding?.text ?? '', /Least fresh air: (\d+) L\/s/);
     const exact = exactLeast(oxygenAim(result)) * 1000;
-    // Two digits upwards, and a search that ends within 1 %.
+    // Two digits upwards, and a search that ends within 3 %.
     expect(least).toBeGreaterThanOrEqual(exact * 0.999);
-    expect(least).toBeLessThan(exact * 1.02 + 10 ** Math.floor(Math.log10(exact) - 1));
+    expect(least).toBeLessThan(exact * 1.04 + 10 ** Math.floor(Math.log10(exact) - 1));
     expect(finding?.kind).toBe(kind);
   });
 

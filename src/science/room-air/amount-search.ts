@@ -55,7 +55,7 @@ export function leastAmount(
  * Largest count that still passes [-], 0 when not even one does: shows of a day, one after another.
  *
  * @param passes whether a count is allowed; one more never helps
- * @param most   largest count asked about, a whole number
+ * @param most   largest count asked about [-], a whole number
  * @returns whole number from 0 to `most` [-]
  * Source: own-room-air. Assumes: once a count fails, every larger one fails. Accuracy: exact.
  * @example largestCount((count) => count <= 5, 24) // 5
