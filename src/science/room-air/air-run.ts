@@ -12,28 +12,17 @@ import type {
   HeightAir,
   OxygenExtreme,
   SpaceAir,
-  SpaceLayers,
   ZoneAir,
 } from './air-result.js';
 import { FALLEN_HEIGHT_M } from './air-constants.js';
 import { flowSegments, type Displacement } from './air-flows.js';
 import { airModel, OXYGEN, type AirModel } from './air-model.js';
 import { outputRows, seriesOf } from './air-series.js';
-import {
-  crossingsOf,
-  flatTrack,
-  gasMaxima,
-  oxygenMinimum,
-  rowsOf,
-  type FlatTrack,
-} from './answer-track.js';
+import { crossingsOf, gasMaxima, oxygenMinimum, type FlatTrack } from './answer-track.js';
 import { bandedZones } from './air-band.js';
-import { layerCase, layerMouth, type LayerCase } from './layer-case.js';
-import { layeredRows, spaceLayers } from './layered-answer.js';
-import { adverseLayers, usualLayers, type LayerParameters } from './layer-parameters.js';
-import { layeredTrack, type LayerTrack } from './layered-track.js';
+import { layerRuns, noLayers, type MouthLayers } from './layer-runs.js';
 import { mixedTrack } from './mixed-track.js';
-import { keepWorse, spaceTrack, type MixedRuns } from './mixed-values.js';
+import { spaceTrack, type MixedRuns } from './mixed-values.js';
 import { purePoolDepths } from './pure-pool.js';
 import {
   boundMouth,
@@ -49,6 +38,8 @@ export interface AirRunOptions {
   readonly displacement?: Displacement;
   /** False leaves the two-layer answer out; it never stands beside the straight form. */
   readonly layered?: boolean;
+  /** False leaves out the runs without any mixing, the dearer part of the two-layer answer. */
+  readonly adverse?: boolean;
 }
 
 /**
@@ -92,7 +83,30 @@ export function airRun(
   const rows = outputRows(runs.tracks[0].timesS, timesS);
   const depths = purePoolDepths(model, releases);
   const wantsLayers = displacement === 'pushOut' && (options.layered ?? true);
-  const layers = wantsLayers ? layerRuns(model, gases, runs.tracks[0].timesS) : undefined;
+  const isStraight = displacement === 'straight';
+  const mouths = (input.zones ?? []).flatMap((zone) =>
+    [zone.heightM, FALLEN_HEIGHT_M].map((heightM): Mouth => {
+      const space = model.indexOf.get(zone.space) ?? 0;
+      const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
+      const bound = onFirstUse(() =>
+        answerOf(boundTrack(model, runs, releases, mouth), model.gases),
+      );
+      return { zone, heightM, mouth, bound };
+    }),
+  );
+  const layers = wantsLayers
+    ? layerRuns(
+        model,
+        gases,
+        mouths.map(({ zone, mouth, bound }) => ({
+          mouth,
+          floorLevelM: zone.floorLevelM,
+          bound: bound().track,
+        })),
+        runs.tracks[0].timesS,
+        options.adverse ?? true,
+      )
+    : undefined;
   const spaces: Record<string, SpaceAir> = {};
   for (const [i, space] of model.spaces.entries()) {
     const one = mixed[i];
@@ -100,30 +114,25 @@ export function airRun(
     const series = seriesOf(model, one.track, rows);
     spaces[space.id] = {
       mixed: series,
-      ...(layers ? { layered: layersOfSpace(model, layers, i, series, timesS) } : {}),
+      ...(wantsLayers ? { layered: layers?.spaceLayers(i, timesS) ?? noLayers(series) } : {}),
       purePoolDepthM: depths[i] ?? 0,
     };
   }
   const zones: Record<string, ZoneAir> = {};
   const crossings: Crossing[] = [];
-  for (const zone of input.zones ?? []) {
+  for (const [z, zone] of (input.zones ?? []).entries()) {
     const one = mixed[model.indexOf.get(zone.space) ?? 0];
     const series = spaces[zone.space]?.mixed;
     if (!one || !series) continue;
-    const place: ZonePlace = {
-      model,
-      runs,
-      releases,
-      zone,
-      mixed: one,
-      mixedSeries: series,
-      rows,
-      timesS,
-      layers,
-      isStraight: displacement === 'straight',
+    const place: ZonePlace = { model, mixed: one, mixedSeries: series, rows, timesS, wantsLayers };
+    const answerAt = (m: number): HeightAir | undefined => {
+      const mouth = mouths[m];
+      if (!mouth) return undefined;
+      return heightAnswer(place, mouth, isStraight, layers?.mouths[m], crossings);
     };
-    const at02M = heightAnswer(place, FALLEN_HEIGHT_M, crossings);
-    zones[zone.id] = Object.assign(heightAnswer(place, zone.heightM, crossings), { at02M });
+    const own = answerAt(2 * z);
+    const at02M = answerAt(2 * z + 1);
+    if (own && at02M) zones[zone.id] = Object.assign(own, { at02M });
   }
   crossings.sort((a, b) => a.atS - b.atS);
   const answer = { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
@@ -180,71 +189,23 @@ interface Answer {
   readonly maximum: Readonly<Record<string, Extreme>>;
 }
 
-/** What a mouth in a zone needs to be answered. */
+/** A mouth of a zone, with its bound as soon as it is asked for. */
+interface Mouth {
+  readonly zone: AirZone;
+  readonly heightM: number;
+  readonly mouth: BoundMouth;
+  readonly bound: () => Answer;
+}
+
+/** What the mouths of a zone have in common. */
 interface ZonePlace {
   readonly model: AirModel;
-  readonly runs: MixedRuns;
-  readonly releases: readonly BoundRelease[];
-  readonly zone: AirZone;
   readonly mixed: Answer;
   readonly mixedSeries: AirSeries;
   /** Row of each output time among the nodes. */
   readonly rows: Int32Array;
   readonly timesS: readonly number[];
-  readonly layers: LayerRuns | undefined;
-  readonly isStraight: boolean;
-}
-
-interface LayerRun {
-  readonly parameters: LayerParameters;
-  readonly track: LayerTrack;
-}
-
-/** The usual two-layer run and those without any mixing. */
-interface LayerRuns {
-  readonly one: LayerCase;
-  /** Undefined where nothing gathers as a layer: then the mixed answer is the layered one. */
-  readonly usual: LayerRun | undefined;
-  readonly adverse: readonly LayerRun[];
-}
-
-function layerRuns(model: AirModel, gases: AirGasTable, nodesS: Float64Array): LayerRuns {
-  const one = layerCase(model, gases);
-  const timesS = [...new Set(nodesS)];
-  const { network } = one;
-  const overrides = model.input.layers ?? {};
-  const hasFalls = network.weirs.some((weir) => weir.b >= 0 && weir.sillA !== weir.sillB);
-  const run = (parameters: LayerParameters): LayerRun => ({
-    parameters,
-    track: layeredTrack(one.network, parameters, timesS),
-  });
-  if (network.layers.length === 0) return { one, usual: undefined, adverse: [] };
-  return {
-    one,
-    usual: run(usualLayers(overrides)),
-    adverse: adverseLayers(overrides, hasFalls, network.groupVolumesM3.length > 1).map(run),
-  };
-}
-
-function layersOfSpace(
-  model: AirModel,
-  layers: LayerRuns,
-  space: number,
-  { oxygenFraction, gasFraction }: AirSeries,
-  timesS: readonly number[],
-): SpaceLayers {
-  if (layers.usual) {
-    return spaceLayers(layers.one, layers.usual.track, space, model.gases, timesS);
-  }
-  const none = timesS.map(() => 0);
-  const same = { oxygenFraction, gasFraction };
-  return {
-    floorLayerDepthM: none,
-    ceilingLayerDepthM: none,
-    floorLayer: same,
-    middle: same,
-    ceilingLayer: same,
-  };
+  readonly wantsLayers: boolean;
 }
 
 /** A track with its extremes. */
@@ -252,20 +213,18 @@ function answerOf(track: FlatTrack, gases: readonly string[]): Answer {
   return { track, minimum: oxygenMinimum(track), maximum: gasMaxima(track, gases) };
 }
 
-function heightAnswer(place: ZonePlace, heightM: number, crossings: Crossing[]): HeightAir {
-  const { model, runs, zone, mixed, mixedSeries, rows, releases } = place;
-  const space = model.indexOf.get(zone.space) ?? 0;
-  const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-  const boundAnswer = (): Answer => answerOf(boundTrack(model, runs, releases, mouth), model.gases);
-  if (place.isStraight) {
-    const bound = onFirstUse(boundAnswer);
+function heightAnswer(
+  place: ZonePlace,
+  { zone, heightM, bound }: Mouth,
+  isStraight: boolean,
+  layers: MouthLayers | undefined,
+  crossings: Crossing[],
+): HeightAir {
+  const { model, mixed, mixedSeries, rows, timesS, wantsLayers } = place;
+  const tracks = { mixed: () => mixed.track, bound: () => bound().track };
+  if (isStraight) {
     const series = onFirstUse(() => seriesOf(model, bound().track, rows));
-    addCrossings(
-      place,
-      heightM,
-      { mixed: () => mixed.track, bound: () => bound().track },
-      crossings,
-    );
+    addCrossings(model, zone, heightM, tracks, crossings);
     return {
       heightM,
       mixed: mixedSeries,
@@ -286,25 +245,25 @@ function heightAnswer(place: ZonePlace, heightM: number, crossings: Crossing[]):
       },
     };
   }
-  const bound = boundAnswer();
-  const layered = layeredAnswers(place, mouth, bound.track);
-  const tracks = { mixed: () => mixed.track, bound: () => bound.track };
-  addCrossings(
-    place,
-    heightM,
-    layered ? { ...tracks, layered: () => layered.usual.track } : tracks,
-    crossings,
-  );
-  const common = { heightM, mixed: mixedSeries, bound: seriesOf(model, bound.track, rows) };
-  const minimum = { mixed: mixed.minimum, bound: bound.minimum };
-  const maximum = { mixed: mixed.maximum, bound: bound.maximum };
-  if (!layered) return { ...common, minimum, maximum };
-  const { usual, adverse } = layered;
+  const common = { heightM, mixed: mixedSeries, bound: seriesOf(model, bound().track, rows) };
+  const minimum = { mixed: mixed.minimum, bound: bound().minimum };
+  const maximum = { mixed: mixed.maximum, bound: bound().maximum };
+  if (!wantsLayers) {
+    addCrossings(model, zone, heightM, tracks, crossings);
+    return { ...common, minimum, maximum };
+  }
+  // Where nothing gathers as a layer the mixed answer is the layered one.
+  const usual = layers ? answerOf(layers.usual, model.gases) : mixed;
+  const shown = layers ? outputRows(usual.track.timesS, timesS) : rows;
+  addCrossings(model, zone, heightM, { ...tracks, layered: () => usual.track }, crossings);
+  const adverse = layers ? layers.adverse : usual.track.values;
   return {
     ...common,
     layered: {
-      ...seriesOf(model, usual.track, layered.rows),
-      adverse: seriesOf(model, adverse, layered.rows),
+      ...seriesOf(model, usual.track, shown),
+      ...(adverse
+        ? { adverse: seriesOf(model, { values: adverse, width: usual.track.width }, shown) }
+        : {}),
     },
     minimum: { ...minimum, layered: usual.minimum },
     maximum: { ...maximum, layered: usual.maximum },
@@ -324,7 +283,8 @@ function onFirstUse<T>(work: () => T): () => T {
 }
 
 function addCrossings(
-  { model, zone }: ZonePlace,
+  model: AirModel,
+  zone: AirZone,
   heightM: number,
   tracks: Readonly<Partial<Record<AirAnswer, () => FlatTrack>>>,
   crossings: Crossing[],
@@ -340,40 +300,6 @@ function addCrossings(
       }
     }
   }
-}
-
-/** The usual two-layer answer at a mouth, and the worst of the runs without any mixing. */
-function layeredAnswers(
-  place: ZonePlace,
-  mouth: BoundMouth,
-  bound: FlatTrack,
-): { readonly usual: Answer; readonly adverse: FlatTrack; readonly rows: Int32Array } | undefined {
-  const { model, zone, layers } = place;
-  if (!layers) return undefined;
-  if (!layers.usual) return { usual: place.mixed, adverse: place.mixed.track, rows: place.rows };
-  const at = layerMouth(model, mouth, zone.floorLevelM);
-  const bounds = rowsOf(bound);
-  const width = model.gases.length + 1;
-  const rowsIn = (run: LayerRun): FlatTrack =>
-    flatTrack(layeredRows(layers.one, run.track, at, run.parameters, bounds), width);
-  const usual = rowsIn(layers.usual);
-  return {
-    usual: answerOf(usual, model.gases),
-    adverse: worstTrack(layers.adverse.map(rowsIn), usual),
-    rows: outputRows(usual.timesS, place.timesS),
-  };
-}
-
-/** The worse of several answers at each row; all have the same times. */
-function worstTrack(tracks: readonly FlatTrack[], like: FlatTrack): FlatTrack {
-  const [first = like, ...others] = tracks;
-  const values = Float64Array.from(first.values);
-  for (const one of others) {
-    for (let at = 0; at < values.length; at += one.width) {
-      keepWorse(one.values.subarray(at, at + one.width), values, at, one.width);
-    }
-  }
-  return { ...first, values };
 }
 
 /** What came in, left and stayed, per gas and for oxygen, from the run without mixing volume. */

@@ -1,24 +1,10 @@
 import { bracketedRoot } from '../numerics/root.js';
 import type { Crossing, Extreme, OxygenExtreme } from './air-result.js';
 
-/** Columns of a quantity row: oxygen first, then the gases of the model. */
-export interface QuantityRow {
-  readonly t: number;
-  readonly values: Float64Array;
-  /** Slopes where the answer is smooth; undefined where only the nodes are known. */
-  readonly slopes: Float64Array | undefined;
-}
-
-/** One answer at one place: rows in rising time, in pieces between jumps. */
-export interface AnswerTrack {
-  readonly pieces: readonly {
-    readonly rows: readonly QuantityRow[];
-    /** Oxygen, then gases, at any time inside the piece. */
-    valuesAt(t: number): Float64Array;
-  }[];
-}
-
-/** The same in one table: a day has a thousand rows at each of dozens of places. */
+/**
+ * One answer at one place in one table, in pieces between jumps: a day has a thousand rows at each of
+ * dozens of places. Columns: oxygen first, then the gases of the model.
+ */
 export interface FlatTrack {
   readonly timesS: Float64Array;
   /** First row of each piece, then the number of rows. */
@@ -30,32 +16,6 @@ export interface FlatTrack {
   readonly slopes: Float64Array | undefined;
   /** Oxygen, then gases, at any time inside a piece. */
   valuesAt(piece: number, t: number): Float64Array;
-}
-
-/** Rows in one table. */
-export function flatTrack(track: AnswerTrack, width: number): FlatTrack {
-  const firstNode = [0];
-  for (const { rows } of track.pieces) firstNode.push((firstNode.at(-1) ?? 0) + rows.length);
-  const rows = track.pieces.flatMap((piece) => piece.rows);
-  const values = new Float64Array(rows.length * width);
-  for (const [i, row] of rows.entries()) values.set(row.values, i * width);
-  return {
-    timesS: Float64Array.from(rows, (row) => row.t),
-    firstNode,
-    width,
-    values,
-    slopes: undefined,
-    valuesAt: (piece, t) => track.pieces[piece]?.valuesAt(t) ?? new Float64Array(width),
-  };
-}
-
-/** The rows of a table one by one. */
-export function rowsOf({ timesS, width, values }: FlatTrack): readonly QuantityRow[] {
-  return Array.from(timesS, (t, i) => ({
-    t,
-    values: values.subarray(i * width, (i + 1) * width),
-    slopes: undefined,
-  }));
 }
 
 /** Finest bracket of a crossing time [s]. */

@@ -1,4 +1,4 @@
-import type { AnswerTrack, QuantityRow } from './answer-track.js';
+import type { FlatTrack } from './answer-track.js';
 import type { SpaceLayers } from './air-result.js';
 import type { LayerCase, LayerMouth } from './layer-case.js';
 import type { LayerParameters } from './layer-parameters.js';
@@ -18,42 +18,56 @@ function zoneValues(one: LayerCase, node: LayerNode, zone: number): Float64Array
   return values;
 }
 
-/** What the two-layer answer shows at a mouth (mouthReader), at the nodes of a run [-]. */
+/**
+ * What the two-layer answer shows at a mouth (mouthReader), at the nodes of a run [-].
+ *
+ * @param bounds oxygen, then gases of the bound at the mouth, row by row at the same nodes
+ */
 export function layeredRows(
   one: LayerCase,
   track: LayerTrack,
   at: LayerMouth,
   parameters: LayerParameters,
-  bounds: readonly QuantityRow[],
-): AnswerTrack {
+  bounds: Float64Array,
+): FlatTrack {
   const read = mouthReader(one, at, parameters);
-  const unbounded = new Float64Array(one.columnsOf.length + 1).fill(1);
-  unbounded[0] = 0;
-  let row = 0;
-  const rows = track.nodes.map((node): QuantityRow => {
-    while ((bounds[row + 1]?.t ?? Infinity) <= node.t) row++;
-    const values = new Float64Array(unbounded.length);
-    read(node.t, node, bounds[row]?.values ?? unbounded, 0, values, 0);
-    return { t: node.t, values, slopes: undefined };
-  });
-  return { pieces: [{ rows, valuesAt: (t) => between(rows, t) }] };
+  const width = one.columnsOf.length + 1;
+  const values = new Float64Array(track.nodes.length * width);
+  for (const [i, node] of track.nodes.entries()) {
+    read(node.t, node, bounds, i * width, values, i * width);
+  }
+  const timesS = Float64Array.from(track.nodes, (node) => node.t);
+  return {
+    timesS,
+    firstNode: [0, timesS.length],
+    width,
+    values,
+    slopes: undefined,
+    valuesAt: (_, t) => between(timesS, values, width, t),
+  };
 }
 
 /** Straight between the nodes: the layered answer is kept at the nodes only. */
-function between(rows: readonly QuantityRow[], t: number): Float64Array {
+function between(
+  timesS: Float64Array,
+  values: Float64Array,
+  width: number,
+  t: number,
+): Float64Array {
   let low = 0;
-  let high = rows.length - 1;
+  let high = timesS.length - 1;
   while (low < high) {
     const middle = (low + high + 1) >> 1;
-    if ((rows[middle]?.t ?? Infinity) <= t) low = middle;
+    if ((timesS[middle] ?? Infinity) <= t) low = middle;
     else high = middle - 1;
   }
-  const before = rows[low];
-  const after = rows[low + 1] ?? before;
-  if (!before || !after) return new Float64Array(0);
-  const span = after.t - before.t;
-  const share = span > 0 ? (t - before.t) / span : 0;
-  return before.values.map((value, i) => value + share * ((after.values[i] ?? value) - value));
+  const from = timesS[low] ?? t;
+  const to = timesS[low + 1] ?? from;
+  const share = to > from ? (t - from) / (to - from) : 0;
+  return Float64Array.from({ length: width }, (_, q) => {
+    const before = values[low * width + q] ?? 0;
+    return before + share * ((values[(low + 1) * width + q] ?? before) - before);
+  });
 }
 
 /** Depths and fractions of the layers of one space at the output times. */
