@@ -222,6 +222,7 @@ export function PlanPage(props: PlanPageProps): VNode {
       path="/plans"
       notice={props.notice}
       hasErrors={state.problems.length > 0}
+      scripts={['moments.js']}
       wide
     >
       <p class="back">

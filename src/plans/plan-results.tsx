@@ -4,11 +4,13 @@ import type { ErrorDetail } from '../errors.js';
 import { quantityText } from '../web/format/figure-text.js';
 import { fieldId } from '../web/forms/fields.js';
 import { DecisionBox, OpenableFigure } from '../web/layout/parts.js';
-import { SectionDrawing } from '../web/section/section-drawing.js';
+import { chosenMoment } from '../web/section/moment-view.js';
 import { en } from '../web/texts/en.js';
 import { planTexts } from '../web/texts/en-plans.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
 import { AmountsAndHolds, ControlResults, WordsByPart, Workings } from './result-tables.js';
+import { DriverResults } from './driver-results.js';
+import { SectionResults } from './section-results.js';
 import { SoundCards } from './sound-card.js';
 import { sentence } from '../web/views/sentence.js';
 import { ZoneResults } from './zone-results.js';
@@ -101,6 +103,8 @@ export function PlanResults(props: {
   readonly planId: string;
   readonly assessment: Assessment;
   readonly linkTo: PlaceLink;
+  /** Name of the moment that the section shows. */
+  readonly at?: string | undefined;
 }): VNode {
   const { planId, assessment, linkTo } = props;
   const { conditions, refusals } = assessment;
@@ -135,20 +139,17 @@ export function PlanResults(props: {
       )}
       <Questions questions={assessment.questionsThatDecide} linkTo={linkTo} />
       <Findings findings={assessment.findings} linkTo={linkTo} />
-      {assessment.section.spaces.length > 0 && (
-        <section aria-labelledby="section-title">
-          <h2 id="section-title">{words.section}</h2>
-          <figure class="drawn" tabIndex={0} aria-label={words.section}>
-            <SectionDrawing view={assessment.section} />
-            <figcaption>{sentence(assessment.section.moment)}</figcaption>
-          </figure>
-        </section>
-      )}
-      <ZoneResults planId={planId} assessment={assessment} />
+      <SectionResults planId={planId} assessment={assessment} at={props.at} />
+      <ZoneResults
+        planId={planId}
+        assessment={assessment}
+        moment={chosenMoment(assessment.section, props.at)}
+      />
       <SoundCards planId={planId} sound={assessment.sound} />
       <WordsByPart assessment={assessment} />
       <AmountsAndHolds assessment={assessment} />
       <ControlResults assessment={assessment} />
+      <DriverResults assessment={assessment} />
       <Workings assessment={assessment} />
     </>
   );

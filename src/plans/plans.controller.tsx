@@ -1,11 +1,13 @@
 import { Body, Controller, Get, Header, Param, Post, Query, Res } from '@nestjs/common';
 import type { VNode } from 'preact';
+import { renderToString } from 'preact-render-to-string';
 import type { CaseName } from '../assessment/assessment.js';
 import { CatalogueData } from '../catalogue/catalogue.module.js';
 import { Conflict, DomainError, InvalidInput, NotFound, type ErrorDetail } from '../errors.js';
 import { VenuesService } from '../venues/venues.service.js';
 import { chartSvg } from '../web/charts/chart-svg.js';
 import { curveOption } from '../web/charts/curve-option.js';
+import { curveSizes } from '../web/charts/curve-scale.js';
 import { zoneCurve } from '../web/charts/zone-curve.js';
 import { checkedForm } from '../web/forms/checked-form.js';
 import { emptyForm, fieldId, type FormState } from '../web/forms/fields.js';
@@ -13,6 +15,7 @@ import type { FormFields } from '../web/forms/form-fields.js';
 import { ClientSignal } from '../web/http/client-signal.js';
 import { ReturnsPage, sendElsewhere, sendPage, type PageReply } from '../web/http/exchange.js';
 import { pageHtml } from '../web/layout/page.js';
+import { chosenMoment } from '../web/section/moment-view.js';
 import { CurrentViewer, type Viewer } from '../web/session/viewer.js';
 import { noticeNamed } from '../web/texts/en.js';
 import { planTexts as words } from '../web/texts/en-plans.js';
@@ -31,6 +34,7 @@ import { importedPlan } from './plan-import.js';
 import { pageMessages } from './plan-messages.js';
 import { ImportPage, NewPlanPage, PlanListPage, PlanPage } from './plan-pages.js';
 import { NoResults, PlanResults, type PlaceLink } from './plan-results.js';
+import { MomentPart } from './section-results.js';
 import { PlansService, type OpenPlan } from './plans.service.js';
 
 /** Fields of the page that belong to the plan but not to its document. */
@@ -50,6 +54,8 @@ interface Shown {
   readonly differences?: ReturnType<typeof formDifferences>;
   readonly removal?: FormState;
   readonly notice?: unknown;
+  /** Name of the moment that the section shows. */
+  readonly at?: unknown;
 }
 
 @Controller('plans')
@@ -144,10 +150,25 @@ export class PlansController {
     @Param('id') id: string,
     @CurrentViewer() viewer: Viewer,
     @Query('notice') notice: unknown,
+    @Query('at') at: unknown,
     @ClientSignal() signal: AbortSignal,
   ): Promise<string> {
     const open = await this.plans.open(id, signal);
-    return this.#page({ viewer, open, fields: this.#textsOf(open), notice });
+    return this.#page({ viewer, open, fields: this.#textsOf(open), notice, at });
+  }
+
+  /** The section at another moment, for the slider on the page. */
+  @Get(':id/moment')
+  @ReturnsPage()
+  async moment(
+    @Param('id') id: string,
+    @Query('at') at: unknown,
+    @ClientSignal() signal: AbortSignal,
+  ): Promise<string> {
+    const { outcome } = await this.plans.open(id, signal);
+    if (outcome.assessment === undefined) throw outcome.failure;
+    const moment = chosenMoment(outcome.assessment.section, at);
+    return renderToString(<MomentPart assessment={outcome.assessment} moment={moment} />);
   }
 
   @Post(':id')
@@ -269,7 +290,8 @@ export class PlansController {
   ): Promise<string> {
     const { outcome } = await this.plans.open(id, signal);
     if (outcome.assessment === undefined) throw outcome.failure;
-    const caseName = file.replace(/\.svg$/, '');
+    const [caseName = '', sizeName = ''] = file.replace(/\.svg$/, '').split('-');
+    const size = curveSizes[sizeName === 'narrow' ? 'narrow' : 'wide'];
     const zone = outcome.assessment.zones.find((one) => one.id === zoneId);
     const curve =
       zone && isCase(caseName)
@@ -278,7 +300,7 @@ export class PlansController {
     if (curve === null) {
       throw new NotFound('There is no such curve.', 'Open it from the page of the plan.');
     }
-    return chartSvg(curveOption(curve), 720, 320);
+    return chartSvg(curveOption(curve, size), size.width, size.height);
   }
 
   #textsOf({ plan }: OpenPlan): FormFields {
@@ -307,7 +329,7 @@ export class PlansController {
   }
 
   async #page(shown: Shown): Promise<string> {
-    const { viewer, open, fields, problems = [], version, notice, ...rest } = shown;
+    const { viewer, open, fields, problems = [], version, notice, at, ...rest } = shown;
     const { plan, venue } = open;
     const venues = await this.venues.list();
     const lists = {
@@ -323,12 +345,12 @@ export class PlansController {
         state={{ values: fields, problems }}
         lists={lists}
         notice={noticeNamed(notice)}
-        results={this.#results(open, fields)}
+        results={this.#results(open, fields, at)}
       />,
     );
   }
 
-  #results(open: OpenPlan, fields: FormFields): VNode {
+  #results(open: OpenPlan, fields: FormFields, at?: unknown): VNode {
     const { plan, venue, file, outcome } = open;
     const places = placesOnPage(fields, planForm);
     const linkTo: PlaceLink = (pointer) => {
@@ -340,7 +362,14 @@ export class PlansController {
       return name === undefined ? undefined : `#${fieldId(name)}`;
     };
     if (outcome.assessment !== undefined) {
-      return <PlanResults planId={plan.id} assessment={outcome.assessment} linkTo={linkTo} />;
+      return (
+        <PlanResults
+          planId={plan.id}
+          assessment={outcome.assessment}
+          linkTo={linkTo}
+          at={typeof at === 'string' ? at : undefined}
+        />
+      );
     }
     const failure: DomainError = outcome.failure;
     const missing = this.plans.missingIn(file);

@@ -3,14 +3,16 @@ import type {
   Answer,
   Assessment,
   Figure,
+  Governing,
+  SectionMoment,
   ZoneQuantity,
   ZoneResult,
 } from '../assessment/assessment.js';
-import { zoneCurve, zoneCurveText } from '../web/charts/zone-curve.js';
 import { quantityText } from '../web/format/figure-text.js';
 import { OpenableFigure } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
 import { sentence } from '../web/views/sentence.js';
+import { CueKey, ZoneCurves } from './zone-curves.js';
 
 const answers: readonly Answer[] = ['mixed', 'layered', 'layeredP50', 'bound'];
 const standings = ['meets aim', 'meets limit', 'below limit', 'past never'] as const;
@@ -112,50 +114,6 @@ function Crossings(props: { readonly quantities: readonly ZoneQuantity[] }): VNo
   );
 }
 
-/** Address of the picture of one curve; the hash makes a changed plan another picture. */
-const curvePath = (
-  planId: string,
-  zone: string,
-  quantity: string,
-  caseName: string,
-  hash: string,
-) =>
-  `/plans/${planId}/curves/${encodeURIComponent(zone)}/${encodeURIComponent(quantity)}/${caseName}.svg?v=${hash.slice(0, 12)}`;
-
-function Curves(props: {
-  readonly planId: string;
-  readonly zone: ZoneResult;
-  readonly assessment: Assessment;
-}): VNode {
-  const { planId, zone, assessment } = props;
-  return (
-    <>
-      {zone.quantities.map(({ quantity, quantityTitle, caseName }) => {
-        const curve = zoneCurve(zone, quantity, caseName, assessment.events);
-        if (curve === null) return null;
-        const title = `${sentence(quantityTitle)}, ${words.cases[caseName]}`;
-        return (
-          <details class="more" key={`${quantity} ${caseName}`}>
-            <summary>
-              {words.curve}: {title}
-            </summary>
-            <figure class="drawn" tabIndex={0} aria-label={`${words.curve}: ${title}`}>
-              <img
-                src={curvePath(planId, zone.id, quantity, caseName, assessment.inputHash)}
-                alt={zoneCurveText(curve)}
-                width={720}
-                height={320}
-                loading="lazy"
-              />
-              <figcaption>{zoneCurveText(curve)}</figcaption>
-            </figure>
-          </details>
-        );
-      })}
-    </>
-  );
-}
-
 function zoneFacts(zone: ZoneResult): string {
   const height = `${words.height} ${String(zone.heightM)}\u00a0m ${words.aboveFloor}`;
   const count =
@@ -165,20 +123,33 @@ function zoneFacts(zone: ZoneResult): string {
   return `${zone.spaceTitle}: ${count}${height}`;
 }
 
-/** Every breathing zone, folded to its gravest standing; the one that decides stands open. */
+/** Whether a zone is the one of the number that decides; the check near the floor is another. */
+const governs = (governing: Governing | null, zone: ZoneResult): boolean =>
+  governing !== null &&
+  zone.id.replace(/@0\.2$/, '') === governing.zone &&
+  (zone.kind === 'floorLevelCheck') === governing.zoneTitle.includes('0.2 m above the floor');
+
+/** Every breathing zone, folded to its gravest standing; the one that decides is first and open. */
 export function ZoneResults(props: {
   readonly planId: string;
   readonly assessment: Assessment;
+  readonly moment: SectionMoment | null;
 }): VNode {
-  const { planId, assessment } = props;
+  const { planId, assessment, moment } = props;
+  const { governing } = assessment;
+  const zones = assessment.zones.toSorted(
+    (one, other) => Number(governs(governing, other)) - Number(governs(governing, one)),
+  );
   return (
     <section aria-labelledby="zones-title">
       <h2 id="zones-title">{words.zones}</h2>
       <p class="hint">{words.zonesHint}</p>
-      {assessment.zones.map((zone) => {
+      <CueKey assessment={assessment} />
+      {zones.map((zone) => {
         const standing = gravest(zone);
+        const isGoverning = governs(governing, zone);
         return (
-          <details class="row zone" key={zone.id} open={assessment.governing?.zone === zone.id}>
+          <details class="row zone" key={zone.id} open={isGoverning}>
             <summary>
               <span class="row-title">{zone.title}</span>
               {standing && (
@@ -203,7 +174,13 @@ export function ZoneResults(props: {
                     ),
                 )}
                 <Crossings quantities={zone.quantities} />
-                <Curves planId={planId} zone={zone} assessment={assessment} />
+                <ZoneCurves
+                  planId={planId}
+                  zone={zone}
+                  assessment={assessment}
+                  moment={moment}
+                  isGoverning={isGoverning}
+                />
               </>
             ) : (
               <p>

@@ -127,6 +127,55 @@ describe.skipIf(browserPath === undefined)('planning in a real browser', () => {
     await context.close();
   });
 
+  test('without script the section is shown at the chosen moment, with its numbers', async () => {
+    const { context, page } = await signedIn(phone, false);
+    await page.goto(`${server.url}${planPath}`);
+    const moments = page.getByLabel('Moment shown');
+    const before = await page.locator('#moment-view table').textContent();
+    const first = await moments.locator('option').first().textContent();
+    await moments.selectOption({ index: 0 });
+    await page.getByRole('button', { name: 'Show it' }).click();
+    await page.waitForURL(/at=planned-/);
+    expect(await page.locator('#moment-view caption').textContent()).toContain(first);
+    expect(await page.locator('#moment-view table').textContent()).not.toBe(before);
+    await context.close();
+  });
+
+  test('with script one step by keyboard moves the section and the line on the open curve', async () => {
+    const { context, page } = await signedIn(desktop);
+    await page.goto(`${server.url}${planPath}`);
+    const line = page.locator('details[open] svg.moment-mark.wide line').first();
+    const slider = page.getByRole('slider', { name: 'Moment shown' });
+    const place = async () => Number(await line.getAttribute('x1'));
+    const [before, said] = [await place(), await slider.getAttribute('aria-valuetext')];
+    expect(before).toBeGreaterThan(0);
+    await slider.focus();
+    await page.keyboard.press('ArrowLeft');
+    const now = (await slider.getAttribute('aria-valuetext')) ?? '';
+    expect(now).not.toBe(said);
+    expect(await place()).toBeLessThan(before);
+    await expect
+      .poll(() => page.locator('#moment-view caption').textContent())
+      .toContain(now.trim());
+    for (const name of ['Earlier', 'Later']) {
+      const box = await page.getByRole('button', { name }).boundingBox();
+      expect(box?.height).toBeGreaterThanOrEqual(44);
+    }
+    await context.close();
+  });
+
+  test('the picture of a curve fits a phone and is drawn for its width', async () => {
+    const { context, page } = await signedIn(phone);
+    await page.goto(`${server.url}${planPath}`);
+    const picture = page.locator('details[open] .curve img').first();
+    await picture.scrollIntoViewIfNeeded();
+    await expect
+      .poll(() => picture.evaluate((img: HTMLImageElement) => img.naturalWidth))
+      .toBe(340);
+    expect(await picture.evaluate((img: HTMLImageElement) => img.currentSrc)).toContain('narrow');
+    await context.close();
+  });
+
   test.each([
     ['phone', phone],
     ['desktop', desktop],

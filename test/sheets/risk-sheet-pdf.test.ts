@@ -151,10 +151,18 @@ describe('renderRiskSheet', () => {
 
   it('says what each figure shows, numbers included', async () => {
     const figures = (await tagsOf(document)).filter((tag) => tag.role === 'Figure');
-    expect(figures).toHaveLength(2);
-    const [curve, section] = figures.map((figure) => (figure.alt ?? '').replaceAll('\u00a0', ' '));
+    expect(figures).toHaveLength(3);
+    const [curve, planned, worst] = figures.map((figure) =>
+      (figure.alt ?? '').replaceAll('\u00a0', ' '),
+    );
     expect(curve).toContain('inventory bound lowest 17.8 % at 20:00');
-    expect(section).toContain('Players, breathing at −0.95 m: lowest oxygen 17.8 %');
+    expect(curve).toContain('layered, 95 in 100');
+    expect(planned).toContain('20:00, when the planned day is at its worst.');
+    expect(planned).toContain('Players, breathing at −0.95 m: oxygen 20.4 % (bound 17.8 %)');
+    expect(planned).toContain('Gas along the floor, 0.90 m deep: 9.0 %.');
+    expect(planned).toContain('Meter Pit oxygen at −1.80 m.');
+    expect(worst).toContain('20:01, the worst of: whole box into warm water.');
+    expect(worst).toContain('Gas along the floor, 1.90 m deep');
   });
 
   it('leaves no drawn text outside the margins of the page', async () => {

@@ -1,24 +1,32 @@
-import type { Assessment, CaseName, SectionView, ZoneResult } from '../../assessment/assessment.js';
+import type {
+  Assessment,
+  CaseName,
+  SectionMoment,
+  ZoneResult,
+} from '../../assessment/assessment.js';
 import { chartSvg } from '../../web/charts/chart-svg.js';
 import { curveOption } from '../../web/charts/curve-option.js';
+import { curveSizes } from '../../web/charts/curve-scale.js';
 import {
   clockText,
-  numberedCues,
   zoneCurve,
   zoneCurveText,
   type ZoneCurve,
 } from '../../web/charts/zone-curve.js';
+import { momentView } from '../../web/section/moment-view.js';
 import { dividedViews } from '../../web/section/placement.js';
 import { sectionSvg } from '../../web/section/section-drawing.js';
+import { sectionWords } from '../../web/section/section-words.js';
+import { spacesInUse } from '../../web/section/spaces-in-use.js';
 import { sectionText } from '../../web/section/section-text.js';
 import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import type { RiskTexts } from './risk-texts.js';
 
-const chartSize = { width: 600, height: 215 };
+const chartSize = curveSizes.paper;
 
 /** The picture takes a third of a page at most; its key of names may need more. */
-const sectionRoom = { tallestRow: 160, narrowestSpace: 34 };
+const sectionRoom = { tallestRow: 95, narrowestSpace: 34 };
 const mostRows = 2;
 const tallestFigure = 0.5;
 
@@ -61,7 +69,7 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
   const chosen = chosenCurve(assessment);
   if (chosen === null) return [{ kind: 'paragraph', look: 'body', words: words.none }];
   const { curve, zone, caseName } = chosen;
-  const events = numberedCues(curve.events).map(({ number, title, events: times }) =>
+  const events = curve.cues.map(({ number, title, events: times }) =>
     filledText(words.event, {
       number: String(number),
       title,
@@ -71,7 +79,7 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
   return [
     {
       kind: 'figure',
-      svg: chartSvg(curveOption(curve), chartSize.width, chartSize.height),
+      svg: chartSvg(curveOption(curve, chartSize), chartSize.width, chartSize.height),
       alt: zoneCurveText(curve),
       aspect: chartSize.width / chartSize.height,
       tallest: tallestFigure,
@@ -79,59 +87,69 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
         quantity: curve.quantityTitle.charAt(0).toUpperCase() + curve.quantityTitle.slice(1),
         zone: zone.title,
         case: texts.cases[caseName],
-        events: events.join(' '),
+        events: [...events, ...bandWords(assessment, zone, texts)].join(' '),
       }),
     },
   ];
 }
 
+/** How the shaded band was drawn, and what moves it most in this zone. */
+function bandWords(
+  { sampling, drivers }: Assessment,
+  zone: ZoneResult,
+  texts: RiskTexts,
+): string[] {
+  const words = texts.parts.curve;
+  if (sampling === null) return [];
+  const own = drivers.filter((driver) => zone.id.startsWith(driver.zone));
+  const inputs = [...new Set(own.map(({ inputTitle }) => inputTitle))].slice(0, 3);
+  return [
+    filledText(words.band, { samples: String(sampling.samples), seed: String(sampling.seed) }),
+    ...(inputs.length === 0 ? [] : [filledText(words.drivers, { inputs: inputs.join('; ') })]),
+  ];
+}
+
+/** The moments worth paper: each case at its worst. */
+function printedMoments({ section }: Assessment): readonly SectionMoment[] {
+  return (['planned', 'worstCredible'] as const).flatMap(
+    (caseName) =>
+      section.moments.find((one) => one.kind === 'worst' && one.caseName === caseName) ?? [],
+  );
+}
+
 /** The section of the spaces with people, acts or gas, and the names of those left out. */
 export function sectionPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.section;
-  const { view, leftOut } = spacesInUse(assessment);
-  const parts = dividedViews(view, mostRows, sectionRoom);
-  return parts.map((part, index) => {
-    const drawing = sectionSvg(part, { room: sectionRoom });
-    const caption = [
-      filledText(words.caption, { moment: sentence(part.moment) }),
-      ...(leftOut.length === 0 || index < parts.length - 1
-        ? []
-        : [filledText(words.leftOut, { spaces: leftOut.join(', ') })]),
-    ];
-    return {
-      kind: 'figure',
-      svg: drawing.svg,
-      alt: sectionText(part),
-      aspect: drawing.width / drawing.height,
-      tallest: tallestFigure,
-      caption: caption.join(' '),
-    };
+  const moments = printedMoments(assessment);
+  const { view, leftOut } = spacesInUse(assessment.section, assessment.acts, moments);
+  const drawn = moments.map((moment) => ({
+    view: momentView(view, moment, sectionWords),
+    title: `${texts.cases[moment.caseName]}, `,
+  }));
+  const sections = drawn.length > 0 ? drawn : [{ view, title: '' }];
+  return sections.flatMap((section, turn) => {
+    const isLast = turn === sections.length - 1;
+    return dividedViews(section.view, mostRows, sectionRoom).map((part, index, parts) => {
+      const drawing = sectionSvg(part, { room: sectionRoom });
+      const caption = [
+        sentence(`${section.title}${part.moment}`),
+        ...(turn === 0 && index === 0 ? [words.caption] : []),
+        ...(leftOut.length > 0 && isLast && index === parts.length - 1
+          ? [filledText(words.leftOut, { spaces: leftOut.join(', ') })]
+          : []),
+      ];
+      return {
+        kind: 'figure',
+        svg: drawing.svg,
+        alt: sectionText(part),
+        aspect: drawing.width / drawing.height,
+        tallest: tallestFigure,
+        caption: caption.join(' '),
+      };
+    });
   });
 }
 
 /** With a capital and a full stop, whoever wrote it. */
 const sentence = (words: string): string =>
   words === '' ? '' : `${words.charAt(0).toUpperCase()}${words.slice(1)}`.replace(/[^.]$/, '$&.');
-
-function spacesInUse(assessment: Assessment): { view: SectionView; leftOut: string[] } {
-  const { section, acts } = assessment;
-  const used = new Set([
-    ...section.zones.map((zone) => zone.space),
-    ...section.layers.map((layer) => layer.space),
-    ...acts.map((act) => act.space),
-  ]);
-  const kept = section.spaces.filter((space) => used.has(space.id));
-  if (kept.length === 0) return { view: section, leftOut: [] };
-  const ids = new Set(kept.map((space) => space.id));
-  // An opening into a space that is not drawn would look like one to the outside.
-  const drawn = (id: string): boolean =>
-    ids.has(id) || !section.spaces.some((space) => space.id === id);
-  return {
-    view: {
-      ...section,
-      spaces: kept,
-      openings: section.openings.filter((opening) => drawn(opening.from) && drawn(opening.to)),
-    },
-    leftOut: section.spaces.filter((space) => !ids.has(space.id)).map((space) => space.title),
-  };
-}

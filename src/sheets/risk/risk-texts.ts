@@ -134,7 +134,7 @@ export const riskTextsSchema = Type.Object(
           },
           closed,
         ),
-        curve: texts('heading', 'caption', 'event', 'none'),
+        curve: texts('heading', 'caption', 'event', 'band', 'drivers', 'none'),
         section: texts('heading', 'caption', 'leftOut'),
         sound: texts(
           'heading',

@@ -17,6 +17,16 @@ export interface ZoneCurve {
   readonly series: readonly ZoneSeries[];
   readonly levels: readonly { readonly name: 'aim' | 'limit' | 'never'; readonly figure: Figure }[];
   readonly events: readonly DayEvent[];
+  /** Acts with the number that marks them on every curve of the day. */
+  readonly cues: readonly NumberedCue[];
+  readonly shows: readonly DayEvent[];
+}
+
+/** An act with all its times of the day. */
+export interface NumberedCue {
+  readonly number: number;
+  readonly title: string;
+  readonly events: readonly DayEvent[];
 }
 
 /** The curve of one quantity and case of a zone, or null when no series was computed. */
@@ -37,25 +47,35 @@ export function zoneCurve(
   if (series.length === 0 || judged === undefined || answer === undefined) return null;
   const from = Math.min(...series.map((entry) => entry.timesS[0] ?? 0));
   const to = Math.max(...series.map((entry) => entry.timesS.at(-1) ?? 0));
+  const isShown = (event: DayEvent): boolean => event.untilS >= from && event.atS <= to;
   return {
     title: zone.title,
     quantityTitle: judged.quantityTitle,
     unit: answer.unit,
-    series,
+    series: withoutRepeats(series),
     levels: (['aim', 'limit', 'never'] as const).flatMap((name) => {
       const figure = judged.levels[name];
       return figure === null ? [] : [{ name, figure }];
     }),
-    events: events.filter((event) => event.untilS >= from && event.atS <= to),
+    events: events.filter(isShown),
+    cues: numberedCues(events)
+      .map((cue) => ({ ...cue, events: cue.events.filter(isShown) }))
+      .filter((cue) => cue.events.length > 0),
+    shows: events.filter((event) => event.act === null && isShown(event)),
   };
 }
 
-/** Cues of the curve by title, numbered in the order of their first time. */
-export function numberedCues(
-  events: readonly DayEvent[],
-): { readonly number: number; readonly title: string; readonly events: readonly DayEvent[] }[] {
+/** Where the band is drawn its bad end, or the mixed line, already is the layered answer that judges. */
+function withoutRepeats(series: readonly ZoneSeries[]): readonly ZoneSeries[] {
+  const hasBand = series.some((entry) => entry.answer === 'layeredP05');
+  return hasBand ? series.filter((entry) => entry.answer !== 'layered') : series;
+}
+
+/** The acts of a day by title, numbered in the order of their first time. */
+export function numberedCues(events: readonly DayEvent[]): readonly NumberedCue[] {
   const cues = new Map<string, DayEvent[]>();
   for (const event of events.toSorted((one, other) => one.atS - other.atS)) {
+    if (event.act === null) continue;
     cues.set(event.title, [...(cues.get(event.title) ?? []), event]);
   }
   return [...cues].map(([title, of], index) => ({ number: index + 1, title, events: of }));

@@ -16,7 +16,7 @@ export interface PageProps {
   readonly hasErrors?: boolean | undefined;
   /** For tables and drawings that need the whole width. */
   readonly wide?: boolean | undefined;
-  /** Scripts of this page under dist/public, by name. */
+  /** Scripts of this page: compiled files of src/web/islands, by name. */
   readonly scripts?: readonly string[] | undefined;
   readonly children: ComponentChildren;
 }

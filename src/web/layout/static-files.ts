@@ -9,7 +9,7 @@ const projectRoot = fileURLToPath(new URL('../../../', import.meta.url));
 export const staticFolders = [
   { prefix: 'styles', folder: join(projectRoot, 'templates', 'styles') },
   { prefix: 'fonts', folder: join(projectRoot, 'templates', 'fonts') },
-  { prefix: 'islands', folder: join(projectRoot, 'dist', 'public') },
+  { prefix: 'islands', folder: join(projectRoot, 'dist', 'web', 'islands') },
 ] as const;
 
 const marks = new Map<string, string>();

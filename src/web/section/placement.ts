@@ -31,7 +31,8 @@ export interface Placement {
   readonly rows: readonly Row[];
 }
 
-const drawingWidth = 620;
+/** Width of a drawing on a page or a sheet. */
+const usualWidth = 620;
 const side = 12;
 const rightSide = 58;
 const titleRoom = 34;
@@ -47,7 +48,12 @@ export interface SectionRoom {
   readonly tallestRow: number;
   /** A space narrower than this asks for one more row. */
   readonly narrowestSpace: number;
+  /** Width of the drawing; that of a page where it is not said. */
+  readonly width?: number;
 }
+
+/** The width of a phone. */
+export const phoneRoom: SectionRoom = { tallestRow: 230, narrowestSpace: 70, width: 340 };
 
 const pageRoom: SectionRoom = { tallestRow: 270, narrowestSpace: 70 };
 
@@ -96,6 +102,7 @@ function dividedRows(spaces: readonly SectionSpace[], count: number): SectionSpa
 export function sectionPlacement(view: SectionView, limits: SectionRoom = pageRoom): Placement {
   const below = spacesBelow(view);
   const standing = view.spaces.filter((space) => !below.has(space.id));
+  const drawingWidth = limits.width ?? usualWidth;
   const room = drawingWidth - side - rightSide;
   let rows: SectionSpace[][] = [];
   let scale = largestScale;
@@ -155,11 +162,11 @@ export function sectionPlacement(view: SectionView, limits: SectionRoom = pageRo
 }
 
 /** The view divided into views of at most this many rows, for paper of a fixed height. */
-export function dividedViews(
-  view: SectionView,
+export function dividedViews<View extends SectionView>(
+  view: View,
   mostRows: number,
   limits: SectionRoom = pageRoom,
-): SectionView[] {
+): View[] {
   const placement = sectionPlacement(view, limits);
   if (placement.rows.length <= mostRows) return [view];
   const parts = Math.ceil(placement.rows.length / mostRows);
@@ -176,6 +183,7 @@ export function dividedViews(
       openings: view.openings.filter((opening) => ids.has(opening.from) || ids.has(opening.to)),
       zones: view.zones.filter((zone) => ids.has(zone.space)),
       layers: view.layers.filter((layer) => ids.has(layer.space)),
+      ...(view.meters && { meters: view.meters.filter((meter) => ids.has(meter.space)) }),
     };
   });
 }

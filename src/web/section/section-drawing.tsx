@@ -5,7 +5,8 @@ import { figureText, quantityText } from '../format/figure-text.js';
 import { hatchPath, polygonPart, polygonPath, two, type Point } from './hatch.js';
 import { accent, ink, softInk } from './ink.js';
 import { drawnWidth, freeBox, type LabelBox } from './label-placement.js';
-import { levelText } from './level-text.js';
+import { lengthText, levelText } from './level-text.js';
+import type { MomentView } from './moment-view.js';
 import {
   roofLevel,
   sectionPlacement,
@@ -165,7 +166,7 @@ function people(
 
 /** Openings between neighbours are gaps in their wall; others are seen behind the cut. */
 function openings(
-  view: SectionView,
+  view: SectionView | MomentView,
   placement: Placement,
   corners: ReadonlyMap<string, Corners>,
   paper: string,
@@ -265,7 +266,7 @@ function scaleBar(scale: number, x: number, y: number): JSX.Element[] {
 
 /** The hatches that occur, each with what it means, in as many lines as they need. */
 function hatchKey(
-  view: SectionView,
+  view: SectionView | MomentView,
   words: SectionWords,
   at: { readonly x: number; readonly y: number; readonly right: number },
 ): { readonly parts: JSX.Element[]; readonly bottom: number } {
@@ -301,7 +302,7 @@ function hatchKey(
 
 /** The venue as a vertical cut, to scale, with breathing heights, gas and the lowest oxygen. */
 export function SectionDrawing(props: {
-  readonly view: SectionView;
+  readonly view: SectionView | MomentView;
   readonly options?: SectionOptions;
 }): JSX.Element {
   const { svg } = drawnSection(props.view, props.options ?? {});
@@ -310,7 +311,7 @@ export function SectionDrawing(props: {
 
 /** The drawing as a text for a sheet or an image, with its size. */
 export function sectionSvg(
-  view: SectionView,
+  view: SectionView | MomentView,
   options: SectionOptions = {},
 ): { readonly svg: string; readonly width: number; readonly height: number } {
   const { svg, width, height } = drawnSection(view, options);
@@ -318,7 +319,7 @@ export function sectionSvg(
 }
 
 function drawnSection(
-  view: SectionView,
+  view: SectionView | MomentView,
   options: SectionOptions,
 ): { readonly svg: JSX.Element; readonly width: number; readonly height: number } {
   const words = options.words ?? sectionWords;
@@ -378,24 +379,41 @@ function drawnSection(
   return { svg, width: placement.width, height };
 }
 
-/** Names that did not fit, in columns under the drawing. */
+/** Names that did not fit, in columns under the drawing: long ones together, short ones beside them. */
 function keyLines(
   key: Key,
   top: number,
   width: number,
 ): { readonly lines: JSX.Element[]; readonly height: number } {
-  const widest = Math.max(0, ...key.map((entry) => drawnWidth(entry.text, small) + 34));
-  const columns = Math.max(1, Math.min(3, Math.floor((width - 24) / Math.max(widest, 1))));
-  const perColumn = Math.ceil(key.length / columns);
-  const lines = key.flatMap((entry, index) => {
-    const x = 12 + Math.floor(index / perColumn) * ((width - 24) / columns);
-    const y = top + (index % perColumn) * 14;
-    return [
-      label({ x, y, text: entry.sign, strong: true, fontSize: small }),
-      label({ x: x + 22, y, text: entry.text, fontSize: small }),
-    ];
-  });
-  return { lines, height: key.length === 0 ? 0 : perColumn * 14 };
+  const room = width - 24;
+  const widthOf = (entry: Key[number]): number => drawnWidth(entry.text, small) * 0.92 + 34;
+  const long = key.filter((entry) => widthOf(entry) > room / 2);
+  const short = key.filter((entry) => widthOf(entry) <= room / 2);
+  const longWidth = Math.max(0, ...long.map(widthOf));
+  const shortWidth = Math.max(1, ...short.map(widthOf));
+  const beside = Math.floor((room - longWidth) / shortWidth);
+  const columns: { x: number; entries: Key[number][] }[] = [];
+  if (long.length > 0) columns.push({ x: 12, entries: [...long] });
+  const count = Math.min(3, beside, Math.max(1, Math.ceil(short.length / 2)));
+  if (count < 1 && columns[0]) {
+    columns[0].entries.push(...short);
+  } else {
+    const each = Math.ceil(short.length / count);
+    for (let column = 0; column < count; column += 1) {
+      const entries = short.slice(column * each, (column + 1) * each);
+      columns.push({ x: 12 + longWidth + column * ((room - longWidth) / count), entries });
+    }
+  }
+  const lines = columns.flatMap(({ x, entries }) =>
+    entries.flatMap((entry, index) => {
+      const y = top + index * 14;
+      return [
+        label({ x, y, text: entry.sign, strong: true, fontSize: small }),
+        label({ x: x + 22, y, text: entry.text, fontSize: small }),
+      ];
+    }),
+  );
+  return { lines, height: Math.max(0, ...columns.map(({ entries }) => entries.length)) * 14 };
 }
 
 interface Setting {
@@ -406,7 +424,7 @@ interface Setting {
 
 /** Gas, breathing heights and their labels in one space. */
 function spaceContents(
-  view: SectionView,
+  view: SectionView | MomentView,
   placed: PlacedSpace,
   own: Corners,
   placement: Placement,
@@ -435,7 +453,12 @@ function spaceContents(
     );
   };
 
-  const layerLabels: { text: string; at: keyof typeof hatches; polygon: readonly Point[] }[] = [];
+  const layerLabels: {
+    text: string;
+    told: string;
+    at: keyof typeof hatches;
+    polygon: readonly Point[];
+  }[] = [];
   for (const layer of view.layers.filter((entry) => entry.space === placed.space.id)) {
     const hatch = hatches[layer.at];
     const edge =
@@ -448,27 +471,36 @@ function spaceContents(
         : polygonPart(own.polygon, edge, layer.at === 'floor' ? 'below' : 'above');
     gas.push(stroke(hatchPath(polygon, hatch.angleDeg, hatch.spacing), softInk, 0.9, hatch.dash));
     if (layer.at !== 'whole') gas.push(stroke(polygonPath(polygon), softInk, 0.8));
-    layerLabels.push({ text: `gas ${figureText(layer.gasFraction)}`, at: layer.at, polygon });
+    const depth =
+      layer.at === 'whole' ? '' : `, ${lengthText(layer.depthM)}\u00a0${setting.words.deep}`;
+    const amount = `${figureText(layer.gasFraction)}${depth}`;
+    layerLabels.push({
+      text: `${setting.words.gas}\u00a0${amount}`,
+      told: `${setting.words.places[layer.at]} ${amount}`,
+      at: layer.at,
+      polygon,
+    });
   }
+
+  const meters = meterMarks(view, placed, own, datumY, scale, setting);
+  heights.push(...meters.marks);
+  taken.push(...meters.taken);
 
   const zones = view.zones
     .filter((zone) => zone.space === placed.space.id)
     .toSorted((one, other) => one.levelM - other.levelM);
   zones.forEach((zone, turn) => {
     const y = datumY - zone.levelM * scale;
-    const value =
-      zone.lowestOxygen === null
-        ? setting.words.noNumber
-        : quantityText(zone.lowestOxygen.value, zone.lowestOxygen.unit);
+    const value = breathedText(view, zone, setting.words);
     const full = `${zone.title}\u00a0\u00a0${value}`;
     let text = full;
     if (drawnWidth(full, size) > room * 0.78) {
       const sign = keySign(setting.key);
-      setting.key.push({
-        sign,
-        text: `${zone.title}, ${levelText(zone.levelM)}: ${setting.words.oxygen} ${value}`,
-      });
-      text = `${sign}\u00a0\u00a0${value}`;
+      const told = `${zone.title}, ${levelText(zone.levelM)}: ${setting.words.oxygen} ${value}`;
+      // Without the bound where the drawing is narrow: the numbers beside it have both.
+      const fits = drawnWidth(told, small) + 46 <= placement.width;
+      setting.key.push({ sign, text: fits ? told : told.replace(/ \(.*/, '') });
+      text = `${sign}\u00a0\u00a0${value.replace(/ \(.*/, '')}`;
       if (drawnWidth(text, size) > room) text = sign;
     }
     const width = drawnWidth(text, size);
@@ -500,14 +532,14 @@ function spaceContents(
   });
 
   // Zones come first: their numbers decide. A gas label without a place goes to the key.
-  for (const { text, at, polygon } of layerLabels) {
+  for (const { text, told, at, polygon } of layerLabels) {
     const width = drawnWidth(text, size);
     const middle = polygon.reduce((sum, point) => sum + point.y, 0) / Math.max(1, polygon.length);
     const y = at === 'ceiling' ? own.roofY + 11 : Math.min(middle, lowest - 9);
     const box =
       width <= room ? freeBox({ y, width, height: lineHeight }, within, taken, 'left') : null;
     if (box === null) {
-      setting.key.push({ sign: '', text: `${placed.space.title}: ${text}` });
+      setting.key.push({ sign: '', text: `${placed.space.title}: ${told}` });
     } else {
       taken.push(box);
       boxed(box, text, false);
@@ -516,6 +548,53 @@ function spaceContents(
 
   floorLabel(placed, own, { within, taken, room, boxed: labels, paper: setting.paper });
   return { gas, heights: [...heights, ...labels] };
+}
+
+/** The oxygen of a zone as it is written: that of the moment, else the lowest of the day. */
+export function breathedText(
+  view: SectionView | MomentView,
+  zone: SectionView['zones'][number],
+  words: SectionWords,
+): string {
+  if ('breathed' in view) return view.breathed[zone.id] ?? words.noNumber;
+  if (zone.lowestOxygen === null) return words.noNumber;
+  return quantityText(zone.lowestOxygen.value, zone.lowestOxygen.unit);
+}
+
+/** Meters where they hang: a small box on the right wall, named in the key. */
+function meterMarks(
+  view: SectionView,
+  placed: PlacedSpace,
+  own: Corners,
+  datumY: number,
+  scale: number,
+  { words, paper, key }: Setting,
+): { readonly marks: JSX.Element[]; readonly taken: LabelBox[] } {
+  const taken: LabelBox[] = [];
+  const meters = (view.meters ?? []).filter((meter) => meter.space === placed.space.id);
+  const marks = meters.flatMap(({ title, levelM }, index) => {
+    const number = key.filter(({ sign }) => sign.startsWith('M')).length + 1;
+    const sign = `M${String(number)}`;
+    key.push({ sign, text: `${words.meter}: ${title}, ${levelText(levelM)}` });
+    const x = own.left + 6 + index * 30;
+    const y = Math.min(datumY - levelM * scale, own.floorY(x) - 4);
+    taken.push({ x: x - 4, y, width: 26, height: 12 });
+    return [
+      <rect
+        x={two(x - 3.5)}
+        y={two(y - 3.5)}
+        width={7}
+        height={7}
+        fill={paper}
+        stroke={ink}
+        stroke-width={1.2}
+      />,
+      stroke(segment(x - 3.5, y + 3.5, x + 3.5, y - 3.5), ink, 1.2),
+      <rect x={two(x + 5)} y={two(y - 6)} width={17} height={11} fill={paper} />,
+      label({ x: x + 6, y: y + 3.5, text: sign, fontSize: small }),
+    ];
+  });
+  return { marks, taken };
 }
 
 /** The level of the floor: under a pit, else inside just above the floor where there is room. */

@@ -7,6 +7,12 @@ export interface SectionWords {
   readonly noNumber: string;
   readonly layers: Record<'floor' | 'ceiling' | 'whole', string>;
   readonly empty: string;
+  /** Where gas lies, short, with its amount behind. */
+  readonly places: Record<'floor' | 'ceiling' | 'whole', string>;
+  readonly gas: string;
+  readonly deep: string;
+  readonly bound: string;
+  readonly meter: string;
 }
 
 export const sectionWords: SectionWords = {
@@ -21,4 +27,9 @@ export const sectionWords: SectionWords = {
     whole: 'gas mixed through the space',
   },
   empty: 'No spaces have been entered yet.',
+  places: { floor: 'floor gas', ceiling: 'ceiling gas', whole: 'mixed gas' },
+  gas: 'gas',
+  deep: 'deep',
+  bound: 'bound',
+  meter: 'Meter',
 };

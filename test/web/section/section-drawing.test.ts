@@ -1,7 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { dividedViews, sectionPlacement } from '../../../src/web/section/placement.js';
 import { sectionSvg } from '../../../src/web/section/section-drawing.js';
+import { momentKey, chosenMoment, momentView } from '../../../src/web/section/moment-view.js';
+import { phoneRoom } from '../../../src/web/section/placement.js';
+import { sectionWords } from '../../../src/web/section/section-words.js';
+import { spacesInUse } from '../../../src/web/section/spaces-in-use.js';
 import { sectionText } from '../../../src/web/section/section-text.js';
+import { assessmentFixture, momentsFixture } from '../../support/assessment-fixture.js';
 import { classroomView, longView, theatreView, vanView } from '../../support/section-fixture.js';
 
 const views = {
@@ -122,5 +127,68 @@ describe('sectionText', () => {
     expect(text).toContain('Trap crew, breathing at −0.50 m: no number.');
     expect(text).toContain('Gas along the floor, 1.40 m deep: 14.6 %.');
     expect(text).toContain('Opening from Hall to outside');
+  });
+});
+
+describe('the section at a moment', () => {
+  const { section } = assessmentFixture;
+  const drawn = (index: number, room?: typeof phoneRoom) => {
+    const moment = momentsFixture[index];
+    if (moment === undefined) throw new Error('the fixture has lost a moment');
+    const view = momentView(section, moment, sectionWords);
+    return sectionSvg(view, room === undefined ? {} : { room });
+  };
+  const wordsOf = (svg: string) => svg.replace(/aria-label="[^"]*"/, '').replaceAll('\u00a0', ' ');
+
+  it('writes depth and fraction of the layers of that moment, and none before the gas is out', () => {
+    expect(wordsOf(drawn(1).svg)).toContain('9.0 %, 0.90 m deep');
+    expect(wordsOf(drawn(3).svg)).toContain('9.0 %, 1.90 m deep');
+    expect(wordsOf(drawn(0).svg)).not.toContain('deep');
+  });
+
+  it('writes what is breathed then with its bound, rounded down', () => {
+    expect(wordsOf(drawn(1).svg)).toMatch(/20\.4 %( \(bound 17\.8 %\))?/);
+    expect(wordsOf(drawn(1).svg)).not.toContain('17.9 %');
+  });
+
+  it('hangs every meter at its height and names it in the key', () => {
+    const svg = wordsOf(drawn(1).svg);
+    expect(svg).toContain('Meter: Pit oxygen, −1.80 m');
+    expect(svg).toContain('Meter: Stage oxygen, +2.40 m');
+    expect(svg.match(/>M[12]</g)).toHaveLength(4);
+  });
+
+  it('fits the width of a phone, key included', () => {
+    const { svg, width } = drawn(1, phoneRoom);
+    expect(width).toBe(340);
+    for (const [, x = ''] of svg.matchAll(/<text x="([-\d.]+)"/g)) {
+      expect(Number(x)).toBeLessThanOrEqual(340);
+    }
+  });
+
+  it('is chosen by its name, and is the worst planned one where the name is unknown', () => {
+    for (const moment of momentsFixture) {
+      expect(chosenMoment(section, momentKey(moment))).toBe(moment);
+    }
+    expect(chosenMoment(section, 'planned-7')?.title).toBe('when the planned day is at its worst');
+    expect(chosenMoment({ ...section, moments: [] }, undefined)).toBeNull();
+  });
+
+  it('leaves out spaces where nobody is and no gas comes, and names them', () => {
+    const empty = {
+      id: 'attic',
+      title: 'Attic',
+      floorLevelM: 9,
+      floorRiseM: 0,
+      heightM: 2,
+      lengthM: 5,
+    };
+    const { view, leftOut } = spacesInUse(
+      { ...section, spaces: [...section.spaces, empty] },
+      assessmentFixture.acts,
+      section.moments,
+    );
+    expect(leftOut).toEqual(['Attic']);
+    expect(view.spaces).toHaveLength(section.spaces.length);
   });
 });

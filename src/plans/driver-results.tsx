@@ -1,0 +1,52 @@
+import type { VNode } from 'preact';
+import type { Assessment, DriverResult } from '../assessment/assessment.js';
+import { quantityText } from '../web/format/figure-text.js';
+import { Table } from '../web/layout/parts.js';
+import { resultTexts as words } from '../web/texts/en-results.js';
+import { Folded } from './result-tables.js';
+
+const strengths = [
+  { from: 0.7, name: 'strong' },
+  { from: 0.4, name: 'clear' },
+  { from: 0, name: 'slight' },
+] as const;
+
+/** How strong, and which way, in words. */
+function effectText({ quantity, rankCorrelation }: DriverResult): string {
+  const { name } = strengths.find(({ from }) => Math.abs(rankCorrelation) >= from) ?? strengths[2];
+  const of = quantity === 'oxygenFraction' ? words.drivers.oxygen : words.drivers.gas;
+  const way = rankCorrelation > 0 ? words.drivers.more : words.drivers.less;
+  return `${words.drivers[name]}: ${way} ${of} (${quantityText(rankCorrelation, 'ratio')})`;
+}
+
+/** What drives the answer: the uncertain inputs that move the band most, and how it was drawn. */
+export function DriverResults({ assessment }: { readonly assessment: Assessment }): VNode {
+  const { drivers, sampling, zones } = assessment;
+  const titleOf = ({ zone, quantity }: DriverResult): string =>
+    zones.find(({ id }) => id === zone)?.quantities.find((entry) => entry.quantity === quantity)
+      ?.quantityTitle ?? quantity;
+  return (
+    <Folded title={words.drivers.title}>
+      <p>
+        {sampling === null
+          ? words.drivers.notSampled
+          : words.drivers.sampled
+              .replace('{samples}', String(sampling.samples))
+              .replace('{seed}', String(sampling.seed))}
+      </p>
+      {drivers.length > 0 && (
+        <Table
+          caption={words.drivers.title}
+          columns={words.drivers.columns}
+          rows={drivers.map((driver) => [
+            driver.zoneTitle,
+            titleOf(driver),
+            driver.inputTitle,
+            effectText(driver),
+          ])}
+          rowHeads
+        />
+      )}
+    </Folded>
+  );
+}
