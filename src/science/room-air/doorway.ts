@@ -94,12 +94,14 @@ export function flowsWithNet(exchangeM3PerS: number, netM3PerS: number): TwoWayF
   // Newton on e in (0, 1/2]; the left side falls steadily with e, so it cannot run away.
   let e = 0.5 * (1 - net / most);
   for (let i = 0; i < 40; i++) {
-    const value = (1 - e) ** 1.5 - e ** 1.5 - net / most;
-    const step = value / (1.5 * (Math.sqrt(1 - e) + Math.sqrt(e)));
+    const above = Math.sqrt(1 - e);
+    const below = Math.sqrt(e);
+    const value = (1 - e) * above - e * below - net / most;
+    const step = value / (1.5 * (above + below));
     e = Math.min(0.5, Math.max(0, e + step));
     if (Math.abs(step) < 1e-14) break;
   }
-  const major = most * (1 - e) ** 1.5;
+  const major = most * (1 - e) * Math.sqrt(1 - e);
   const minor = major - net;
   return netM3PerS >= 0
     ? { outM3PerS: major, inM3PerS: minor }
