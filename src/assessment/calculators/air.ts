@@ -1,8 +1,14 @@
-import { Type } from 'typebox';
-import { NotComputable } from '../../errors.js';
+import { Type, type TOptional } from 'typebox';
+import { InvalidInput, NotComputable, type ErrorDetail } from '../../errors.js';
+import type { Distribution } from '../../science/room-air/air-input.js';
 import { airGasTable } from '../../science/room-air/air-gases.js';
 import type { AirResult } from '../../science/room-air/air-result.js';
 import { airRun } from '../../science/room-air/air-run.js';
+import {
+  DEFAULT_DISTRIBUTIONS,
+  SAMPLED_INPUTS,
+  type SampledInput,
+} from '../../science/room-air/input-distributions.js';
 import type { Calculator } from './calculator.js';
 
 const closed = { additionalProperties: false };
@@ -162,6 +168,32 @@ const distribution = Type.Union([
 ]);
 
 /** The body of the calculator `air`; one description for every door. */
+/** Each sampled input with its own distribution, which stands where the document gives none. */
+const overrides = Object.fromEntries(
+  SAMPLED_INPUTS.map((name) => [
+    name,
+    Type.Optional(Type.Union(distribution.anyOf, { default: DEFAULT_DISTRIBUTIONS[name] })),
+  ]),
+) as Record<SampledInput, TOptional<typeof distribution>>;
+
+/** Distributions whose ends stand the wrong way round. */
+function distributionProblems(
+  distributions: Partial<Record<SampledInput, Distribution>>,
+): readonly ErrorDetail[] {
+  return Object.entries(distributions).flatMap(([name, one]): ErrorDetail[] => {
+    const ends =
+      one.kind === 'triangular'
+        ? [one.low, one.mode, one.high]
+        : one.kind === 'uniform' || one.kind === 'logUniform'
+          ? [one.low, one.high]
+          : [0, 1];
+    const isRising = ends.every((end, i) => i === 0 || end >= (ends[i - 1] ?? end));
+    if (isRising && (ends[0] ?? 0) < (ends.at(-1) ?? 0)) return [];
+    const path = `/uncertainty/distributions/${name}`;
+    return [{ path, problem: 'low, mode and high do not rise; give fixed for one value' }];
+  });
+}
+
 export const airInputSchema = Type.Object(
   {
     ambient,
@@ -192,7 +224,7 @@ export const airInputSchema = Type.Object(
         {
           samples: Type.Integer({ minimum: 1, maximum: 65_536 }),
           seed: Type.Integer({ minimum: 0 }),
-          distributions: Type.Optional(Type.Record(Type.String(), distribution)),
+          distributions: Type.Optional(Type.Object(overrides, closed)),
         },
         closed,
       ),
@@ -222,8 +254,15 @@ const series = {
   gasFraction: byGas(numbers),
 };
 const airSeries = Type.Object(series);
+const peakValues = Type.Object({
+  oxygenFraction: Type.Number(),
+  gasFraction: byGas(Type.Number()),
+});
+const quantiles = <T extends Parameters<typeof Type.Optional>[0]>(of: T) =>
+  Type.Object({ p05: of, p50: of, p95: of });
 const layeredSeries = Type.Object({
   ...series,
+  peak: Type.Optional(quantiles(peakValues)),
   p05: Type.Optional(airSeries),
   p50: Type.Optional(airSeries),
   p95: Type.Optional(airSeries),
@@ -288,6 +327,18 @@ export const airResultSchema = Type.Object({
       relativeError: Type.Number(),
     }),
   ),
+  chances: Type.Optional(
+    Type.Array(
+      Type.Object({
+        zone: Type.String(),
+        heightM: Type.Number(),
+        quantity: Type.String(),
+        value: Type.Number(),
+        share: Type.Number({ description: 'share of the draws that pass the value' }),
+        firstS: Type.Optional(quantiles(Type.Number())),
+      }),
+    ),
+  ),
   drivers: Type.Optional(
     Type.Array(
       Type.Object({
@@ -313,6 +364,14 @@ export const airCalculator: Calculator<typeof airInputSchema, typeof airResultSc
   output: airResultSchema,
   run(input, data) {
     const gases = airGasTable(data.gases);
+    const problems = distributionProblems(input.uncertainty?.distributions ?? {});
+    if (problems.length > 0) {
+      throw new InvalidInput(
+        'A distribution of the uncertainty stands the wrong way round.',
+        'Give low below high, and mode between them.',
+        problems,
+      );
+    }
     // The science declares its own plain types; the signature checks that both say the same.
     const mutable = (result: AirResult) => result as DeepMutable<AirResult>;
     try {
