@@ -45,18 +45,17 @@ function whyText(why: Reading['why']): string {
 }
 
 /** What the curve shows, as a table: every answer at the worst moments and where levels are passed. */
-function Readings({
-  entry,
-  title,
-}: {
+function Readings(props: {
   readonly entry: ZoneQuantity;
+  readonly zone: string;
   readonly title: string;
 }): VNode {
+  const { entry, zone, title } = props;
   const shown = answers.filter((answer) => entry.answers[answer] !== undefined);
   const unit = Object.values(entry.answers)[0]?.unit ?? 'gasFraction';
   return (
     <Table
-      caption={`${title}: ${words.readings}`}
+      caption={`${zone}: ${title}, ${words.readings}`}
       columns={[words.time, ...shown.map((answer) => words.answers[answer])]}
       rows={entry.readings.map(({ atS, why, values }) => [
         <>
@@ -134,7 +133,7 @@ export function ZoneCurves(props: {
               </div>
               {band && <figcaption>{sentence(curveWords.band)}</figcaption>}
             </figure>
-            <Readings entry={entry} title={title} />
+            <Readings entry={entry} zone={zone.title} title={title} />
           </details>
         );
       })}

@@ -115,7 +115,7 @@ describe.skipIf(browserPath === undefined)('planning in a real browser', () => {
   test('a refused entry without script comes back filled in, its row open, its message read out', async () => {
     const { context, page } = await signedIn(phone, false);
     await page.goto(`${server.url}${planPath}`);
-    await page.locator('summary', { hasText: 'Pipe in a bag' }).click();
+    await page.locator('summary', { hasText: 'Pipe in a bag' }).first().click();
     await page.locator('summary', { hasText: 'at the site' }).first().click();
     const amount = page.locator('input[name="acts.0.releases.planned.0.amount"]');
     await amount.fill('plenty');
@@ -144,7 +144,7 @@ describe.skipIf(browserPath === undefined)('planning in a real browser', () => {
   test('with script one step by keyboard moves the section and the line on the open curve', async () => {
     const { context, page } = await signedIn(desktop);
     await page.goto(`${server.url}${planPath}`);
-    const line = page.locator('details[open] svg.moment-mark.wide line').first();
+    const line = page.locator('details.more[open] svg.moment-mark.wide line').first();
     const slider = page.getByRole('slider', { name: 'Moment shown' });
     const place = async () => Number(await line.getAttribute('x1'));
     const [before, said] = [await place(), await slider.getAttribute('aria-valuetext')];
@@ -167,10 +167,12 @@ describe.skipIf(browserPath === undefined)('planning in a real browser', () => {
   test('the picture of a curve fits a phone and is drawn for its width', async () => {
     const { context, page } = await signedIn(phone);
     await page.goto(`${server.url}${planPath}`);
-    const picture = page.locator('details[open] .curve img').first();
+    const picture = page.locator('details.more[open] .curve img').first();
     await picture.scrollIntoViewIfNeeded();
     await expect
-      .poll(() => picture.evaluate((img: HTMLImageElement) => img.naturalWidth))
+      .poll(() => picture.evaluate((img: HTMLImageElement) => img.naturalWidth), {
+        timeout: 20_000,
+      })
       .toBe(340);
     expect(await picture.evaluate((img: HTMLImageElement) => img.currentSrc)).toContain('narrow');
     await context.close();

@@ -391,29 +391,29 @@ function keyLines(
   const short = key.filter((entry) => widthOf(entry) <= room / 2);
   const longWidth = Math.max(0, ...long.map(widthOf));
   const shortWidth = Math.max(1, ...short.map(widthOf));
-  const beside = Math.floor((room - longWidth) / shortWidth);
-  const columns: { x: number; entries: Key[number][] }[] = [];
-  if (long.length > 0) columns.push({ x: 12, entries: [...long] });
-  const count = Math.min(3, beside, Math.max(1, Math.ceil(short.length / 2)));
-  if (count < 1 && columns[0]) {
-    columns[0].entries.push(...short);
-  } else {
-    const each = Math.ceil(short.length / count);
-    for (let column = 0; column < count; column += 1) {
-      const entries = short.slice(column * each, (column + 1) * each);
-      columns.push({ x: 12 + longWidth + column * ((room - longWidth) / count), entries });
-    }
-  }
-  const lines = columns.flatMap(({ x, entries }) =>
-    entries.flatMap((entry, index) => {
-      const y = top + index * 14;
-      return [
-        label({ x, y, text: entry.sign, strong: true, fontSize: small }),
-        label({ x: x + 22, y, text: entry.text, fontSize: small }),
-      ];
+  const besideCount = Math.min(3, Math.floor((room - longWidth) / shortWidth));
+  // Short ones stand beside the long ones where there is room, else in columns below them.
+  const isBeside = besideCount > 0;
+  const left = isBeside ? longWidth : 0;
+  const down = isBeside ? 0 : long.length;
+  const count = isBeside ? besideCount : Math.max(1, Math.min(3, Math.floor(room / shortWidth)));
+  const each = Math.max(1, Math.ceil(short.length / count));
+  const entry = (one: Key[number], x: number, row: number): JSX.Element[] => {
+    const y = top + row * 14;
+    return [
+      label({ x, y, text: one.sign, strong: true, fontSize: small }),
+      label({ x: x + 22, y, text: one.text, fontSize: small }),
+    ];
+  };
+  const lines = [
+    ...long.flatMap((one, row) => entry(one, 12, row)),
+    ...short.flatMap((one, index) => {
+      const column = Math.floor(index / each);
+      return entry(one, 12 + left + (column * (room - left)) / count, down + (index % each));
     }),
-  );
-  return { lines, height: Math.max(0, ...columns.map(({ entries }) => entries.length)) * 14 };
+  ];
+  const rows = Math.max(long.length, down + Math.min(short.length, each));
+  return { lines, height: rows * 14 };
 }
 
 interface Setting {

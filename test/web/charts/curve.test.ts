@@ -89,11 +89,10 @@ describe('a curve with a band', () => {
     expect(found.series.map(({ answer }) => answer)).not.toContain('layered');
     const svg = chartSvg(curveOption(found, curveSizes.wide), 600, 290);
     expect(svg).toContain('layered, median');
-    expect(svg).toMatch(/<path[^>]*fill="#b9b5a8"[^>]*fill-opacity="0\.45"|fill-opacity="0\.45"/);
+    expect(svg).toMatch(/fill-opacity="0\.45"/);
   });
 
   it('draws the layered answer itself where nothing was sampled', () => {
-    if (players === undefined) throw new Error('the fixture has lost its zone');
     const series = players.series.filter(({ answer }) => !/P05|P95/.test(answer));
     const found = zoneCurve({ ...players, series }, 'oxygen', 'planned', events);
     expect(found?.series.map(({ answer }) => answer)).toContain('layered');
