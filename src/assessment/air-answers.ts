@@ -5,18 +5,19 @@ import type { AirResult } from '../science/room-air/air-result.js';
 import { airRun } from '../science/room-air/air-run.js';
 
 /**
- * Which answers are wanted: `full` has the exact mixed, layered and bound answers; `straight` the
- * mixed answer by straight displacement; `mixed` the exact mixed answer and the bound alone.
+ * Which answers are wanted: `full` has the exact mixed, layered and bound answers, the layered one
+ * with the band of its draws where the input asks for it and else with the runs without any mixing;
+ * `quick` leaves both out; `straight` is the mixed answer by straight displacement; `mixed` the exact
+ * mixed answer and the bound alone.
  */
-export type AirForm = 'full' | 'straight' | 'mixed';
+export type AirForm = 'full' | 'quick' | 'straight' | 'mixed';
 
 /** The air model as an assessment asks it: the same question is worked out once. */
 export type AirAnswers = (input: AirInput, form: AirForm) => AirResult;
 
 const optionsOf = {
-  // Mixed and bound judge for now: the layered answer joins when its solver gets through every
-  // venue quickly enough to stand beside a form.
-  full: { layered: false },
+  full: {},
+  quick: { adverse: false },
   straight: { displacement: 'straight' },
   mixed: { layered: false },
 } as const;

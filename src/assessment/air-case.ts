@@ -21,6 +21,10 @@ const afterDayS = 1800;
 /** A worst credible release is followed this long. */
 const afterWorstS = 3600;
 
+/** A free volume as drawn: what was measured is known closely, furniture taken off by rule less so. */
+const measuredVolume = { kind: 'normal', mean: 1, standardDeviation: 0.02 } as const;
+const reckonedVolume = { kind: 'normal', mean: 1, standardDeviation: 0.04 } as const;
+
 /** A free volume below this share of the shape narrows the plan area. */
 const fullEnough = 0.86;
 
@@ -227,6 +231,8 @@ function systemsOf(plan: ResolvedPlan, window: DayWindow, mode: AirMode): readon
           : { freshAirM3PerS: system.freshAirM3PerS }),
         recirculatedM3PerS: system.recirculatedM3PerS,
         effectiveness: system.effectiveness,
+        ...(system.isEffectivenessUsual ? { isEffectivenessUsual: true } : {}),
+        ...optional('flowFactor', system.flowFactor),
         ...optional('supplyLevel', system.supplyLevel),
         ...optional('extractLevel', system.extractLevel),
         ...optional('extractTopM', system.extractTopM),
@@ -295,6 +301,7 @@ export function airCase(
       heightM: space.heightM,
       floorLevelM: space.floorLevelM,
       volumeM3: space.volumeM3,
+      volumeFactor: space.isVolumeMeasured ? measuredVolume : reckonedVolume,
       ...(space.floorRiseM > 0 ? { floorRiseM: space.floorRiseM } : {}),
       ...(space.steps.length > 0
         ? {
@@ -323,7 +330,10 @@ export function airCase(
       ];
     }),
     airSystems: systemsOf(plan, window, mode),
-    infiltration: plan.infiltration,
+    infiltration: plan.infiltration.map(({ factor, ...one }) => ({
+      ...one,
+      ...optional('factor', factor),
+    })),
     // What moves air from room to room stands still with the fans.
     transfers: mode === 'fansOff' ? [] : plan.transfers,
     releases: within.map((one) => releaseOf(one, window)),

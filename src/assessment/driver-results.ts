@@ -16,6 +16,8 @@ const inputTitles: Readonly<Record<SampledInput, string>> = {
   turbulenceVelocityMPerS: 'turbulence of the room air',
   fallEntrainment: 'room air drawn in where gas falls over an edge',
   smearHeightM: 'height of the smear above a layer',
+  edgeEntrainment: 'mixing at the front of what spreads at once',
+  freeVolumeFactor: 'free volume of the spaces',
   breathFactor: 'how much people breathe',
 };
 

@@ -43,6 +43,12 @@ export interface WorstCase extends WorstRelease {
   readonly outcomes: readonly ZoneOutcome[];
 }
 
+/**
+ * Draws of the planned day: every run of the same plan takes the same. Enough for a 95 % quantile
+ * between ranks 117 and 126 of 128; more would keep a person waiting for digits that nobody has.
+ */
+const sampling = { samples: 128, seed: 20 } as const;
+
 /** A plan worked through once, at chosen ends of its open figures. */
 export interface Evaluation {
   readonly plan: PlanFile;
@@ -176,7 +182,8 @@ export function evaluation(
   const day = dayWindow(resolved);
   const idle = idleReleases(resolved, day);
   const dayReleases = [...idle, ...plannedReleases(resolved)];
-  const dayAir = airCase(resolved, dayReleases, day, 'planned');
+  const plannedAir = airCase(resolved, dayReleases, day, 'planned');
+  const dayAir = { ...plannedAir, input: { ...plannedAir.input, uncertainty: sampling } };
   const dayResult = answers(dayAir.input, 'full');
   const planned = outcomesOf(dayAir, answers, 'planned', resolved, levelsOf);
   const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air, isBrief) =>

@@ -69,3 +69,20 @@ export function freshAirDistribution(figure: PhysicalFigure, isOld = false): Fre
     source: hasInterval ? 'astm-e741' : 'engineering-judgement',
   };
 }
+
+/** The same distribution of a factor that counts from another value: all of it times a number. */
+export function scaledDistribution(one: Distribution, by: number): Distribution {
+  switch (one.kind) {
+    case 'fixed':
+      return { ...one, value: one.value * by };
+    case 'uniform':
+    case 'logUniform':
+      return { ...one, low: one.low * by, high: one.high * by };
+    case 'normal':
+      return { ...one, mean: one.mean * by, standardDeviation: one.standardDeviation * by };
+    case 'lognormal':
+      return { ...one, median: one.median * by };
+    case 'triangular':
+      return { ...one, low: one.low * by, mode: one.mode * by, high: one.high * by };
+  }
+}

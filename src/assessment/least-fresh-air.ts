@@ -28,6 +28,8 @@ const plainSupply = (space: string, freshAirM3PerS: number): ResolvedAirSystem =
   title: 'supply asked about',
   serves: [{ space, share: 1 }],
   freshAirM3PerS,
+  isEffectivenessUsual: false,
+  flowFactor: null,
   drive: 'supply',
   supplyM3PerS: null,
   extractM3PerS: null,

@@ -1,10 +1,12 @@
 import { InvalidInput } from '../errors.js';
+import type { Distribution } from '../science/room-air/air-input.js';
 import { standardAltitude, standardPressure } from '../science/atmosphere.js';
 import type { Composition, GasLibrary } from '../science/gases/gas-library.js';
 import { molarVolumeM3PerMol } from '../science/gases/molar-volume.js';
 import { planningContentMol } from '../science/gases/container-content.js';
 import { molarMassKgPerMol } from '../science/gases/molar-mass.js';
 import type { Control, Policy } from './catalogue-types.js';
+import { freshAirDistribution, scaledDistribution } from './fresh-air-distribution.js';
 import type {
   PhysicalFigure,
   PlanAct,
@@ -193,6 +195,7 @@ function resolvedSpace(space: PlanSpace, index: number, context: ResolveContext)
     steps: space.steps ?? [],
     pockets: space.pockets ?? [],
     volumeM3,
+    isVolumeMeasured: reader.origins.get(`${path}/volumeM3`) === 'measured',
     shapeVolumeM3: gross,
     temperatureK:
       space.temperatureK === undefined
@@ -312,6 +315,8 @@ function resolvedAirSystem(
     return stated * share.value;
   };
   const balanced = system.drive === 'balanced';
+  const deciding = balanced ? system.supplyM3PerS : system.freshAirM3PerS;
+  const decidingKey = balanced ? 'supplyM3PerS' : 'freshAirM3PerS';
   return {
     title: system.title ?? system.id ?? `air system ${String(index + 1)}`,
     serves:
@@ -338,9 +343,37 @@ function resolvedAirSystem(
       'effectiveness',
       spec(planRanges.effectiveness, 'low', policyDefault(policy, 'ventilationEffectiveness')),
     ),
+    isEffectivenessUsual: system.effectiveness === undefined,
+    flowFactor: drawnFlow(
+      deciding,
+      plan.event.date,
+      reader.assumed.get(`${path}/${decidingKey} delivered`)?.value ?? 1,
+    ),
     fromS: system.fromS ?? null,
     toS: system.toS ?? null,
   };
+}
+
+/**
+ * What may be delivered of a flow, over the share of it that is credited. Of what is not known the
+ * run is made at both ends, and there nothing is drawn.
+ */
+function drawnFlow(
+  figure: PhysicalFigure | undefined,
+  date: string | undefined,
+  credited: number,
+): Distribution | null {
+  if (figure === undefined) return null;
+  const on = typeof figure === 'object' ? figure.on : undefined;
+  const { factor } = freshAirDistribution(figure, isOld(on, date));
+  return scaledDistribution(factor, 1 / credited);
+}
+
+/** What may leak in over what is calculated with: only what was measured, or is not known, has its own. */
+function drawnLeakage(figure: PhysicalFigure | undefined): Distribution | null {
+  if (typeof figure !== 'object') return null;
+  if (figure.origin !== 'measured' && figure.origin !== 'unknown') return null;
+  return freshAirDistribution(figure).factor;
 }
 
 function resolvedGroup(
@@ -551,6 +584,7 @@ export function resolvedPlan(plan: PlanFile, context: ResolveContext): ResolvedP
           path,
           spec(planRanges.airChangesPerHour, 'low', infiltrationFallback(policy, space.kind)),
         ),
+        factor: drawnLeakage(row?.airChangesPerHour),
       };
     }),
     transfers: (plan.venue.transfers ?? []).map((row, index) => ({

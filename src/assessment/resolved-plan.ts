@@ -1,3 +1,4 @@
+import type { Distribution } from '../science/room-air/air-input.js';
 import type { Composition } from '../science/gases/gas-library.js';
 
 /**
@@ -30,6 +31,7 @@ export interface ResolvedSpace {
     readonly at: 'high' | 'low';
   }[];
   readonly volumeM3: number;
+  readonly isVolumeMeasured: boolean;
   /** Volume of the shape before furniture and seats are taken off. */
   readonly shapeVolumeM3: number;
   readonly temperatureK: number | null;
@@ -62,6 +64,10 @@ export interface ResolvedAirSystem {
   readonly extractLevel: 'high' | 'low' | 'mixed' | null;
   readonly extractTopM: number | null;
   readonly effectiveness: number;
+  /** True where the plan states none, so that the usual one stands. */
+  readonly isEffectivenessUsual: boolean;
+  /** What may be delivered, over the flow that is calculated with; null: nothing is drawn. */
+  readonly flowFactor: Distribution | null;
   readonly fromS: number | null;
   readonly toS: number | null;
 }
@@ -131,7 +137,12 @@ export interface ResolvedPlan {
   readonly spaces: readonly ResolvedSpace[];
   readonly openings: readonly ResolvedOpening[];
   readonly airSystems: readonly ResolvedAirSystem[];
-  readonly infiltration: readonly { readonly space: string; readonly airChangesPerHour: number }[];
+  readonly infiltration: readonly {
+    readonly space: string;
+    readonly airChangesPerHour: number;
+    /** What may leak in over what is calculated with, where it was measured. */
+    readonly factor: Distribution | null;
+  }[];
   readonly transfers: readonly {
     readonly from: string;
     readonly to: string;

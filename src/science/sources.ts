@@ -14,6 +14,16 @@ export const sources = {
       'Miller & Mazur 1984, oxygen-deficiency hazard method, as carried by FESHM 4240 and quoted by Jefferson Lab 6540 T4 and LBNL',
     seen: 'second-hand',
   },
+  'shrinivas-hunt-2014': {
+    title:
+      'Shrinivas and Hunt 2014, Journal of Fluid Mechanics: entrainment by a jet at an interface',
+    seen: 'second-hand',
+  },
+  'squire-eckert-1951': {
+    title:
+      'Squire and Eckert, laminar free convection on a vertical surface (integral solution; Eckert & Jackson, NACA TR 1015, 1951)',
+    seen: 'from memory',
+  },
   'si-2019': { title: 'SI Brochure, 9th edition (2019): exact constants', seen: 'second-hand' },
   'cipm-2007': {
     title: 'Picard, Davis, Glaeser & Fujii (CIPM-2007), Metrologia 45 (2008) 149-155',

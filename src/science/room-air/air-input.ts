@@ -46,6 +46,8 @@ export interface AirSpace {
   readonly steps?: readonly FloorStep[];
   /** Measured free volume; default the volume of the shape. */
   readonly volumeM3?: number;
+  /** What a band draws of the free volume over what is stated; default: that of the run. */
+  readonly volumeFactor?: Distribution;
   readonly pockets?: readonly AirPocket[];
   /** Default: ambient. */
   readonly temperatureK?: number;
@@ -87,11 +89,17 @@ export interface AirSystem extends Timed {
   readonly supplyJet?: { readonly radiusM: number; readonly speedMPerS: number };
   /** Mixing factor, at most 1 is used. */
   readonly effectiveness?: number;
+  /** True where that factor is only what is usual: a band then draws it. */
+  readonly isEffectivenessUsual?: boolean;
+  /** What a band draws of this system's flows over what is stated; default: that of the run. */
+  readonly flowFactor?: Distribution;
 }
 
 export interface AirInfiltration extends Timed {
   readonly space: string;
   readonly airChangesPerHour: number;
+  /** What a band draws of it over what is stated; default: that of the run. */
+  readonly factor?: Distribution;
 }
 
 export interface AirTransfer extends Timed {
@@ -151,6 +159,7 @@ export interface AirLayerOverrides {
   readonly walkingExchangeMPerS?: number;
   readonly smearHeightM?: number;
   readonly fallEntrainment?: number;
+  readonly edgeEntrainment?: number;
 }
 
 export interface AirUncertainty {

@@ -15,7 +15,7 @@ const HEAT_OF_GAS: Readonly<Record<string, number>> = { CO2: 35 };
  * Source: own-room-air (cold gas: density from the molar heat balance). Assumes: adiabatic mixing,
  * small fraction. Accuracy: 5 % of the excess up to a fraction of 0.2; floor and walls warm the layer
  * within minutes.
- * @example coldExcess('N2', 215.65, 293.15, 0.02896) // 0.0213035647
+ * @example coldExcess('N2', 215.65, 293.15, 0.02896) // 0.0213038513
  */
 export function coldExcess(
   gas: string,

@@ -103,7 +103,16 @@ export function addVariable(
   table.most[v] = most;
 }
 
-/** Size of a flow at the present values of the variables [m3/s]. */
+/**
+ * Size of a flow at the present values of the variables [m3/s].
+ *
+ *   base_i + factor_i F_v
+ *
+ * @param table flows
+ * @param i     index of the flow [-]
+ * @returns size [m3/s]; below 0 for a weir that has turned round
+ * Source: own-derivation. Assumes: an index within the table. Accuracy: exact.
+ */
 export function flowSize(table: FlowTable, i: number): number {
   const base = table.base[i] ?? 0;
   const v = table.variable[i] ?? -1;

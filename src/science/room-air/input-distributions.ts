@@ -48,8 +48,10 @@ export const SAMPLED_INPUTS = [
   'sourceDilution',
   'turbulenceVelocityMPerS',
   'fallEntrainment',
+  'edgeEntrainment',
   'smearHeightM',
   'breathFactor',
+  'freeVolumeFactor',
 ] as const;
 
 export type SampledInput = (typeof SAMPLED_INPUTS)[number];
@@ -68,6 +70,9 @@ export const DEFAULT_DISTRIBUTIONS: Readonly<Record<SampledInput, Distribution>>
   sourceDilution: { kind: 'logUniform', low: 1, high: 10 },
   turbulenceVelocityMPerS: { kind: 'lognormal', median: 0.01, geometricDeviation: 1.8 },
   fallEntrainment: { kind: 'logUniform', low: 0.03, high: 1 },
+  edgeEntrainment: { kind: 'uniform', low: 0, high: 0.8 },
   smearHeightM: { kind: 'uniform', low: 0.1, high: 0.5 },
   breathFactor: { kind: 'lognormal', median: 1, geometricDeviation: 1.25 },
+  // People, seats and scenery are seldom taken off in full.
+  freeVolumeFactor: { kind: 'uniform', low: 0.92, high: 1 },
 };

@@ -1,5 +1,6 @@
 import { GRAVITY_M_PER_S2, MOLAR_GAS_CONSTANT } from './air-constants.js';
 import { flowsWithNet } from './doorway.js';
+import { edgeDilution } from './gravity-current.js';
 import { rectangularFloorExchange } from './floor-opening.js';
 import { addFlow, addSharedFlow, addVariable, flowTable, type FlowTable } from './flow-table.js';
 import { basinArea } from './layer-geometry.js';
@@ -152,7 +153,7 @@ export function layerFlows(
     addFlow(table, outdoors, to, q * source.airShare);
     if (layer < 0 || q <= 0) return;
     fed[layer] = 1;
-    const dilution = dilutionOf(source, parameters.sourceDilution);
+    const dilution = dilutionOf(source, parameters);
     const entrained =
       source.plumeRiseM === undefined
         ? (dilution - 1) * q
@@ -418,14 +419,22 @@ export function layerFlows(
 }
 
 /**
- * First dilution of a release in one run [-].
+ * First dilution of a release in one run [-]: at its source, and at the edge of what spreads at once.
  *
  * A sampled value spans 1 to 10 for what is let out gently; what bursts or blows is diluted tenfold
  * at least, so for it the same draw spans its own range.
  */
-function dilutionOf(source: LayerSource, sampled: number | undefined): number {
-  if (sampled === undefined) return source.manner.dilution;
-  const { dilutionLow, dilutionHigh } = source.manner;
+function dilutionOf(
+  source: LayerSource,
+  { sourceDilution, edgeEntrainment }: LayerParameters,
+): number {
+  const edge = edgeDilution(source.radiusRatio, 1, edgeEntrainment);
+  return Math.min(source.mostDilution, edge * firstDilution(source, sourceDilution));
+}
+
+function firstDilution({ manner }: LayerSource, sampled: number | undefined): number {
+  if (sampled === undefined) return manner.dilution;
+  const { dilutionLow, dilutionHigh } = manner;
   if (dilutionLow < 10) return sampled;
   return dilutionLow * (dilutionHigh / dilutionLow) ** Math.min(1, Math.log10(sampled));
 }

@@ -45,6 +45,10 @@ export interface LayerSource {
   /** A light gas that flows rises as a plume; the distance from its source to the base [m]. */
   readonly plumeRiseM: number | undefined;
   readonly gZero: number;
+  /** Radius of the floor over that of the gas where it is let go at once; 1 where it flows [-]. */
+  readonly radiusRatio: number;
+  /** Most that first mixing may make of it: half of its space [-]. */
+  readonly mostDilution: number;
   readonly airShare: number;
   readonly columns: readonly { readonly column: number; readonly share: number }[];
 }
@@ -107,6 +111,8 @@ export interface LayerNetwork {
 const SHARED_AIR_M2 = 15;
 /** A hole over at least this share of the lower floor makes it an open pit [-]. */
 const OPEN_PIT_SHARE = 0.25;
+/** Share of its space that first mixing may fill [-]. */
+const MOST_FIRST_MIXING = 0.5;
 /** A release at once is taken as lasting this long [s]: a current needs as long to form. */
 const AT_ONCE_S = 5;
 
@@ -180,12 +186,19 @@ export function layerNetwork(
     const layer = side === undefined ? -1 : layerAt(plan.space, side);
     const manner = RELEASE_MANNERS[plan.source.manner ?? DEFAULT_MANNER];
     const atOnce = (plan.source.durationS ?? 0) === 0 && plan.decayS === undefined;
-    const rise = spaceAt(model, plan.space).curve.heightM - (plan.source.heightM ?? 0);
+    const { capacityM3, curve } = spaceAt(model, plan.space);
+    const { floorAreaM2 } = curve;
+    const rise = curve.heightM - (plan.source.heightM ?? 0);
     return {
       plan,
       layer,
       manner,
       plumeRiseM: layer >= 0 && side === 'ceiling' && !atOnce ? rise : undefined,
+      radiusRatio:
+        atOnce && side === 'floor'
+          ? Math.max(1, Math.sqrt(floorAreaM2 / Math.PI) / Math.cbrt(plan.totalM3 / Math.PI))
+          : 1,
+      mostDilution: Math.max(1, (MOST_FIRST_MIXING * capacityM3) / plan.totalM3),
       gZero: (9.81 * Math.abs(plan.molarMassKgPerMol - air)) / air,
       airShare: (plan.shares as { readonly air?: number }).air ?? 0,
       columns: Object.entries(plan.shares)

@@ -13,6 +13,8 @@ export interface LayerParameters {
   readonly smearM: number;
   /** Share of the free-fall entrainment eps [-]. */
   readonly fallEntrainment: number;
+  /** Entrainment at the edge of what is let go at once, alpha [-]. */
+  readonly edgeEntrainment: number;
   /** Where surplus leaves: 0 from above, 1 from the layer. */
   readonly surplusFromLayer: number;
   /** 1: diffusion smears the layer; 0: it does not. */
@@ -27,6 +29,7 @@ export interface LayerParameters {
 /** Velocity scale of the turbulence, about a tenth of the air speed of a room [m/s]. */
 export const USUAL_TURBULENCE_M_PER_S = 0.01;
 const USUAL_FALL_ENTRAINMENT = 0.17;
+const USUAL_EDGE_ENTRAINMENT = 0.4;
 
 /** Contrast below which an old layer is no longer told from the air above it [-]. */
 const SAME_AIR = 1e-4;
@@ -39,6 +42,10 @@ export function usualLayers(overrides: AirLayerOverrides = {}): LayerParameters 
     walkingMPerS: overrides.walkingExchangeMPerS ?? 0,
     smearM: overrides.smearHeightM ?? LEAST_SMEAR_M,
     fallEntrainment: overrides.fallEntrainment ?? USUAL_FALL_ENTRAINMENT,
+    // A stated first dilution is taken to hold what the edge entrains.
+    edgeEntrainment:
+      overrides.edgeEntrainment ??
+      (overrides.sourceDilution === undefined ? USUAL_EDGE_ENTRAINMENT : 0),
     surplusFromLayer: 0,
     diffusion: 1,
     plumeConstant: plumeConstant(PLUME_ENTRAINMENT),
@@ -67,6 +74,7 @@ export function adverseLayers(
         ...usual,
         sourceDilution,
         fallEntrainment,
+        edgeEntrainment: 0,
         surplusFromLayer,
         turbulenceMPerS: 0,
         walkingMPerS: 0,

@@ -32,7 +32,17 @@ export interface DrawnValues {
   readonly firstS: readonly Float64Array[];
 }
 
-/** Column of a quantity in an answer: oxygen, then gases; -1 where the answer lacks it. */
+/**
+ * Column of a quantity in an answer [-].
+ *
+ *   oxygen, then gases
+ *
+ * @param quantity `oxygenFraction` or a gas id
+ * @param gases    gases of the answer in order
+ * @returns column [-]; -1 where the answer lacks it
+ * Source: own-derivation. Assumes: nothing. Accuracy: exact.
+ * @example quantityColumn('CO2', ['CO2', 'He']) // 1
+ */
 export function quantityColumn(quantity: string, gases: readonly string[]): number {
   if (quantity === 'oxygenFraction') return 0;
   const at = gases.indexOf(quantity);

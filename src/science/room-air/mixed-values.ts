@@ -3,7 +3,6 @@ import type { FlatTrack } from './answer-track.js';
 import { OXYGEN, type AirModel } from './air-model.js';
 import type { MixedTrack } from './mixed-track.js';
 
-
 /**
  * Fractions of one space, one per component [-].
  *

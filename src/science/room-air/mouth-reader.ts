@@ -1,11 +1,10 @@
 import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { spaceAt } from './air-model.js';
-import { liftsToMouth } from './body-heat.js';
+import { bodyHeatShare } from './body-heat.js';
 import type { LayerCase, LayerMouth } from './layer-case.js';
 import type { LayerParameters } from './layer-parameters.js';
 import type { ZoneState } from './layer-zones.js';
 import { reportedFraction, smearHeight } from './smear.js';
-import { firstPassEnd } from './zone-bound.js';
 
 /** Depth below which a layer is not reported [m]. */
 const LEAST_REPORTED_M = 0.002;
@@ -39,8 +38,9 @@ interface LayerHere {
 /**
  * What a mouth breathes of the two-layer answer, moment by moment.
  *
- *   max(xu, min(xl, bound)) where a layer with its smear reaches the mouth, else xu; a weak layer
- *   is breathed at any height (liftsToMouth); while the first pass lasts the bound does not cut
+ *   max(xu, min(xl, bound)) where a layer with its smear reaches the mouth, else xu; of a weak layer
+ *   body heat lifts a share to any mouth, xu + (xl - xu) (h/z)^(3/4), which the bound does not cut
+ *   (bodyHeatShare), no more than the bound cuts while the first pass lasts
  *
  * @param one        layers of a model
  * @param at         mouth
@@ -63,7 +63,7 @@ export function mouthReader(
   const columns = columnsOf.flatMap((list, q) => list.map((column) => [q + 1, column] as const));
   const started = releases.map((release) => ({
     from: Math.max(release.plan.startS, release.reachS[space] ?? Infinity),
-    until: firstPassEnd(release, curve.floorAreaM2),
+    until: release.plan.space === space ? release.passEndS : release.plan.startS,
     side: release.gathering === 'above' ? 'ceiling' : 'floor',
   }));
   const here = network.layers.flatMap((layer, zone): LayerHere[] =>
@@ -117,25 +117,28 @@ export function mouthReader(
       const heavier =
         sign * ((zones.molarMasses[layer.zone] ?? 0) - (zones.molarMasses[upper] ?? 0));
       const gPrime = (GRAVITY_M_PER_S2 * heavier) / network.airMolarMassKgPerMol;
-      const lifted = layer.side === 'floor' && liftsToMouth(gPrime, depth - at.floorM);
-      const reach = lifted ? Infinity : depth;
-      if (reach + smear < layer.distanceM) continue;
-      const isCut = !isFirstPass && !lifted;
+      const lifted =
+        layer.side === 'floor' ? bodyHeatShare(gPrime, depth - at.floorM, at.mouth.heightM) : 0;
+      const isReached = depth + smear >= layer.distanceM;
+      if (!isReached && lifted <= 0) continue;
       read(zones, layer.zone, inside);
+      const airAbove = above[0] ?? 0;
       const oxygen = inside[0] ?? 0;
-      const least = isCut ? Math.max(oxygen, bound[boundAt] ?? 0) : oxygen;
-      out[outAt] = Math.min(out[outAt] ?? 1, least);
+      const least = isFirstPass ? oxygen : Math.max(oxygen, bound[boundAt] ?? 0);
+      out[outAt] = Math.min(
+        out[outAt] ?? 1,
+        isReached ? least : airAbove,
+        airAbove + lifted * (oxygen - airAbove),
+      );
       for (let q = 1; q < width; q++) {
-        const limit = isCut ? (bound[boundAt + q] ?? 1) : 1;
-        const seen = reportedFraction(
-          inside[q] ?? 0,
-          above[q] ?? 0,
-          limit,
-          reach,
-          smear,
-          layer.distanceM,
+        const xl = inside[q] ?? 0;
+        const xu = above[q] ?? 0;
+        const limit = isFirstPass ? 1 : (bound[boundAt + q] ?? 1);
+        out[outAt + q] = Math.max(
+          out[outAt + q] ?? 0,
+          reportedFraction(xl, xu, limit, depth, smear, layer.distanceM),
+          xu + lifted * (xl - xu),
         );
-        out[outAt + q] = Math.max(out[outAt + q] ?? 0, seen);
       }
     }
   };
