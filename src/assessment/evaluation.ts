@@ -75,9 +75,9 @@ function outcomesOf(
   caseName: 'planned' | 'fansOff' | 'worstCredible',
   resolved: ResolvedPlan,
   levelsOf: Evaluation['levelsOf'],
-  isBrief = false,
 ): readonly ZoneOutcome[] {
-  const full = answers(air.input, isBrief ? 'mixed' : 'full');
+  // With fans off the table looks at mixed air alone.
+  const full = answers(air.input, caseName === 'fansOff' ? 'mixed' : 'full');
   const straight = answers(air.input, 'straight');
   return zoneOutcomes(air, full, straight, caseName, resolved.groups, levelsOf);
 }
@@ -106,13 +106,13 @@ function fansOffOutcomes(
   releases: readonly PlacedRelease[],
   day: DayWindow,
   planned: readonly ZoneOutcome[],
-  outcomes: (air: AirCase, isBrief: boolean) => readonly ZoneOutcome[],
+  outcomes: (air: AirCase) => readonly ZoneOutcome[],
 ): readonly ZoneOutcome[] {
-  const ofDay = fansOffDay(resolved, releases, day, planned, (air) => outcomes(air, false));
+  const ofDay = fansOffDay(resolved, releases, day, planned, outcomes);
   const window = coldWindow(resolved, day);
   if (window.endS <= day.endS) return ofDay;
   const untilGone = [...idleReleases(resolved, window), ...plannedReleases(resolved)];
-  return worseOutcomes(ofDay, outcomes(airCase(resolved, untilGone, window, 'fansOff'), true)).map(
+  return worseOutcomes(ofDay, outcomes(airCase(resolved, untilGone, window, 'fansOff'))).map(
     (outcome) => ({ ...outcome, caseName: 'fansOff' as const }),
   );
 }
@@ -186,8 +186,8 @@ export function evaluation(
   const dayAir = { ...plannedAir, input: { ...plannedAir.input, uncertainty: sampling } };
   const dayResult = answers(dayAir.input, 'full');
   const planned = outcomesOf(dayAir, answers, 'planned', resolved, levelsOf);
-  const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air, isBrief) =>
-    outcomesOf(air, answers, 'fansOff', resolved, levelsOf, isBrief),
+  const fansOff = fansOffOutcomes(resolved, dayReleases, day, planned, (air) =>
+    outcomesOf(air, answers, 'fansOff', resolved, levelsOf),
   );
 
   const worst = worstReleases(resolved, policy).map((one) => {

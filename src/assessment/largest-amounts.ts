@@ -11,6 +11,8 @@ import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 const largestFactor = 100;
 /** Halvings of the whole answer, once the mixed one has given a first guess. */
 const halvings = 4;
+/** Whole answers asked to confirm what the search found, each time for half as much. */
+const confirmations = 4;
 /** Corrections of the guess by the mixed answer alone. */
 const corrections = 2;
 
@@ -83,10 +85,10 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
     const some = releases.filter((placed) => placed.release.amountMol > 0);
     return airCase(resolved, some, dayAir.window, 'planned');
   };
-  const outcomesAt = (factor: number, form: 'full' | 'straight') => {
+  const outcomesAt = (factor: number, form: 'full' | 'quick' | 'straight') => {
     const air = caseAt(factor);
     const straight = answers(air.input, 'straight');
-    const full = form === 'full' ? answers(air.input, 'full') : straight;
+    const full = form === 'straight' ? straight : answers(air.input, form);
     return zoneOutcomes(air, full, straight, 'planned', resolved.groups, levelsOf);
   };
 
@@ -95,7 +97,7 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
     sources.flatMap(({ release }) => [...connectedSpaces(resolved, release.space)]),
   );
   const failing = failingIn(reached);
-  const withoutAct = failing(outcomesAt(0, 'full'));
+  const withoutAct = failing(outcomesAt(0, 'quick'));
   if (withoutAct)
     return { factor: 0, blocker: withoutAct, failsWithoutAct: true, restsOnMixedAir: false };
 
@@ -125,7 +127,7 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
   const plannedBlocker = failing(planned);
   let low = plannedBlocker ? 0 : 1;
   let high = Math.max(low, guess);
-  let blocker = failing(outcomesAt(high, 'full'));
+  let blocker = failing(outcomesAt(high, 'quick')) ?? failing(outcomesAt(high, 'full'));
   if (!blocker) {
     const isWhole = high >= most;
     return {
@@ -139,11 +141,18 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
   }
   for (let i = 0; i < halvings; i += 1) {
     const middle = (low + high) / 2;
-    const failed = failing(outcomesAt(middle, 'full'));
+    const failed = failing(outcomesAt(middle, 'quick'));
     if (failed) {
       high = middle;
       blocker = failed;
     } else low = middle;
+  }
+  // What the usual layered run passes must pass those without any mixing too.
+  for (let i = 0; i < confirmations && low > 0; i += 1) {
+    const failed = failing(outcomesAt(low, 'full'));
+    if (!failed) return { factor: low, blocker, failsWithoutAct: false, restsOnMixedAir };
+    blocker = failed;
+    low = i + 1 < confirmations ? low / 2 : 0;
   }
   return { factor: low, blocker, failsWithoutAct: false, restsOnMixedAir };
 }
@@ -151,8 +160,8 @@ function search(evaluation: Evaluation, act: string, answers: AirAnswers): Searc
 /**
  * The largest amount of each act that still passes row 2 of the table, the other acts as planned.
  *
- * A first guess comes from the mixed answer, which is a straight line in the amount; the whole answer
- * then confirms it or halves the way to what passes. Gas added never helps, so what passes at an
+ * A first guess comes from the mixed answer, which is a straight line in the amount; the usual layered
+ * run then halves the way to what passes, and the runs without any mixing confirm it. Gas added never helps, so what passes at an
  * amount passes below it.
  */
 export function largestAmounts(

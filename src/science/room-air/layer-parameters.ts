@@ -67,10 +67,11 @@ export function adverseLayers(
   const dilutions = overrides.sourceDilution === undefined ? [1, 10] : [overrides.sourceDilution];
   const falls =
     overrides.fallEntrainment !== undefined || !hasFalls ? [usual.fallEntrainment] : [0.03, 0.1, 1];
-  const surplus = hasNeighbours ? [0, 1] : [0];
+  // Where surplus leaves matters to the neighbours, whatever the fall: once is enough for each.
+  const middleFall = falls[Math.floor(falls.length / 2)] ?? usual.fallEntrainment;
   return dilutions.flatMap((sourceDilution) =>
     falls.flatMap((fallEntrainment) =>
-      surplus.map((surplusFromLayer) => ({
+      (hasNeighbours && fallEntrainment === middleFall ? [0, 1] : [0]).map((surplusFromLayer) => ({
         ...usual,
         sourceDilution,
         fallEntrainment,
