@@ -1,5 +1,10 @@
 import { highestRollingMean } from '../science/exposure/rolling-mean.js';
-import type { AirResult, AirSeries, HeightAir } from '../science/room-air/air-result.js';
+import type {
+  AirResult,
+  AirSeries,
+  HeightAir,
+  LayeredSeries,
+} from '../science/room-air/air-result.js';
 import type { AirCase } from './air-case.js';
 import type { Answer, CaseName } from './assessment.js';
 import { fails, type JudgedLevel, type LevelName, type Statistic } from './levels.js';
@@ -161,12 +166,35 @@ function bandOf(height: HeightAir, level: JudgedLevel): Pick<ZoneOutcome, 'band'
   return low && high ? { band: { p05: low, p95: high } } : {};
 }
 
+/** The worst that draws reach at an end of their band, at the time at which that end is worst. */
+function peakOf(
+  { peak }: LayeredSeries,
+  end: 'p05' | 'p95',
+  level: JudgedLevel,
+  series: readonly number[],
+  timesS: readonly number[],
+): Track['extreme'] {
+  const values = peak?.[end];
+  if (!values) return null;
+  const isOxygen = level.gas === null && level.failsWhen === 'below';
+  const value = isOxygen ? values.oxygenFraction : values.gasFraction[level.gas ?? 'O2'];
+  if (value === undefined) return null;
+  const { atS } = statisticOf(
+    level.failsWhen === 'below' ? 'minimum' : 'peak',
+    timesS,
+    series,
+    windowsOf(0),
+  );
+  return { value: isOxygen ? value : value / level.scale, atS };
+}
+
 /** The answers at one height, by name; the layered answer L is the worse of M and the layered P95. */
 function answersAt(
   height: HeightAir,
   straight: HeightAir,
   level: JudgedLevel,
   floorCheck: boolean,
+  timesS: readonly number[],
 ): Partial<Record<Answer, Track>> {
   const found: Partial<Record<Answer, Track>> = {};
   const track = (series: readonly number[] | null, extreme: Track['extreme']): Track | null =>
@@ -182,15 +210,20 @@ function answersAt(
     // Either end of the band may be the bad one, by quantity; both are looked at. Where nothing was
     // sampled the run without any mixing stands beside the usual one at the heights people have; at
     // 0.2 m that run is the passing front, and the bound with its first pass judges it.
-    const ends = [layered.p05, layered.p95].filter((end) => end !== undefined);
-    const others = ends.length > 0 ? ends : layered.adverse && !floorCheck ? [layered.adverse] : [];
-    const tracks = [
-      ...(ends.length > 0 ? [] : [one]),
-      ...others.map((end) => track(seriesOf(end, level), null)),
-    ].filter((candidate) => candidate !== null);
+    const ends = (['p05', 'p95'] as const).flatMap((end) => {
+      const series = layered[end] && seriesOf(layered[end], level);
+      return series ? [{ series, extreme: peakOf(layered, end, level, series, timesS) }] : [];
+    });
+    const others =
+      ends.length > 0 || !layered.adverse || floorCheck
+        ? []
+        : [track(seriesOf(layered.adverse, level), null)];
+    const tracks = (ends.length > 0 ? ends : [one, ...others]).filter((found) => found !== null);
     found.layered = tracks.reduce((worst, end) => worseTrack(worst, end, level), mixed);
     const median = layered.p50 ? track(seriesOf(layered.p50, level), null) : one;
     if (median) found.layeredP50 = median;
+    // The bound is worked out with the air as stated; a draw with less of it may lie beyond.
+    if (found.bound) found.bound = worseTrack(found.bound, found.layered, level);
   }
   return found;
 }
@@ -221,7 +254,7 @@ export function zoneOutcomes(
     ];
     return heights.flatMap(({ height, straightHeight, floorCheck }) =>
       levelsOf(group).flatMap((level): ZoneOutcome[] => {
-        const series = answersAt(height, straightHeight, level, floorCheck);
+        const series = answersAt(height, straightHeight, level, floorCheck, result.timesS);
         if (!series.mixed) return [];
         const answers: Partial<Record<Answer, AnswerOutcome>> = {};
         for (const [answer, one] of Object.entries(series) as [Answer, Track][]) {

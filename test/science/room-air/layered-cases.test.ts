@@ -31,6 +31,41 @@ describe('demonstration cases of the two-layer model (own derivation, second pro
     near(result.spaces.hall?.mixed.gasFraction.He?.[1], 0.0234);
   });
 
+  it('the same hall with a high vent: 1.05 m at 7.5 %, 0.82 m at 10 min, 0.34 m at 3.6 % at 30 min', () => {
+    const result = airRun(
+      checkInput({
+        durationS: 1800,
+        outputIntervalS: 300,
+        spaces: [{ id: 'hall', floorAreaM2: 96, heightM: 4 }],
+        openings: [
+          {
+            from: 'hall',
+            to: 'outside',
+            kind: 'vent',
+            widthM: 2,
+            heightM: 0.5,
+            sillLevelM: 3.5,
+            dischargeCoefficient: 0.45,
+          },
+        ],
+        releases: [{ space: 'hall', gas: 'He', volumeM3: 9.1, durationS: 300, heightM: 1 }],
+        zones: [{ id: 'catwalk', space: 'hall', heightM: 3.6 }],
+      }),
+      checkGases,
+    );
+    const layers = result.spaces.hall?.layered;
+    const fraction = layers?.ceilingLayer.gasFraction.He;
+    // The vent takes the layer's own density here, the source air as reference: 4 % apart.
+    near(layers?.ceilingLayerDepthM[1], 1.05, 0.04);
+    near(fraction?.[1], 0.075);
+    near(layers?.ceilingLayerDepthM[2], 0.82, 0.05);
+    near(fraction?.[2], 0.072);
+    near(layers?.ceilingLayerDepthM[6], 0.34, 0.03);
+    near(fraction?.[6], 0.036, 0.04);
+    // Bound 0.5 m below the ceiling 19 %; without mixing always 7.8 % while it lasts.
+    near(result.zones.catwalk?.layered?.adverse?.gasFraction.He?.[1], 0.078);
+  });
+
   it('a tipped tank of 100 L: 10 cm at 1.2 % after 5 min, 24 cm at 0.24 % after 30 min', () => {
     const result = airRun(
       checkInput({
@@ -55,6 +90,100 @@ describe('demonstration cases of the two-layer model (own derivation, second pro
     expect(fraction?.[40]).toBeGreaterThan(0.001);
     near(result.zones.mats?.bound.gasFraction.SF6?.at(-1), 0.0029, 0.01);
     near(result.spaces.room?.purePoolDepthM, 0.0016, 0.01);
+  });
+});
+
+describe('a pit beside a stage: 6 kg of dry ice in ten minutes (own derivation, second program)', () => {
+  /** What the source varies: turbulence, source dilution and fall mixing; all else at its median. */
+  const others = {
+    freshAirFactor: 1,
+    infiltrationFactor: 1,
+    mixingFactor: 1,
+    removalCoefficient: 0.45,
+    spreadCoefficient: 0.75,
+    plumeConstant: 0.131,
+    releaseFactor: 1,
+    durationFactor: 1,
+    edgeEntrainment: 0,
+    smearHeightM: 0.3,
+    breathFactor: 1,
+    freeVolumeFactor: 1,
+  };
+  const stageAndPit = (lowExtractM3PerS: number) =>
+    airRun(
+      checkInput({
+        durationS: 7200,
+        outputIntervalS: 60,
+        spaces: [
+          { id: 'stage', floorAreaM2: 60, heightM: 5 },
+          { id: 'pit', floorAreaM2: 40, heightM: 7.5, floorLevelM: -1.5 },
+        ],
+        openings: [
+          { from: 'stage', to: 'pit', kind: 'doorway', widthM: 8, heightM: 5, sillLevelM: 0 },
+        ],
+        // Four air changes an hour of 600 m3, at high level.
+        airSystems: [
+          { space: 'stage', drive: 'extract', freshAirM3PerS: 2 / 3, extractLevel: 'high' },
+          ...(lowExtractM3PerS > 0
+            ? [
+                {
+                  space: 'pit',
+                  drive: 'extract' as const,
+                  freshAirM3PerS: lowExtractM3PerS,
+                  extractLevel: 'low' as const,
+                  extractTopM: 0.2,
+                  extractWidthM: 1,
+                },
+              ]
+            : []),
+        ],
+        releases: [{ space: 'stage', gas: 'CO2', massKg: 6, durationS: 600, manner: 'fog' }],
+        zones: [{ id: 'players', space: 'pit', heightM: 1.15 }],
+        uncertainty: {
+          samples: 512,
+          seed: 1,
+          distributions: Object.fromEntries(
+            Object.entries(others).map(([name, value]) => [name, { kind: 'fixed', value }]),
+          ),
+        },
+      }),
+      checkGases,
+    );
+  const percent = (fraction: number | undefined): number => 100 * (fraction ?? Number.NaN);
+
+  it('peaks at a mouth of 1.15 m at 0.4 to 7.0 %, median 4.0 %, bound 7.1 %, mixed 0.55 % at most', () => {
+    const result = stageAndPit(0);
+    const players = result.zones.players;
+    const peak = players?.layered?.peak;
+    // Printed to one digit; two sets of 512 draws differ by some per cent at the ends.
+    expect(Math.abs(percent(peak?.p05.gasFraction.CO2) - 0.4)).toBeLessThan(0.15);
+    near(peak?.p50.gasFraction.CO2, 0.04, 0.05);
+    near(peak?.p95.gasFraction.CO2, 0.07, 0.05);
+    near(players?.maximum.bound.CO2?.value, 0.071 + 0.00042, 0.01);
+    // All of it in 600 m3 would be 0.55 %; the extract takes some of it away meanwhile.
+    expect(players?.maximum.mixed.CO2?.value).toBeLessThan(0.0055 + 0.00042);
+    near(players?.at02M.maximum.bound.CO2?.value, 0.41, 0.01);
+    // Without any mixing at least the bound is reached: 7.1 % for little fall mixing.
+    const adverse = Math.max(...(players?.layered?.adverse?.gasFraction.CO2 ?? []));
+    near(adverse, 0.071 + 0.00042, 0.02);
+  });
+
+  it('with a low extract of 0.05 m3/s peaks at 4.7 % (P95), median 2.6 %', () => {
+    const peak = stageAndPit(0.05).zones.players?.layered?.peak;
+    near(peak?.p50.gasFraction.CO2, 0.026, 0.06);
+    near(peak?.p95.gasFraction.CO2, 0.047, 0.05);
+  });
+
+  it('with a low extract of 0.2 m3/s still peaks at 2.7 and 6.7 % at 0.2 m', () => {
+    const players = stageAndPit(0.2).zones.players;
+    const fallen = players?.at02M.layered?.peak;
+    near(fallen?.p50.gasFraction.CO2, 0.027, 0.05);
+    near(fallen?.p95.gasFraction.CO2, 0.067, 0.05);
+    // At the mouth the source has 2.4 % (P95) and 0.1 % (median) of the layer alone; what body heat
+    // lifts out of a weak layer comes on top and may pass the median.
+    near(players?.layered?.peak?.p95.gasFraction.CO2, 0.024, 0.06);
+    expect(players?.layered?.peak?.p50.gasFraction.CO2).toBeGreaterThan(0.001);
+    expect(players?.layered?.peak?.p50.gasFraction.CO2).toBeLessThan(0.013);
   });
 });
 
