@@ -90,6 +90,15 @@ const airSystem = Type.Object(
     extractLevel: Type.Optional(level),
     extractTopM: Type.Optional(positive),
     extractWidthM: Type.Optional(positive),
+    supplyJet: Type.Optional(
+      Type.Object(
+        { radiusM: positive, speedMPerS: notNegative },
+        {
+          ...closed,
+          description: 'jet of the supply where it meets the floor layer, as measured there',
+        },
+      ),
+    ),
     effectiveness: Type.Optional(Type.Number({ exclusiveMinimum: 0, maximum: 2 })),
     ...timed,
   },
@@ -236,6 +245,8 @@ export const airInputSchema = Type.Object(
           turbulenceVelocityMPerS: Type.Optional(notNegative),
           walkingExchangeMPerS: Type.Optional(notNegative),
           smearHeightM: Type.Optional(notNegative),
+          fallEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 1 })),
+          edgeEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 0.8 })),
           fallEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 1 })),
         },
         closed,

@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { AirGasTable } from '../../../src/science/room-air/air-gases.js';
 import type { AirInput } from '../../../src/science/room-air/air-input.js';
+import { airRun } from '../../../src/science/room-air/air-run.js';
 import { airModel } from '../../../src/science/room-air/air-model.js';
 import { layerNetwork, withoutPulses } from '../../../src/science/room-air/layer-network.js';
 import { usualLayers } from '../../../src/science/room-air/layer-parameters.js';
@@ -212,4 +213,62 @@ describe('two-layer model over random rooms of AC-P01, seed 4711', () => {
       (allowed.max_ratio_of_x_times_V_below_to_gas_released_so_far ?? 0) + 1e-6,
     );
   }, 170_000);
+});
+
+describe('two-layer answer of simple networks', () => {
+  const twoHalls = (first: number, second: number, freshAirM3PerS: number): AirInput => ({
+    ambient: { temperatureK: 293.15, pressurePa: 101_325, carbonDioxideFraction: 0 },
+    durationS: 1800,
+    outputIntervalS: 300,
+    spaces: [
+      { id: 'left', floorAreaM2: 60, heightM: 3 },
+      { id: 'right', floorAreaM2: 60, heightM: 3 },
+    ],
+    openings: [
+      { from: 'left', to: 'right', kind: 'doorway', widthM: 1.2, heightM: 2, sillLevelM: 0 },
+    ],
+    airSystems: [
+      { space: 'left', drive: 'extract', freshAirM3PerS, extractLevel: 'high' },
+      { space: 'right', drive: 'extract', freshAirM3PerS, extractLevel: 'high' },
+    ],
+    releases: [
+      { id: 'a', space: 'left', gas: 'CO2', volumeM3: first, durationS: 300 },
+      { id: 'b', space: 'right', gas: 'CO2', volumeM3: second, durationS: 300 },
+    ].filter((release) => release.volumeM3 > 0),
+    zones: [
+      { id: 'l', space: 'left', heightM: 0.5 },
+      { id: 'r', space: 'right', heightM: 0.5 },
+    ],
+  });
+  const peak = (input: AirInput, zone: string): number =>
+    airRun(input, checkGases, { adverse: false }).zones[zone]?.maximum.layered?.CO2?.value ??
+    Number.NaN;
+
+  it('answers two mirrored halls alike', () => {
+    const even = airRun(twoHalls(0.6, 0.6, 0.05), checkGases, { adverse: false });
+    const { left, right } = even.spaces;
+    for (const [i, depth] of (left?.layered?.floorLayerDepthM ?? []).entries()) {
+      expect(depth).toBeCloseTo(right?.layered?.floorLayerDepthM[i] ?? Number.NaN, 9);
+    }
+    expect(peak(twoHalls(0.6, 0.2, 0.05), 'l')).toBeCloseTo(peak(twoHalls(0.2, 0.6, 0.05), 'r'), 9);
+  });
+
+  it('never shows less gas where more is let out', () => {
+    const peaks = [0.1, 0.2, 0.4, 0.8].map((volume) => peak(twoHalls(volume, 0, 0.05), 'l'));
+    for (const [i, value] of peaks.slice(1).entries()) {
+      expect(value).toBeGreaterThan(peaks[i] ?? Number.NaN);
+    }
+  });
+
+  it('never shows more gas in the upper air where more outdoor air is drawn through it', () => {
+    const upper = [0, 0.05, 0.2, 0.5].map(
+      (flow) =>
+        airRun(twoHalls(0.6, 0, flow), checkGases, {
+          adverse: false,
+        }).spaces.left?.layered?.middle.gasFraction.CO2?.at(-1) ?? Number.NaN,
+    );
+    for (const [i, value] of upper.slice(1).entries()) {
+      expect(value).toBeLessThan(upper[i] ?? Number.NaN);
+    }
+  });
 });
