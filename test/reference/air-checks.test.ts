@@ -1,5 +1,10 @@
-import { describe, expect, it } from 'vitest';
-import { recordMisses, referenceRecords } from '../support/reference-records.js';
+import { afterAll, describe, expect, it } from 'vitest';
+import {
+  recordDeviations,
+  recordMisses,
+  referenceRecords,
+  type Deviation,
+} from '../support/reference-records.js';
 import { layerAnswers } from './air-layer-answers.js';
 import { mixedAnswers } from './air-mixed-answers.js';
 import { formulaAnswers } from './air-formula-answers.js';
@@ -15,6 +20,8 @@ const properties = new Set(['AC-P01']);
 describe('air checks, each with the source named in its record', () => {
   const records = referenceRecords('air-checks.json', 'checks');
 
+  const deviations: (Deviation & { readonly id: string })[] = [];
+
   it('has 63 records and an answer for every one of room air', () => {
     expect(records).toHaveLength(63);
     expect(
@@ -28,7 +35,22 @@ describe('air checks, each with the source named in its record', () => {
     const answer = answers[record.id];
     if (!answer) continue;
     it(`${record.id} is met within its tolerance (${record.source})`, () => {
-      expect(recordMisses(record, answer(record.inputs))).toEqual([]);
+      const computed = answer(record.inputs);
+      deviations.push(
+        ...recordDeviations(record, computed).map((one) => ({ id: record.id, ...one })),
+      );
+      expect(recordMisses(record, computed)).toEqual([]);
     });
   }
+
+  // AIR_REPORT=1 prints the experiments with what was computed, and the worst of the rest.
+  afterAll(() => {
+    if (process.env.AIR_REPORT === undefined) return;
+    const line = ({ id, path, expected, actual, used }: (typeof deviations)[number]) =>
+      `${id} ${path}: ${String(expected)} stated, ${actual.toPrecision(5)} computed, ${(100 * used).toFixed(0)} % of the tolerance`;
+    const experiments = deviations.filter(({ id }) => id.startsWith('AC-E'));
+    const worst = deviations.toSorted((a, b) => b.used - a.used).slice(0, 20);
+    const report = ['experiments', ...experiments.map(line), 'worst', ...worst.map(line)];
+    process.stdout.write(`${report.join('\n')}\n`);
+  });
 });

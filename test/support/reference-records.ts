@@ -61,3 +61,32 @@ function valueMisses(
     : relative !== false && absolute !== false && (tolerance.exact !== true || difference === 0);
   return met ? [] : [`${path}: ${String(actual)}, not ${String(expected)}`];
 }
+
+/** One number of a record beside what was computed, and the share of the tolerance it takes. */
+export interface Deviation {
+  readonly path: string;
+  readonly expected: number;
+  readonly actual: number;
+  readonly used: number;
+}
+
+/** Every number of a record beside what was computed. */
+export function recordDeviations(
+  record: ReferenceRecord,
+  actual: Readonly<Record<string, unknown>>,
+): readonly Deviation[] {
+  const { relative, absolute } = record.tolerance;
+  const numbers = (expected: unknown, value: unknown, path: string): readonly Deviation[] => {
+    if (Array.isArray(expected)) {
+      const values: readonly unknown[] = Array.isArray(value) ? value : [];
+      return expected.flatMap((one, i) => numbers(one, values[i], `${path}[${String(i)}]`));
+    }
+    if (typeof expected !== 'number' || typeof value !== 'number') return [];
+    const allowed = Math.max((relative ?? 0) * Math.abs(expected), absolute ?? 0, Number.MIN_VALUE);
+    const off = Math.abs(value - expected);
+    return [{ path, expected, actual: value, used: off === 0 ? 0 : off / allowed }];
+  };
+  return Object.entries(record.expected).flatMap(([key, expected]) =>
+    numbers(expected, actual[key], key),
+  );
+}

@@ -247,7 +247,6 @@ export const airInputSchema = Type.Object(
           smearHeightM: Type.Optional(notNegative),
           fallEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 1 })),
           edgeEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 0.8 })),
-          fallEntrainment: Type.Optional(Type.Number({ minimum: 0, maximum: 1 })),
         },
         closed,
       ),
