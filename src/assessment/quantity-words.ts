@@ -1,26 +1,16 @@
 import type { Answer, Figure } from './assessment.js';
+import { quantityText, type Rounding } from './figure-text.js';
 import type { JudgedLevel } from './levels.js';
 
-/** Short words for a number inside a sentence of the assessment, with the rounding of the sheets. */
-export function shortText(figure: Figure): string {
-  const { value, unit } = figure;
-  if (unit === 'oxygenFraction') return `${(Math.floor(value * 1000 + 1e-9) / 10).toFixed(1)} %`;
-  if (unit === 'gasFraction') {
-    if (value < 0.01) return `${String(Math.ceil(value * 1e5 - 1e-9) * 10)} ppm`;
-    return `${(Math.ceil(value * 1000 - 1e-9) / 10).toFixed(1)} %`;
-  }
-  return `${String(Number(value.toPrecision(3)))} ${unit}`;
+/** A number inside a sentence of the assessment, as page and sheet print it, with plain spaces. */
+export function shortText(figure: Figure, rounding?: Rounding): string {
+  return quantityText(figure.value, figure.unit, rounding).replaceAll('\u00a0', ' ');
 }
 
 /** A number at which to stop, rounded to the side that stops earlier. */
 export function stopText(figure: Figure): string {
-  const { value, unit } = figure;
-  if (unit === 'oxygenFraction') return `${(Math.ceil(value * 1000 - 1e-9) / 10).toFixed(1)} %`;
-  if (unit === 'gasFraction') {
-    if (value < 0.01) return `${String(Math.floor(value * 1e5 + 1e-9) * 10)} ppm`;
-    return `${(Math.floor(value * 1000 + 1e-9) / 10).toFixed(1)} %`;
-  }
-  return shortText(figure);
+  if (figure.unit === 'oxygenFraction') return shortText(figure, 'up');
+  return shortText(figure, figure.unit === 'gasFraction' ? 'down' : undefined);
 }
 
 export const answerWords = {

@@ -1,6 +1,6 @@
 import type { VNode } from 'preact';
 import type { Assessment, DriverResult } from '../assessment/assessment.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
 import { Folded } from './result-tables.js';

@@ -1,7 +1,7 @@
 import type { VNode } from 'preact';
 import type { Assessment, DecidingQuestion, Finding } from '../assessment/assessment.js';
 import type { ErrorDetail } from '../errors.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import { fieldId } from '../web/forms/fields.js';
 import { DecisionBox, OpenableFigure } from '../web/layout/parts.js';
 import { chosenMoment } from '../web/section/moment-view.js';

@@ -1,6 +1,6 @@
 import type { ComponentChildren, VNode } from 'preact';
 import type { Assessment, Figure } from '../assessment/assessment.js';
-import type { Rounding } from '../web/format/figure-text.js';
+import type { Rounding } from '../assessment/figure-text.js';
 import { OpenableFigure, Table } from '../web/layout/parts.js';
 import { en } from '../web/texts/en.js';
 import { resultTexts as words } from '../web/texts/en-results.js';

@@ -1,6 +1,6 @@
 import type { VNode } from 'preact';
 import type { Assessment, Figure, SectionMoment } from '../assessment/assessment.js';
-import { figureText } from '../web/format/figure-text.js';
+import { figureText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { chosenMoment, momentKey, momentTitle, momentView } from '../web/section/moment-view.js';
 import { phoneRoom } from '../web/section/placement.js';

@@ -1,7 +1,7 @@
 import { Fragment, type VNode } from 'preact';
 import type { Figure, SmallestAudible, SoundNote, SoundResult } from '../assessment/assessment.js';
 import { hasPreview } from '../assessment/sound-preview.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import { OpenableFigure } from '../web/layout/parts.js';
 import { soundTexts as words } from '../web/texts/en-sound.js';
 

@@ -12,7 +12,7 @@ import { curveSizes } from '../web/charts/curve-scale.js';
 import { curveWords } from '../web/charts/curve-words.js';
 import { MomentMark } from '../web/charts/moment-mark.js';
 import { clockText, numberedCues, zoneCurve } from '../web/charts/zone-curve.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
 import { sentence } from '../web/views/sentence.js';

@@ -8,7 +8,7 @@ import type {
   ZoneQuantity,
   ZoneResult,
 } from '../assessment/assessment.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import { OpenableFigure } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
 import { sentence } from '../web/views/sentence.js';

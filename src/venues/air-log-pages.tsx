@@ -1,7 +1,7 @@
 import type { VNode } from 'preact';
 import type { PlanVenue } from '../assessment/plan-file.js';
 import { chartSvg } from '../web/charts/chart-svg.js';
-import { quantityText } from '../web/format/figure-text.js';
+import { quantityText } from '../assessment/figure-text.js';
 import {
   ErrorSummary,
   problemOf,

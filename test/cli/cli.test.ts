@@ -5,7 +5,7 @@ import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Assessment } from '../../src/assessment/assessment.js';
-import { figureText } from '../../src/web/format/figure-text.js';
+import { figureText } from '../../src/assessment/figure-text.js';
 import { fogAct, hall } from '../support/plans.js';
 
 const root = fileURLToPath(new URL('../..', import.meta.url));

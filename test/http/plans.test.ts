@@ -4,7 +4,7 @@ import { stringify } from 'yaml';
 import { assess } from '../../src/assessment/assess.js';
 import { PlansRepository } from '../../src/storage/plans.repository.js';
 import { VenuesRepository } from '../../src/storage/venues.repository.js';
-import { quantityText } from '../../src/web/format/figure-text.js';
+import { quantityText } from '../../src/assessment/figure-text.js';
 import { data, fogAct, hall } from '../support/plans.js';
 import { startServer, type TestServer } from '../support/server.js';
 import type { Visitor } from '../support/visitor.js';

@@ -11,7 +11,7 @@ import { renderPdf } from '../../src/sheets/render-pdf.js';
 import { renderRiskSheet } from '../../src/sheets/risk-sheet-pdf.js';
 import { riskSheet } from '../../src/sheets/risk-sheet.js';
 import { riskSheetTexts } from '../../src/sheets/sheet-texts.js';
-import { quantityText } from '../../src/web/format/figure-text.js';
+import { quantityText } from '../../src/assessment/figure-text.js';
 import {
   assessmentFixture,
   emptyAssessment,

@@ -1,5 +1,5 @@
 import type { ActResult, Assessment, ReleaseLine } from '../../assessment/assessment.js';
-import { quantityText } from '../../web/format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import type { Block, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import { figureOnLine } from './figure-words.js';

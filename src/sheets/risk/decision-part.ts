@@ -1,5 +1,5 @@
 import type { Assessment } from '../../assessment/assessment.js';
-import { quantityText } from '../../web/format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import { levelWords } from './figure-words.js';

@@ -1,5 +1,5 @@
 import type { Assessment, Figure, SoundResult } from '../../assessment/assessment.js';
-import { quantityText, spanText } from '../../web/format/figure-text.js';
+import { quantityText, spanText } from '../../assessment/figure-text.js';
 import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import {

@@ -1,5 +1,5 @@
 import type { Assessment, Figure } from '../../assessment/assessment.js';
-import { quantityText, spanText, type Rounding } from '../../web/format/figure-text.js';
+import { quantityText, spanText, type Rounding } from '../../assessment/figure-text.js';
 
 /** The figure for a cell: the value, and its span on lines of its own. */
 export function figureWords(figure: Figure, rounding?: Rounding): string {

@@ -7,7 +7,7 @@ import type {
   ZoneResult,
 } from '../../assessment/assessment.js';
 import { clockText } from '../../web/charts/zone-curve.js';
-import { quantityText } from '../../web/format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import { lengthText } from '../../web/section/level-text.js';
 import type { Block, Table, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';

@@ -1,6 +1,6 @@
 import type { EChartsCoreOption } from 'echarts/core';
 import type { ZoneSeries } from '../../assessment/assessment.js';
-import { quantityText } from '../format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import { accent, hairline, ink, softInk } from '../section/ink.js';
 import {
   levelsDrawn,

@@ -6,7 +6,7 @@ import type {
   ZoneResult,
   ZoneSeries,
 } from '../../assessment/assessment.js';
-import { quantityText } from '../format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import { curveWords, type CurveWords } from './curve-words.js';
 
 /** What one curve shows: a quantity of a zone over the day, its levels and the cues. */

@@ -56,11 +56,11 @@ export function FigureField(props: FigureFieldProps): VNode {
   const { name, label, hint, state } = props;
   const words = en.figure;
   const id = fieldId(name);
-  const detailParts = [`${name}-low`, `${name}-high`, `${name}-on`, `${name}-note`];
+  const detailParts = [`${name}-low`, `${name}-high`, `${name}-on`, `${name}-by`, `${name}-note`];
   const isOpen = detailParts.some((part) => problemOf(state, part) !== undefined);
-  const [low, high, on, note] = detailParts.map((part) => state.values[part]);
+  const [low, high, on, by, note] = detailParts.map((part) => state.values[part]);
   const bounds = low === undefined && high === undefined ? [] : [`${low ?? ''}\u2013${high ?? ''}`];
-  const stated = [...bounds, on, note].filter((text) => text !== undefined);
+  const stated = [...bounds, on, by, note].filter((text) => text !== undefined);
   const chosen = state.values[`${name}-origin`] ?? '';
   const originId = fieldId(`${name}-origin`);
   return (
@@ -93,6 +93,7 @@ export function FigureField(props: FigureFieldProps): VNode {
         <Part field={props} part={`${name}-low`} label={words.low} hasUnit />
         <Part field={props} part={`${name}-high`} label={words.high} hasUnit />
         <Part field={props} part={`${name}-on`} label={words.on} type="date" />
+        <Part field={props} part={`${name}-by`} label={words.by} />
         <Part field={props} part={`${name}-note`} label={words.note} />
       </details>
     </fieldset>

@@ -37,7 +37,7 @@ const isOrigin = (text: string): text is Origin => origins.some((origin) => orig
 
 /**
  * The figure that a figure field sent: `name`, `name-low`, `name-high`, `name-origin`, `name-on`,
- * `name-note`. The result is in the SI unit of the stored key.
+ * `name-by`, `name-note`. The result is in the SI unit of the stored key.
  */
 export function readFigure(fields: FormFields, name: string, rule: FigureRule): ReadFigure {
   const problems: ErrorDetail[] = [];
@@ -66,6 +66,7 @@ export function readFigure(fields: FormFields, name: string, rule: FigureRule): 
   const high = number(`${name}-high`);
   const originText = fields[`${name}-origin`];
   const on = fields[`${name}-on`];
+  const by = fields[`${name}-by`];
   const note = fields[`${name}-note`];
   const origin = originText !== undefined && isOrigin(originText) ? originText : undefined;
   if (originText !== undefined && origin === undefined) {
@@ -92,7 +93,7 @@ export function readFigure(fields: FormFields, name: string, rule: FigureRule): 
   }
   if (problems.length > 0) return { problems };
 
-  const bare = [low, high, origin, on, note].every((part) => part === undefined);
+  const bare = [low, high, origin, on, by, note].every((part) => part === undefined);
   if (bare) return value === undefined ? { problems } : { figure: value, problems };
   if (value === undefined && origin !== 'unknown') return { problems };
   return {
@@ -102,6 +103,7 @@ export function readFigure(fields: FormFields, name: string, rule: FigureRule): 
       ...(high !== undefined && { high }),
       ...(origin !== undefined && { origin }),
       ...(on !== undefined && { on }),
+      ...(by !== undefined && { by }),
       ...(note !== undefined && { note }),
     },
     problems,
@@ -116,13 +118,14 @@ export function figureTexts(
 ): Record<string, string> {
   if (figure === undefined) return {};
   if (typeof figure === 'number') return { [name]: shownText(figure, unit) };
-  const { value, low, high, origin, on, note } = figure;
+  const { value, low, high, origin, on, by, note } = figure;
   return {
     ...(value !== undefined && { [name]: shownText(value, unit) }),
     ...(low !== undefined && { [`${name}-low`]: shownText(low, unit) }),
     ...(high !== undefined && { [`${name}-high`]: shownText(high, unit) }),
     ...(origin !== undefined && { [`${name}-origin`]: origin }),
     ...(on !== undefined && { [`${name}-on`]: on }),
+    ...(by !== undefined && { [`${name}-by`]: by }),
     ...(note !== undefined && { [`${name}-note`]: note }),
   };
 }

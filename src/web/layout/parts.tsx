@@ -1,7 +1,7 @@
 import type { ComponentChildren, VNode } from 'preact';
 import type { DecisionWord, Figure } from '../../assessment/assessment.js';
-import type { Rounding } from '../format/figure-text.js';
-import { quantityText, spanText } from '../format/figure-text.js';
+import type { Rounding } from '../../assessment/figure-text.js';
+import { quantityText, spanText } from '../../assessment/figure-text.js';
 import { en } from '../texts/en.js';
 
 /** The decision: a plain word in a ruled box. The rule's shape differs by word, not its colour only. */

@@ -1,5 +1,5 @@
 import type { SectionMoment, SectionOfDay, SectionView } from '../../assessment/assessment.js';
-import { quantityText } from '../format/figure-text.js';
+import { quantityText } from '../../assessment/figure-text.js';
 import { clockText } from '../charts/zone-curve.js';
 
 /** The section with the air of one moment: its layers, and what is breathed then. */

@@ -1,7 +1,7 @@
 import type { JSX } from 'preact';
 import { renderToString } from 'preact-render-to-string';
 import type { SectionView } from '../../assessment/assessment.js';
-import { figureText, quantityText } from '../format/figure-text.js';
+import { figureText, quantityText } from '../../assessment/figure-text.js';
 import { hatchPath, polygonPart, polygonPath, two, type Point } from './hatch.js';
 import { accent, ink, softInk } from './ink.js';
 import { drawnWidth, freeBox, type LabelBox } from './label-placement.js';

@@ -1,5 +1,5 @@
 import type { SectionView } from '../../assessment/assessment.js';
-import { figureText, quantityText } from '../format/figure-text.js';
+import { figureText, quantityText } from '../../assessment/figure-text.js';
 import { lengthText, levelText } from './level-text.js';
 import type { MomentView } from './moment-view.js';
 import { roofLevel } from './placement.js';

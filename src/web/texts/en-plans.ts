@@ -233,6 +233,15 @@ export const planTexts = {
     space: 'Where',
     height: 'Height above the floor',
     response: 'Time to 90 % of the reading',
+    accuracy: 'Accuracy',
+    shareHint:
+      'In percent of gas in the air, not of the reading: an oxygen meter may be 0.5 % off.',
+    drift: 'Drift since the calibration',
+    crossEffect: 'Error that the other gases here cause',
+    crossEffectHint: 'The data sheet lists it, often as cross-sensitivity.',
+    range: 'Highest share that it can show',
+    altitude: 'Corrects for the altitude',
+    altitudeHint: 'Matters high above the sea, where some cells read low.',
     calibrated: 'Calibrated on',
   },
   controls: {

@@ -10,7 +10,7 @@ export interface Difference {
   readonly yours: string;
 }
 
-const parts = ['', '-low', '-high', '-origin', '-on', '-note', '-unit'];
+const parts = ['', '-low', '-high', '-origin', '-on', '-by', '-note', '-unit'];
 
 /** Where two fillings of the same form differ, in the words of the page. */
 export function formDifferences(

@@ -101,7 +101,7 @@ export function withRowsCounted(
   return result;
 }
 
-const figureParts = ['', '-low', '-high', '-origin', '-on', '-note'];
+const figureParts = ['', '-low', '-high', '-origin', '-on', '-by', '-note'];
 
 /** Names of all fields that a form of this description may send, for the rows that it sent. */
 export function knownFieldNames(

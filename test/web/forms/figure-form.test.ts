@@ -50,7 +50,7 @@ describe('a figure field', () => {
     expect(read({ air: '0' })).toEqual({ figure: 0, problems: [] });
   });
 
-  it('keeps bounds, origin, date and note', () => {
+  it('keeps bounds, origin, date, by whom and note', () => {
     expect(
       read({
         air: '400',
@@ -58,6 +58,7 @@ describe('a figure field', () => {
         'air-high': '420',
         'air-origin': 'measured',
         'air-on': '2026-03-01',
+        'air-by': 'venue engineer',
         'air-note': 'at the grille',
       }),
     ).toEqual({
@@ -67,10 +68,18 @@ describe('a figure field', () => {
         high: 0.42,
         origin: 'measured',
         on: '2026-03-01',
+        by: 'venue engineer',
         note: 'at the grille',
       },
       problems: [],
     });
+  });
+
+  it('gives the one who stated a figure back on the next save', () => {
+    const figure = { value: 0.4, origin: 'measured' as const, by: 'venue engineer' };
+    const shown = figureTexts('air', figure, litresPerSecond);
+
+    expect(readFigure(shown, 'air', rule).figure).toEqual(figure);
   });
 
   it('takes "don\u2019t know" as a figure without a value', () => {

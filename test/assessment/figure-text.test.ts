@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { FigureUnit } from '../../../src/assessment/assessment.js';
-import { figureText, quantityText } from '../../../src/web/format/figure-text.js';
+import type { FigureUnit } from '../../src/assessment/assessment.js';
+import { figureText, quantityText } from '../../src/assessment/figure-text.js';
 
 // No-break spaces read as plain ones here.
 const plain = (text: string) => text.replaceAll('\u00a0', ' ');
@@ -41,7 +41,13 @@ describe('a quantity as text', () => {
     [0.5, 'kg', '0.500 kg'],
     [12_345, 'kg', '12 300 kg'],
     [1080, 'm3', '1080 m³'],
-    [0.0075, 'm3PerS', '0.00750 m³/s'],
+    [0.000299, 'm3', '0.299 L'],
+    [0.0000299, 'm3', '29.9 mL'],
+    [0.0999, 'm3', '99.9 L'],
+    [0.1, 'm3', '0.100 m³'],
+    [0, 'm3', '0 m³'],
+    [0.0075, 'm3PerS', '7.50 L/s'],
+    [1.25, 'm3PerS', '1.25 m³/s'],
     [9.999, 'm', '10.0 m'],
     [0, 'kg', '0 kg'],
     [200, 'people', '200'],

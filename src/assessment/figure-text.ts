@@ -1,4 +1,4 @@
-import type { Figure, FigureUnit } from '../../assessment/assessment.js';
+import type { Figure, FigureUnit } from './assessment.js';
 
 /** Which way the last printed digit may move: never towards the comfortable side. */
 export type Rounding = 'nearest' | 'down' | 'up';
@@ -60,6 +60,22 @@ function timeText(seconds: number, rounding: Rounding): string {
   return rest === 0 ? hours : `${hours} ${String(rest)}${noBreak}min`;
 }
 
+/** Volumes that a bag or a balloon holds read in litres, drops of gas in millilitres. */
+function volumeText(value: number, rounding: Rounding): string {
+  const size = Math.abs(value);
+  if (size === 0 || size >= 0.1) return `${threeDigits(value, rounding)}${noBreak}m³`;
+  return size < 1e-4
+    ? `${threeDigits(value * 1e6, rounding)}${noBreak}mL`
+    : `${threeDigits(value * 1000, rounding)}${noBreak}L`;
+}
+
+/** Air of rooms reads in litres per second, that of halls in cubic metres. */
+function flowText(value: number, rounding: Rounding): string {
+  return Math.abs(value) < 1
+    ? `${threeDigits(value * 1000, rounding)}${noBreak}L/s`
+    : `${threeDigits(value, rounding)}${noBreak}m³/s`;
+}
+
 interface UnitStyle {
   readonly rounding: Rounding;
   text(value: number, rounding: Rounding): string;
@@ -104,10 +120,10 @@ const unitStyles = {
   },
   kg: plain('kg'),
   mol: plain('mol'),
-  m3: plain('m³'),
+  m3: { rounding: 'nearest', text: volumeText },
   m: plain('m'),
   m2: plain('m²'),
-  m3PerS: plain('m³/s'),
+  m3PerS: { rounding: 'nearest', text: flowText },
   perHour: plain('per hour'),
   mPerS: plain('m/s'),
   kgCO2e: plain('kg CO2e'),
