@@ -1,5 +1,5 @@
 import { airGasProblems, airInputProblems } from './air-problems.js';
-import { InvalidInput } from '../../errors.js';
+import { InvalidInput, NotComputable } from '../../errors.js';
 import type { AirGasTable } from './air-gases.js';
 import type { AirInput, AirZone } from './air-input.js';
 import type {
@@ -135,7 +135,13 @@ export function airRun(
     if (own && at02M) zones[zone.id] = Object.assign(own, { at02M });
   }
   crossings.sort((a, b) => a.atS - b.atS);
-  const answer = { timesS, spaces, zones, crossings, balance: gasBalances(model, runs) };
+  const answer = {
+    timesS,
+    spaces,
+    zones,
+    crossings,
+    balance: gasBalances(model, runs, layers?.balanceError ?? 0),
+  };
   if (!wantsLayers || !input.uncertainty) return answer;
   return { ...answer, ...bandedZones({ model, gases, runs, releases, timesS }, zones) };
 }
@@ -302,8 +308,18 @@ function addCrossings(
   }
 }
 
-/** What came in, left and stayed, per gas and for oxygen, from the run without mixing volume. */
-function gasBalances(model: AirModel, runs: MixedRuns): Readonly<Record<string, GasBalance>> {
+/** Share of a gas that may be missing from its balance before a run is not believed [-]. */
+const MOST_IMBALANCE = 1e-6;
+
+/**
+ * What came in, left and stayed, per gas and for oxygen, from the mixed run without mixing volume; its
+ * error is that of the layered run where that is larger.
+ */
+function gasBalances(
+  model: AirModel,
+  runs: MixedRuns,
+  layeredError: number,
+): Readonly<Record<string, GasBalance>> {
   const n = model.spaces.length;
   const m = model.components.length;
   const amounts = runs.tracks[0].last;
@@ -318,11 +334,19 @@ function gasBalances(model: AirModel, runs: MixedRuns): Readonly<Record<string, 
       out += amounts[n * m + k] ?? 0;
       into += amounts[(n + 1) * m + k] ?? 0;
     }
+    const relativeError = Math.max(layeredError, into > 0 ? Math.abs(into - out - held) / into : 0);
+    if (!(relativeError <= MOST_IMBALANCE)) {
+      throw new NotComputable(
+        `The balance of ${gas} does not close.`,
+        'Look for a flow or an amount that is out of all proportion to its space.',
+        [{ path: '/releases', problem: `${String(relativeError)} of it is missing` }],
+      );
+    }
     balances[gas] = {
       inMol: into / model.molarVolumeM3,
       outMol: out / model.molarVolumeM3,
       heldMol: held / model.molarVolumeM3,
-      relativeError: into > 0 ? Math.abs(into - out - held) / into : 0,
+      relativeError,
     };
   }
   return balances;

@@ -27,6 +27,8 @@ export interface MouthLayers {
 /** The usual two-layer run, and at each mouth the worst of those without any mixing. */
 export interface LayerRuns {
   readonly mouths: readonly MouthLayers[];
+  /** Largest share of a component that the usual run gained or lost [-]. */
+  readonly balanceError: number;
   spaceLayers(space: number, timesS: readonly number[]): SpaceLayers;
 }
 
@@ -74,6 +76,7 @@ export function layerRuns(
       )
     : [];
   return {
+    balanceError: track.balanceError,
     mouths: bounded.map(({ at, bounds }, m) => ({
       usual: layeredRows(one, track, at, usual, bounds),
       adverse: adverse[m],
