@@ -4,7 +4,6 @@ import { oxygenPartialPressure, vapourPressure } from '../science/room-air/water
 import { airAnswers } from './air-answers.js';
 import type {
   ActResult,
-  Answer,
   Assessment,
   Condition,
   ControlResult,
@@ -52,9 +51,9 @@ import { holdFindings } from './plausibility-findings.js';
 import { pressureFindings } from './pressure-findings.js';
 import { streamFindings } from './stream-findings.js';
 import { stopReading } from './stop-reading.js';
+import { spentShare } from './spent-share.js';
 import { soundResults } from './sound-results.js';
 import { zoneResults } from './zone-results.js';
-import type { LevelName } from './levels.js';
 import type { ZoneOutcome } from './zone-outcomes.js';
 
 export type { AssessmentData } from './assessment-data.js';
@@ -91,15 +90,6 @@ const wordOfHits = (hits: readonly Hit[]): DecisionWord => worstWord(hits.map((h
 function partWord(hits: readonly Hit[], known: Knowledge): DecisionWord {
   const word = wordOfHits(hits);
   return known.hasUnknown ? worseWord(word, 'goWithConditions') : word;
-}
-
-/** How far a number has gone from fresh air to its level [-]; 1 at the level itself. */
-function spentShare({ level, answers }: ZoneOutcome, answer: Answer, name: LevelName): number {
-  const { statistic, value: limit } = level[name];
-  const found = answers[answer] ?? answers.mixed;
-  const value = found?.statistics[statistic] ?? found?.value ?? 0;
-  const fresh = level.quantity.startsWith('oxygen') ? freshOxygen : 0;
-  return Math.abs(value - fresh) / Math.abs(limit - fresh);
 }
 
 /** The gravest hit; of several with the same word and row the one furthest past its level. */

@@ -131,6 +131,7 @@ const reasonText: Record<HitReason, string> = {
   placeFails: 'a leak in a store, lift or vehicle passes the limit',
   mixedPastAim: 'the planned release fails the aim even with the air stirred through the room',
   layeredPastLimit: 'the planned release fails the limit in a layer',
+  layeredPastNever: 'the planned release passes never for a short time in a layer',
   medianPastAim: 'the planned release fails the aim in the middle of the layered band',
   layeredPastAim: 'the planned release fails the aim at the upper end of the layered band',
   noMeter: 'the planned release fails the aim in a layer and no fitting meter hangs there',

@@ -1,5 +1,6 @@
 import { decisionOrder, type Answer, type CaseName, type DecisionWord } from './assessment.js';
 import type { LevelName } from './levels.js';
+import { fleeingFrom } from './slip-outcomes.js';
 import type { AnswerOutcome, ZoneOutcome } from './zone-outcomes.js';
 
 /** What the table looks at. All of it computed; nothing is decided elsewhere. */
@@ -63,6 +64,7 @@ export type HitReason =
   | 'placeFails'
   | 'mixedPastAim'
   | 'layeredPastLimit'
+  | 'layeredPastNever'
   | 'medianPastAim'
   | 'layeredPastAim'
   | 'noMeter'
@@ -162,7 +164,8 @@ export const decisionRows: readonly DecisionRow[] = [
   },
   {
     row: 2,
-    test: 'planned: mixed fails the aim, or layered fails the limit, or the layered median fails the aim, in an occupied zone',
+    // A short peak can pass never and still meet a limit that is a mean over 15 minutes.
+    test: 'planned: mixed fails the aim, or layered fails the limit or never, or the layered median fails the aim, in an occupied zone',
     hits: (facts) =>
       declared(facts.planned).flatMap((outcome) => {
         if (failsAt(outcome, 'mixed', 'aim')) {
@@ -172,6 +175,10 @@ export const decisionRows: readonly DecisionRow[] = [
           const answer = layeredOf(outcome);
           return [hit(2, 'noGo', facts, outcome, answer, 'limit', 'layeredPastLimit')];
         }
+        if (failsAt(outcome, layeredOf(outcome), 'never')) {
+          const answer = layeredOf(outcome);
+          return [hit(2, 'noGo', facts, outcome, answer, 'never', 'layeredPastNever')];
+        }
         if (failsAt(outcome, medianOf(outcome), 'aim')) {
           return [hit(2, 'noGo', facts, outcome, medianOf(outcome), 'aim', 'medianPastAim')];
         }
@@ -180,13 +187,14 @@ export const decisionRows: readonly DecisionRow[] = [
   },
   {
     row: 3,
-    test: 'planned: layered fails the aim but meets the limit, and the median meets the aim',
+    test: 'planned: layered fails the aim but meets limit and never, and the median meets the aim',
     hits: (facts) =>
       declared(facts.planned)
         .filter(
           (outcome) =>
             failsAt(outcome, layeredOf(outcome), 'aim') &&
             !failsAt(outcome, layeredOf(outcome), 'limit') &&
+            !failsAt(outcome, layeredOf(outcome), 'never') &&
             !failsAt(outcome, medianOf(outcome), 'aim') &&
             !failsAt(outcome, 'mixed', 'aim'),
         )
@@ -248,15 +256,27 @@ export const decisionRows: readonly DecisionRow[] = [
     hits: (facts) =>
       worstDeclared(facts)
         .filter(({ outcome }) => failsAt(outcome, layeredOf(outcome), 'never'))
-        .map(({ outcome, acts, startS }) => {
-          const past = answerOf(outcome, layeredOf(outcome))?.firstPast.never ?? startS;
+        .flatMap(({ outcome, acts, startS }) => {
+          const past = fleeingFrom(outcome, 'never', startS);
+          if (past === null) return [];
           const inTime =
             facts.escapeTimeS !== null &&
             past - startS >= facts.escapeTimeFactor * facts.escapeTimeS;
           const answer = layeredOf(outcome);
-          return inTime
-            ? hit(7, 'goWithConditions', facts, outcome, answer, 'never', 'worstNeverInTime', acts)
-            : hit(7, 'noGo', facts, outcome, answer, 'never', 'worstNeverTooSoon', acts);
+          return [
+            inTime
+              ? hit(
+                  7,
+                  'goWithConditions',
+                  facts,
+                  outcome,
+                  answer,
+                  'never',
+                  'worstNeverInTime',
+                  acts,
+                )
+              : hit(7, 'noGo', facts, outcome, answer, 'never', 'worstNeverTooSoon', acts),
+          ];
         }),
   },
   {

@@ -33,6 +33,7 @@ import { policyDefault } from './policy-rows.js';
 import { planRefusals } from './refusals.js';
 import { resolvedPlan } from './resolve.js';
 import type { ResolvedGroup, ResolvedPlan } from './resolved-plan.js';
+import { slipOutcomes } from './slip-outcomes.js';
 import { worstReleases, type WorstRelease } from './worst-releases.js';
 import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 
@@ -212,7 +213,7 @@ export function evaluation(
   const decisionFacts: DecisionFacts = {
     planned,
     fansOff,
-    worst,
+    worst: worst.map((one) => ({ ...one, outcomes: slipOutcomes(one, { resolved }) })),
     refused: refusals.map(({ act, reason }) => ({ act, space: spaceOf(act), reason })),
     places,
     onlyAssumed: restsOnAssumptions(reader, resolved),

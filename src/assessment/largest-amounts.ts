@@ -1,10 +1,12 @@
 import { connectedSpaces } from './act-attribution.js';
 import type { AirAnswers } from './air-answers.js';
 import { airCase, type AirCase } from './air-case.js';
-import type { LargestAmount } from './assessment.js';
+import type { Answer, LargestAmount } from './assessment.js';
 import type { Evaluation } from './evaluation.js';
 import { plainFigure } from './figures.js';
+import type { LevelName } from './levels.js';
 import type { ResolvedAct } from './resolved-plan.js';
+import { spentShare } from './spent-share.js';
 import { zoneOutcomes, type ZoneOutcome } from './zone-outcomes.js';
 
 /** An act is never scaled up beyond this many times what is planned. */
@@ -16,18 +18,36 @@ const confirmations = 4;
 /** Corrections of the guess by the mixed answer alone. */
 const corrections = 2;
 
-/** The first outcome, in spaces that the gas of an act can reach, that fails row 2 of the table. */
+/** The tests of row 2 that an outcome fails, each as answer and level. */
+function failedTests({ answers }: ZoneOutcome): readonly (readonly [Answer, LevelName])[] {
+  const tests = [
+    ['mixed', 'aim'],
+    ['layered', 'limit'],
+    ['layered', 'never'],
+    ['layeredP50', 'aim'],
+  ] as const;
+  return tests.filter(([answer, level]) => answers[answer]?.fails[level] ?? false);
+}
+
+/**
+ * Of the outcomes, in spaces that the gas of an act can reach, that fail row 2 of the table the one
+ * that is furthest past its level.
+ */
 const failingIn =
   (reached: ReadonlySet<string>) =>
   (outcomes: readonly ZoneOutcome[]): ZoneOutcome | null =>
-    outcomes.find(
-      ({ judgedFully, answers, group }) =>
-        judgedFully &&
-        reached.has(group.space) &&
-        ((answers.mixed?.fails.aim ?? false) ||
-          (answers.layered?.fails.limit ?? false) ||
-          (answers.layeredP50?.fails.aim ?? false)),
-    ) ?? null;
+    outcomes
+      .filter(({ judgedFully, group }) => judgedFully && reached.has(group.space))
+      .flatMap((outcome) =>
+        failedTests(outcome).map(([answer, level]) => ({
+          outcome,
+          spent: spentShare(outcome, answer, level),
+        })),
+      )
+      .reduce<{ outcome: ZoneOutcome; spent: number } | null>(
+        (worst, one) => (worst === null || one.spent > worst.spent ? one : worst),
+        null,
+      )?.outcome ?? null;
 
 /**
  * Where the aim would be met exactly, were the mixed answer a straight line through two amounts [-].

@@ -33,7 +33,7 @@ function answer(value: number, neverAtS = 1000): AnswerOutcome {
     statistics: { peak: value },
     fails: failed,
     firstPast: failed.never ? { never: neverAtS } : {},
-    series: [value],
+    series: [0, 0, 0, value],
   };
 }
 
@@ -73,7 +73,7 @@ function outcome({
     answers: Object.fromEntries(
       Object.entries(answers).map(([name, value]) => [name, answer(value, neverAtS)]),
     ),
-    timesS: [0],
+    timesS: [0, 999, neverAtS ?? 1000, (neverAtS ?? 1000) + 30],
     oxygenPressurePa: {},
   };
 }
@@ -132,6 +132,20 @@ describe('the decision table, row by row', () => {
     expect(fired({ planned: [outcome({ answers })] })).toContain('2 noGo');
   });
 
+  it('says No-go by row 2 when a peak passes never and the mean of the limit does not', () => {
+    const made = outcome({ answers: { mixed: 1, layered: 1.5, layeredP50: 1 } });
+    const { layered } = made.answers;
+    if (!layered) throw new Error('made with a layer');
+    const short = { ...layered, fails: { aim: true, limit: false, never: true } };
+    const hits = decisionHits({
+      ...quiet,
+      planned: [{ ...made, answers: { ...made.answers, layered: short } }],
+    });
+    expect(hits.map((hit) => [hit.row, hit.word, hit.reason])).toEqual([
+      [2, 'noGo', 'layeredPastNever'],
+    ]);
+  });
+
   it('asks for a meter by row 3 when only the upper end of the layer fails the aim', () => {
     const planned = [outcome({ answers: { mixed: 1, layered: 1.5, layeredP50: 1, bound: 1.5 } })];
     expect(fired({ planned })).toEqual(['3 goWithConditions']);
@@ -186,6 +200,53 @@ describe('the decision table, row by row', () => {
     expect(fired({ worst: [worst(made(1239))] })).toEqual(['7 noGo']);
     expect(fired({ worst: [worst(made(1240))] })).toEqual(['7 goWithConditions']);
     expect(fired({ worst: [worst(made(9999))], escapeTimeS: null })).toEqual(['7 noGo']);
+  });
+
+  /** Never lies at 3; the slip begins at 1000 s, and people need twice 120 s to be out. */
+  const slipSeries = (timesS: readonly number[], series: readonly number[]): WorstCase => {
+    const made = outcome({ answers: { mixed: 1, layered: 3.5, bound: 1 } });
+    const { layered } = made.answers;
+    if (!layered) throw new Error('made with a layer');
+    return {
+      ...worst({ answers: {} }),
+      outcomes: [
+        {
+          ...made,
+          caseName: 'worstCredible',
+          timesS,
+          answers: {
+            ...made.answers,
+            // What the whole window says first: long before the slip.
+            layered: { ...layered, series, firstPast: { never: 100 } },
+          },
+        },
+      ],
+    };
+  };
+
+  it('counts the time to Never by row 7 from the slip, whatever an earlier show has done', () => {
+    const times = [100, 130, 160, 990, 1020, 1300, 1330];
+    expect(fired({ worst: [slipSeries(times, [0, 3.5, 0, 0, 0, 0, 3.5])] })).toEqual([
+      '7 goWithConditions',
+    ]);
+    expect(fired({ worst: [slipSeries(times, [0, 3.5, 0, 0, 3.5, 3.5, 3.5])] })).toEqual([
+      '7 noGo',
+    ]);
+  });
+
+  it('leaves no time by row 7 where the level is past as the slip begins', () => {
+    const times = [100, 990, 1020, 1330];
+    expect(fired({ worst: [slipSeries(times, [0, 3.5, 3.5, 0])] })).toEqual(['7 noGo']);
+  });
+
+  it('does not blame a slip by row 7 for what the planned day did before it', () => {
+    const times = [100, 130, 160, 990, 1020];
+    expect(fired({ worst: [slipSeries(times, [0, 3.5, 0, 0, 0])] })).toEqual([]);
+  });
+
+  it('takes a peak of single draws that no sample shows as reached at once, by row 7', () => {
+    const times = [100, 990, 1020];
+    expect(fired({ worst: [slipSeries(times, [0, 0, 2.9])] })).toEqual(['7 noGo']);
   });
 
   it('asks for restraint by row 8 when the layer fails the limit only, or the bound fails never only', () => {
