@@ -1,4 +1,5 @@
 import { GRAVITY_M_PER_S2, MOLAR_GAS_CONSTANT } from './air-constants.js';
+import { DISCHARGE_COEFFICIENTS } from './air-flows.js';
 import { flowsWithNet } from './doorway.js';
 import { edgeDilution } from './gravity-current.js';
 import { rectangularFloorExchange } from './floor-opening.js';
@@ -224,6 +225,19 @@ export function layerFlows(
     own.flow = speed * head ** 1.5;
     own.slope = Math.max((1.5 * speed * Math.sqrt(head)) / areaAt(layer), own.flow / volume(layer));
   };
+  /**
+   * Most that a hole in a floor lets pour down [m3/s]: as through any hole where the air below has
+   * another way out, else no more than air comes up through it.
+   */
+  const throughHole = ({ hole }: LayerWeir, heavier: number, head: number): number => {
+    if (!hole) return Infinity;
+    const gPrime = (GRAVITY_M_PER_S2 * heavier) / air;
+    const both = rectangularFloorExchange(hole.widthM, hole.lengthM, gPrime);
+    if (!hole.hasOtherWay) return both;
+    const { spread } = DISCHARGE_COEFFICIENTS;
+    const area = hole.widthM * hole.lengthM;
+    return Math.max(both, spread.mode * area * Math.sqrt(2 * gPrime * Math.max(0, head)));
+  };
   const addWeir = (weir: LayerWeir): void => {
     const first = network.layers[weir.a];
     const second = network.layers[weir.b];
@@ -239,9 +253,13 @@ export function layerFlows(
     const flow = flowA - own.flow;
     if (flow === 0) return;
     const forward = flow > 0;
-    const size = Math.abs(flow);
     const donor = forward ? weir.a : weir.b;
     const receiver = forward ? weir.b : weir.a;
+    const head = (depths[donor] ?? 0) - (forward ? weir.sillA : weir.sillB);
+    const most = throughHole(weir, excess(donor, forward ? upperB : upperA), head);
+    const isHeld = Math.abs(flow) > most;
+    const size = isHeld ? most : Math.abs(flow);
+    if (size <= 0) return;
     const donorUpper = forward ? upperA : upperB;
     const receiverUpper = forward ? upperB : upperA;
     // Below some contrast any draught decides, not the gas: what comes over the edge then mixes.
@@ -249,14 +267,16 @@ export function layerFlows(
     const isWeak = excess(donor, receiverUpper) < least * parameters.joinContrast * air;
     const target =
       isWeak || joined.has((forward ? second : first).space) ? receiverUpper : receiver;
+    const donorSlope = forward ? slopeA : own.slope;
+    const receiverSlope = forward ? own.slope : slopeA;
     addVariable(
       table,
       size,
       donor,
-      forward ? slopeA : own.slope,
+      isHeld ? size / volume(donor) : donorSlope,
       Infinity,
       receiver,
-      forward ? -own.slope : -slopeA,
+      isHeld ? 0 : -receiverSlope,
     );
     addSharedFlow(table, donor, target, 0, 1);
     addSharedFlow(table, receiverUpper, donorUpper, 0, 1);

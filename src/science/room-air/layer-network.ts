@@ -65,7 +65,16 @@ export interface LayerWeir {
   /** Height of the opening that can face a layer, for the way outdoors [m]. */
   readonly heightM: number;
   readonly dischargeCoefficient: number;
+  /** A hole in a floor between two zones of air: what pours through it is limited by its size. */
+  readonly hole: FloorHole | undefined;
   readonly opening: AirOpening;
+}
+
+interface FloorHole {
+  readonly widthM: number;
+  readonly lengthM: number;
+  /** Whether the air of the lower space can leave by another way. */
+  readonly hasOtherWay: boolean;
 }
 
 export interface LayerIntake {
@@ -219,7 +228,7 @@ export function layerNetwork(
     floorLayerOf: model.spaces.map((_, i) => layerAt(i, 'floor')),
     ceilingLayerOf: model.spaces.map((_, i) => layerAt(i, 'ceiling')),
     sources,
-    weirs: layerWeirs(model, layerAt),
+    weirs: layerWeirs(model, groupOf, layerAt),
     airMolarMassKgPerMol: air,
     outdoorMolarMassKgPerMol: outdoor,
     excessAbove: Float64Array.from(components, (one) => one.excessKgPerMol),
@@ -311,8 +320,32 @@ function sharedAir(model: AirModel): readonly number[] {
   return model.spaces.map((_, i) => roots.indexOf(find(i)));
 }
 
+/** The hole through which a floor opening lets a layer pour; undefined for an open pit or a door. */
+function holeOf(
+  model: AirModel,
+  groupOf: readonly number[],
+  opening: AirOpening,
+  inside: number,
+  other: number | undefined,
+): FloorHole | undefined {
+  if (opening.kind !== 'floorOpening' || other === undefined) return undefined;
+  if (groupOf[inside] === groupOf[other]) return undefined;
+  const level = (space: number): number => spaceAt(model, space).curve.floorLevelM;
+  const lower = spaceAt(model, level(inside) < level(other) ? inside : other).id;
+  const hasOtherWay = (model.input.openings ?? []).some(
+    (one) =>
+      one !== opening && (one.openFraction ?? 1) > 0 && (one.from === lower || one.to === lower),
+  );
+  return {
+    widthM: opening.widthM * (opening.openFraction ?? 1),
+    lengthM: opening.heightM,
+    hasOtherWay,
+  };
+}
+
 function layerWeirs(
   model: AirModel,
+  groupOf: readonly number[],
   layerAt: (space: number, side: LayerSide) => number,
 ): readonly LayerWeir[] {
   const weirs: LayerWeir[] = [];
@@ -345,6 +378,7 @@ function layerWeirs(
         sillA: fromBase(inside),
         sillB: other === undefined ? 0 : fromBase(other),
         heightM: opening.heightM,
+        hole: holeOf(model, groupOf, opening, inside, other),
         dischargeCoefficient: opening.dischargeCoefficient ?? 0.45,
         opening,
       });

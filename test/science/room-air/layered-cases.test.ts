@@ -187,6 +187,62 @@ describe('a pit beside a stage: 6 kg of dry ice in ten minutes (own derivation, 
   });
 });
 
+describe('what pours through a hole in a floor', () => {
+  const below = (widthM: number, otherWay: boolean): number => {
+    const result = airRun(
+      checkInput({
+        durationS: 900,
+        outputIntervalS: 900,
+        spaces: [
+          { id: 'stage', floorAreaM2: 60, heightM: 6 },
+          { id: 'trap room', floorAreaM2: 60, heightM: 2.2, floorLevelM: -2.4 },
+        ],
+        openings: [
+          {
+            from: 'stage',
+            to: 'trap room',
+            kind: 'floorOpening',
+            widthM,
+            heightM: 4.8,
+            sillLevelM: 0,
+          },
+          ...(otherWay
+            ? [
+                {
+                  from: 'trap room',
+                  to: 'outside',
+                  kind: 'vent' as const,
+                  widthM: 1,
+                  heightM: 0.3,
+                  sillLevelM: -0.6,
+                },
+              ]
+            : []),
+        ],
+        releases: [{ space: 'stage', gas: 'CO2', volumeM3: 3.3, durationS: 600, manner: 'fog' }],
+      }),
+      checkGases,
+      { adverse: false },
+    );
+    const layers = result.spaces['trap room']?.layered;
+    const depth = layers?.floorLayerDepthM.at(-1) ?? Number.NaN;
+    const inLayer = layers?.floorLayer.gasFraction.CO2?.at(-1) ?? Number.NaN;
+    const above = layers?.middle.gasFraction.CO2?.at(-1) ?? Number.NaN;
+    return 60 * (depth * inLayer + Math.max(0, 2.2 - depth) * above);
+  };
+
+  it('is no more than air comes up where the lower room is shut: a 6 mm gap lets next to nothing down', () => {
+    // Epstein 1988 for square cells of 6 mm: below 1e-4 m3/s in all; outdoor air alone holds 0.055 m3.
+    const outdoors = 60 * 2.2 * 420e-6;
+    expect(below(0.006, false) - outdoors).toBeLessThan(0.02);
+    expect(below(0.5, false) - outdoors).toBeGreaterThan(0.2);
+  });
+
+  it('is more where the air of the lower room has another way out', () => {
+    expect(below(0.05, true)).toBeGreaterThan(2 * below(0.05, false));
+  });
+});
+
 describe('band of the layered answer', () => {
   const input = checkInput({
     durationS: 1800,
