@@ -17,6 +17,8 @@ export class Settings {
   /** Where people reach the server when a proxy stands before it; no slash at the end. */
   readonly publicUrl: string | undefined;
   readonly sessionHours: number;
+  /** How long the page of a plan waits for its results before it is sent without them [s]. */
+  readonly pageWaitS: number;
 
   constructor(values: { readonly [K in keyof Settings]: Settings[K] }) {
     this.host = values.host;
@@ -25,6 +27,7 @@ export class Settings {
     this.examples = values.examples;
     this.publicUrl = values.publicUrl;
     this.sessionHours = values.sessionHours;
+    this.pageWaitS = values.pageWaitS;
     Object.freeze(this);
   }
 }
@@ -107,6 +110,12 @@ export function settingsFrom(environment: Environment): Settings {
     (text) => wholeNumber(text, 1, 720),
     'a whole number of hours from 1 to 720',
   );
+  const pageWaitS = parsed(
+    'STILLAIR_PAGE_WAIT',
+    '2',
+    (text) => wholeNumber(text, 0, 60),
+    'a whole number of seconds from 0 to 60',
+  );
   const publicUrl =
     textOf(environment, 'STILLAIR_PUBLIC_URL') === undefined
       ? undefined
@@ -123,7 +132,8 @@ export function settingsFrom(environment: Environment): Settings {
     port === undefined ||
     databaseFile === undefined ||
     examples === undefined ||
-    sessionHours === undefined
+    sessionHours === undefined ||
+    pageWaitS === undefined
   ) {
     throw new InvalidInput(
       faults.length === 1
@@ -140,5 +150,6 @@ export function settingsFrom(environment: Environment): Settings {
     examples: examples === 'on',
     publicUrl,
     sessionHours,
+    pageWaitS,
   });
 }

@@ -15,6 +15,7 @@ describe('settings', () => {
       examples: true,
       publicUrl: undefined,
       sessionHours: 12,
+      pageWaitS: 2,
     });
   });
 

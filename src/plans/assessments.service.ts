@@ -1,3 +1,4 @@
+import { setTimeout as pause } from 'node:timers/promises';
 import { Injectable, Logger } from '@nestjs/common';
 import type { Assessment } from '../assessment/assessment.js';
 import type { PlanFile } from '../assessment/plan-file.js';
@@ -35,6 +36,9 @@ interface Run {
 /** Assessments are asked for by page, images and sheet in one go; so many are kept. */
 const keptOutcomes = 40;
 
+/** After a page was sent without its results, the run goes on this long for the next question [ms]. */
+const lingerMs = 20_000;
+
 const gone = (): DomainError =>
   new Conflict('Nobody waits for this assessment any more.', 'Open the plan again.');
 const overtaken = (): DomainError =>
@@ -65,6 +69,23 @@ export class AssessmentsService {
     const run = this.#runs.get(key) ?? this.#begun(key, file);
     if (latestOf !== undefined) this.#overtake(latestOf, run);
     return run.isDone ? run.outcome : this.#waited(key, run, waiting);
+  }
+
+  /** What came of assessing a plan, or null when that takes longer than the patience. */
+  async outcomeWithin(
+    file: PlanFile,
+    latestOf: string,
+    patienceMs: number,
+  ): Promise<Outcome | null> {
+    const signal = AbortSignal.timeout(patienceMs + lingerMs);
+    const outcome = this.outcomeOf(file, { signal, latestOf });
+    const isOver = new AbortController();
+    const patience = pause(patienceMs, null, { signal: isOver.signal }).catch(() => null);
+    try {
+      return await Promise.race([outcome, patience]);
+    } finally {
+      isOver.abort();
+    }
   }
 
   #begun(key: string, file: PlanFile): Run {

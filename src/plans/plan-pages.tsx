@@ -129,6 +129,8 @@ export interface PlanPageProps {
   readonly state: FormState;
   readonly lists: ChoiceLists;
   readonly results: VNode;
+  /** The results are still being worked out; a script fetches them. */
+  readonly isWaiting: boolean;
   readonly opened?: string | undefined;
   readonly notice?: NoticeName | undefined;
   readonly isUnsaved?: boolean | undefined;
@@ -222,7 +224,7 @@ export function PlanPage(props: PlanPageProps): VNode {
       path="/plans"
       notice={props.notice}
       hasErrors={state.problems.length > 0}
-      scripts={['moments.js']}
+      scripts={props.isWaiting ? ['moments.js', 'waiting.js'] : ['moments.js']}
       wide
     >
       <p class="back">
@@ -263,8 +265,8 @@ export function PlanPage(props: PlanPageProps): VNode {
           <Form action={`/plans/${plan.id}`} viewer={viewer}>
             <input type="hidden" name="version" value={String(plan.version)} />
             {/* First in the form, so that the Enter key saves. */}
-            <p class="actions save-bar">
-              <button type="submit" name="do" value="save">
+            <p class="unseen" aria-hidden="true">
+              <button type="submit" name="do" value="save" tabIndex={-1}>
                 {save}
               </button>
             </p>
@@ -279,7 +281,8 @@ export function PlanPage(props: PlanPageProps): VNode {
         </div>
         <div class="beside" id="results" tabIndex={0} role="region" aria-label={resultTexts.title}>
           {(isUnsaved === true || state.problems.length > 0) && <p class="hint">{words.asSaved}</p>}
-          {results}
+          <div id="results-part">{results}</div>
+          <p class="unseen" role="status" id="results-said" />
         </div>
       </div>
     </Page>

@@ -1,5 +1,7 @@
-import type { VNode } from 'preact';
+import { Fragment, type VNode } from 'preact';
 import type { Assessment, DecidingQuestion, Finding } from '../assessment/assessment.js';
+import { conditionGroups, placeLine } from '../assessment/condition-groups.js';
+import { findingGroups } from '../assessment/finding-groups.js';
 import type { ErrorDetail } from '../errors.js';
 import { quantityText } from '../assessment/figure-text.js';
 import { fieldId } from '../web/forms/fields.js';
@@ -76,20 +78,93 @@ function Questions(props: {
   );
 }
 
+/** The conditions by when they must be met; those alike stand together, place by place. */
+function Conditions({ assessment }: { readonly assessment: Assessment }): VNode {
+  const groups = conditionGroups(assessment);
+  const parts = [true, false].flatMap((blocks) => {
+    const items = groups.filter(({ blocksStart }) => blocksStart === blocks);
+    return items.length === 0 ? [] : [{ blocks, items }];
+  });
+  return (
+    <>
+      {parts.map(({ blocks, items }, part) => (
+        <Fragment key={String(blocks)}>
+          <h3>{blocks ? words.blocks : words.onTheDay}</h3>
+          <ol class="conditions" start={part === 0 ? 1 : (parts[0]?.items.length ?? 0) + 1}>
+            {items.map((group) => (
+              <li key={group.numbers.join()}>
+                <strong>{group.head}</strong>
+                {group.remark !== '' && ` ${group.remark}`}
+                {group.acts.length > 0 && (
+                  <span class="hint">
+                    {' '}
+                    {words.conditionActs} {group.acts.join('; ')}.
+                  </span>
+                )}
+                {group.places.length > 0 && (
+                  <ul>
+                    {group.places.map((place) => (
+                      <li key={place.place}>{sentence(placeLine(place))}</li>
+                    ))}
+                  </ul>
+                )}
+              </li>
+            ))}
+          </ol>
+        </Fragment>
+      ))}
+    </>
+  );
+}
+
+function FindingItem(props: { readonly text: string; readonly href: string | undefined }): VNode {
+  const { text, href } = props;
+  return (
+    <>
+      {text}
+      {href !== undefined && (
+        <>
+          {' '}
+          <a href={href}>
+            {words.toEntry}
+            <span class="unseen">: {text}</span>
+          </a>
+        </>
+      )}
+    </>
+  );
+}
+
 function Findings(props: {
   readonly findings: readonly Finding[];
   readonly linkTo: PlaceLink;
 }): VNode | null {
-  if (props.findings.length === 0) return null;
+  const { findings, linkTo } = props;
+  if (findings.length === 0) return null;
+  const to = (path: string) => (path === '' ? undefined : linkTo(path));
   return (
     <section aria-labelledby="findings-title">
       <h2 id="findings-title">{words.findings}</h2>
       <ul class="findings">
-        {props.findings.map(({ code, kind, text, path }) => {
-          const href = path === '' ? undefined : props.linkTo(path);
+        {findingGroups({ findings }).map(({ code, kind, items, shared }) => {
+          const [first] = items;
           return (
-            <li key={`${code} ${path}`} class={`finding ${kind}`}>
-              <strong>{words.findingKinds[kind]}:</strong> <Linked href={href} text={text} />
+            <li key={`${kind} ${code}`} class={`finding ${kind}`}>
+              <strong>{words.findingKinds[kind]}:</strong>{' '}
+              {items.length === 1 && first !== undefined ? (
+                <FindingItem text={first.text} href={to(first.path)} />
+              ) : (
+                <>
+                  {shared}
+                  <ul>
+                    {items.map(({ text, path }) => (
+                      <li key={text}>
+                        <FindingItem text={text} href={to(path)} />
+                      </li>
+                    ))}
+                  </ul>
+                </>
+              )}
             </li>
           );
         })}
@@ -127,14 +202,7 @@ export function PlanResults(props: {
       {conditions.length > 0 && (
         <section aria-labelledby="conditions-title">
           <h2 id="conditions-title">{words.conditions}</h2>
-          <ol class="conditions">
-            {conditions.map((condition) => (
-              <li key={condition.number} value={condition.number}>
-                {condition.text}
-                {condition.blocksStart && <strong> ({words.blocks})</strong>}
-              </li>
-            ))}
-          </ol>
+          <Conditions assessment={assessment} />
         </section>
       )}
       <Questions questions={assessment.questionsThatDecide} linkTo={linkTo} />
@@ -152,6 +220,32 @@ export function PlanResults(props: {
       <DriverResults assessment={assessment} />
       <Workings assessment={assessment} />
     </>
+  );
+}
+
+/**
+ * In place of the results while they are being worked out. A script fetches them; without it a link
+ * asks again, so that nothing typed meanwhile is lost to a reload.
+ */
+export function Waiting({ planId }: { readonly planId: string }): VNode {
+  return (
+    <section
+      class="waiting"
+      aria-labelledby="waiting-title"
+      data-source={`/plans/${planId}/results`}
+      data-meanwhile={words.waiting.meanwhile}
+      data-done={words.waiting.done}
+      data-lost={words.waiting.lost}
+    >
+      <h2 id="waiting-title">{words.waiting.title}</h2>
+      <p>{words.waiting.words}</p>
+      <p class="hint" />
+      <p>
+        <a class="button second" href={`/plans/${planId}?wait#results`}>
+          {words.waiting.show}
+        </a>
+      </p>
+    </section>
   );
 }
 

@@ -3,6 +3,7 @@ import type { VNode } from 'preact';
 import { renderToString } from 'preact-render-to-string';
 import type { CaseName } from '../assessment/assessment.js';
 import { CatalogueData } from '../catalogue/catalogue.module.js';
+import { Settings } from '../config.js';
 import { Conflict, DomainError, InvalidInput, NotFound, type ErrorDetail } from '../errors.js';
 import { VenuesService } from '../venues/venues.service.js';
 import { chartSvg } from '../web/charts/chart-svg.js';
@@ -33,9 +34,10 @@ import { actRows, planForm } from './plan-form.js';
 import { importedPlan } from './plan-import.js';
 import { pageMessages } from './plan-messages.js';
 import { ImportPage, NewPlanPage, PlanListPage, PlanPage } from './plan-pages.js';
-import { NoResults, PlanResults, type PlaceLink } from './plan-results.js';
+import { NoResults, PlanResults, Waiting, type PlaceLink } from './plan-results.js';
 import { MomentPart } from './section-results.js';
-import { PlansService, type OpenPlan } from './plans.service.js';
+import type { Outcome } from './assessments.service.js';
+import { PlansService, type OpenPlan, type SavedPlan } from './plans.service.js';
 
 /** Fields of the page that belong to the plan but not to its document. */
 const beside = ['venueId', 'demonstration'] as const;
@@ -43,9 +45,12 @@ const beside = ['venueId', 'demonstration'] as const;
 const cases: readonly CaseName[] = ['planned', 'worstCredible', 'fansOff'];
 const isCase = (text: string): text is CaseName => cases.some((name) => name === text);
 
+/** Longest that one question for results is held before it is answered with "not yet" [ms]. */
+const longestHoldMs = 25_000;
+
 interface Shown {
   readonly viewer: Viewer;
-  readonly open: OpenPlan;
+  readonly saved: SavedPlan;
   readonly fields: FormFields;
   readonly problems?: readonly ErrorDetail[];
   readonly version?: number | undefined;
@@ -56,6 +61,8 @@ interface Shown {
   readonly notice?: unknown;
   /** Name of the moment that the section shows. */
   readonly at?: unknown;
+  /** The reader asked to wait for the results. */
+  readonly isPatient?: boolean;
 }
 
 @Controller('plans')
@@ -64,6 +71,7 @@ export class PlansController {
     private readonly plans: PlansService,
     private readonly venues: VenuesService,
     private readonly data: CatalogueData,
+    private readonly settings: Settings,
   ) {}
 
   @Get()
@@ -151,10 +159,24 @@ export class PlansController {
     @CurrentViewer() viewer: Viewer,
     @Query('notice') notice: unknown,
     @Query('at') at: unknown,
-    @ClientSignal() signal: AbortSignal,
+    @Query('wait') wait: unknown,
   ): Promise<string> {
-    const open = await this.plans.open(id, signal);
-    return this.#page({ viewer, open, fields: this.#textsOf(open), notice, at });
+    const saved = await this.plans.read(id);
+    const fields = this.#textsOf(saved);
+    return this.#page({ viewer, saved, fields, notice, at, isPatient: wait !== undefined });
+  }
+
+  /** The results alone, for a page that was sent before they were there; 202 while they are not. */
+  @Get(':id/results')
+  @ReturnsPage()
+  async results(
+    @Param('id') id: string,
+    @Res({ passthrough: true }) reply: PageReply,
+  ): Promise<string> {
+    const saved = await this.plans.read(id);
+    const open = await this.plans.within(saved, longestHoldMs);
+    if (open.outcome === null) void reply.status(202);
+    return renderToString(this.#results(open, this.#textsOf(saved)));
   }
 
   /** The section at another moment, for the slider on the page. */
@@ -178,7 +200,7 @@ export class PlansController {
     @CurrentViewer() viewer: Viewer,
     @Res() reply: PageReply,
   ): Promise<void> {
-    const open = await this.plans.open(id);
+    const saved = await this.plans.read(id);
     const { policy } = this.data.catalogue;
     const sent = sentForm(body, planForm, {
       beside,
@@ -188,9 +210,9 @@ export class PlansController {
     if (sent.command.kind !== 'save') {
       const after =
         sent.command.kind === 'addDemonstration'
-          ? this.#withDemonstration(sent, open)
+          ? this.#withDemonstration(sent, saved)
           : afterRowCommand(sent, planForm);
-      const page = await this.#page({ viewer, open, ...after, version, isUnsaved: true });
+      const page = await this.#page({ viewer, saved, ...after, version, isUnsaved: true });
       sendPage(reply, page);
       return;
     }
@@ -204,7 +226,7 @@ export class PlansController {
             placesOnPage(sent.fields, planForm),
           );
     if (problems.length > 0 || version === undefined) {
-      const page = await this.#page({ viewer, open, fields: sent.fields, problems, version });
+      const page = await this.#page({ viewer, saved, fields: sent.fields, problems, version });
       sendPage(reply, page, 422);
       return;
     }
@@ -214,19 +236,19 @@ export class PlansController {
     } catch (error) {
       if (error instanceof NotFound) {
         const reasons = [{ path: '/venueId', problem: `${error.message} ${error.hint}` }];
-        const shown = { viewer, open, fields: sent.fields, problems: reasons, version };
+        const shown = { viewer, saved, fields: sent.fields, problems: reasons, version };
         sendPage(reply, await this.#page(shown), 422);
         return;
       }
       if (!(error instanceof Conflict)) throw error;
-      const now = await this.plans.open(id);
+      const now = await this.plans.read(id);
       const differences = formDifferences(
         this.#textsOf(now),
         sent.fields,
         planForm,
         planLists(sent.fields, now.venue?.venue, this.data),
       );
-      const page = await this.#page({ viewer, open: now, fields: sent.fields, differences });
+      const page = await this.#page({ viewer, saved: now, fields: sent.fields, differences });
       sendPage(reply, page, 409);
       return;
     }
@@ -240,13 +262,13 @@ export class PlansController {
     @CurrentViewer() viewer: Viewer,
     @Res() reply: PageReply,
   ): Promise<void> {
-    const open = await this.plans.open(id);
+    const saved = await this.plans.read(id);
     const { form, fields, problems } = checkedForm(RemovalForm, body);
     const refuse = async (status: number, reasons: readonly ErrorDetail[]): Promise<void> => {
       const removal = { values: fields, problems: reasons };
       sendPage(
         reply,
-        await this.#page({ viewer, open, fields: this.#textsOf(open), removal }),
+        await this.#page({ viewer, saved, fields: this.#textsOf(saved), removal }),
         status,
       );
     };
@@ -272,7 +294,7 @@ export class PlansController {
     @Param('id') id: string,
     @Res({ passthrough: true }) reply: PageReply,
   ): Promise<string> {
-    const { plan, file } = await this.plans.open(id);
+    const { plan, file } = await this.plans.read(id);
     const name = plan.title.replaceAll(/[^A-Za-z0-9]+/g, '-').slice(0, 60);
     void reply.header('content-disposition', `attachment; filename="${name || 'plan'}.json"`);
     return `${JSON.stringify(file, null, 2)}\n`;
@@ -303,7 +325,7 @@ export class PlansController {
     return chartSvg(curveOption(curve, size), size.width, size.height);
   }
 
-  #textsOf({ plan }: OpenPlan): FormFields {
+  #textsOf({ plan }: SavedPlan): FormFields {
     const texts = planTextsOf(plan.document, this.data.catalogue.policy);
     return plan.venueId === null ? texts : { ...texts, venueId: plan.venueId };
   }
@@ -311,12 +333,12 @@ export class PlansController {
   /** The form with a demonstration of the catalogue added, as it would be shown at this venue. */
   #withDemonstration(
     sent: SentForm,
-    open: OpenPlan,
+    saved: SavedPlan,
   ): { readonly fields: FormFields; readonly opened: string | undefined } {
     const { demonstration: chosen, ...fields } = sent.fields;
     const demonstration = this.data.catalogue.demonstrations.find(({ id }) => id === chosen);
     if (demonstration === undefined) return { fields, opened: undefined };
-    const draft = this.plans.draftAct(demonstration, open.venue?.venue);
+    const draft = this.plans.draftAct(demonstration, saved.venue?.venue);
     const texts = formTexts({ ...draft }, actRows.fields);
     const added = withRow(fields, 'acts', actRows, texts);
     return { fields: added.fields, opened: added.row };
@@ -329,8 +351,10 @@ export class PlansController {
   }
 
   async #page(shown: Shown): Promise<string> {
-    const { viewer, open, fields, problems = [], version, notice, at, ...rest } = shown;
-    const { plan, venue } = open;
+    const { viewer, saved, fields, problems = [], version, notice, at, isPatient, ...rest } = shown;
+    const { plan, venue } = saved;
+    const patienceMs = isPatient === true ? longestHoldMs : this.settings.pageWaitS * 1000;
+    const open = await this.plans.within(saved, patienceMs);
     const venues = await this.venues.list();
     const lists = {
       ...planLists(fields, venue?.venue, this.data),
@@ -346,11 +370,12 @@ export class PlansController {
         lists={lists}
         notice={noticeNamed(notice)}
         results={this.#results(open, fields, at)}
+        isWaiting={open.outcome === null}
       />,
     );
   }
 
-  #results(open: OpenPlan, fields: FormFields, at?: unknown): VNode {
+  #results(open: OpenPlan<Outcome | null>, fields: FormFields, at?: unknown): VNode {
     const { plan, venue, file, outcome } = open;
     const places = placesOnPage(fields, planForm);
     const linkTo: PlaceLink = (pointer) => {
@@ -361,6 +386,7 @@ export class PlansController {
       const name = fieldNameAt(pointer, places);
       return name === undefined ? undefined : `#${fieldId(name)}`;
     };
+    if (outcome === null) return <Waiting planId={plan.id} />;
     if (outcome.assessment !== undefined) {
       return (
         <PlanResults

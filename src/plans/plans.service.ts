@@ -13,12 +13,16 @@ import { actFromDemonstration, siteState, type DraftAct } from './act-from-catal
 import { AssessmentsService, type Outcome } from './assessments.service.js';
 import { partsOf, planFile } from './plan-document.js';
 
-/** A plan at its venue, with what was worked out from both as they are saved. */
-export interface OpenPlan {
+/** A plan at its venue, as both are saved. */
+export interface SavedPlan {
   readonly plan: StoredPlan;
   readonly venue: SavedVenue | undefined;
   readonly file: PlanFile;
-  readonly outcome: Outcome;
+}
+
+/** With what was worked out from both, or null while that is still going on. */
+export interface OpenPlan<O extends Outcome | null = Outcome> extends SavedPlan {
+  readonly outcome: O;
 }
 
 /** What may still be missing while a plan is being written. Everything else wrong is refused. */
@@ -51,11 +55,22 @@ export class PlansService {
    * @throws {NotFound}
    */
   async open(id: string, signal?: AbortSignal): Promise<OpenPlan> {
+    const saved = await this.read(id);
+    const outcome = await this.assessments.outcomeOf(saved.file, { signal, latestOf: id });
+    return { ...saved, outcome };
+  }
+
+  /** @throws {NotFound} */
+  async read(id: string): Promise<SavedPlan> {
     const plan = await this.plans.get(id);
     const venue = plan.venueId === null ? undefined : await this.venues.get(plan.venueId);
-    const file = planFile(plan.document, venue?.venue);
-    const outcome = await this.assessments.outcomeOf(file, { signal, latestOf: id });
-    return { plan, venue, file, outcome };
+    return { plan, venue, file: planFile(plan.document, venue?.venue) };
+  }
+
+  /** A saved plan with its outcome, or null in its place when that takes longer than the patience. */
+  async within(saved: SavedPlan, patienceMs: number): Promise<OpenPlan<Outcome | null>> {
+    const { id } = saved.plan;
+    return { ...saved, outcome: await this.assessments.outcomeWithin(saved.file, id, patienceMs) };
   }
 
   /**

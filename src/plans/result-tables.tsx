@@ -28,7 +28,12 @@ export function Folded(props: {
 }
 
 export function AmountsAndHolds(props: { readonly assessment: Assessment }): VNode {
-  const { largestAmounts, holdTimes, acts } = props.assessment;
+  const { largestAmounts, holdTimes, acts, zones } = props.assessment;
+  const quantities = new Map(
+    zones.flatMap((zone) =>
+      zone.quantities.map(({ quantity, quantityTitle }) => [quantity, quantityTitle] as const),
+    ),
+  );
   const titleOf = (id: string) => acts.find((act) => act.id === id)?.title ?? id;
   return (
     <>
@@ -54,7 +59,7 @@ export function AmountsAndHolds(props: { readonly assessment: Assessment }): VNo
           columns={words.holdColumns}
           rows={holdTimes.map((row) => [
             row.spaceTitle,
-            row.quantity,
+            quantities.get(row.quantity) ?? row.quantity,
             opened(row.toLevel),
             row.time === null ? (
               row.words

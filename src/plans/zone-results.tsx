@@ -34,26 +34,30 @@ function QuantityTable(props: { readonly zone: ZoneResult }): VNode {
   );
   return (
     <div class="table-frame" role="region" aria-label={zone.title} tabIndex={0}>
-      <table class="dense">
-        <thead>
-          <tr>
-            <th scope="col">{words.what}</th>
-            <th scope="col">{words.standing}</th>
+      <table class="dense stacks" role="table">
+        <thead role="rowgroup">
+          <tr role="row">
+            <th scope="col" role="columnheader">
+              {words.what}
+            </th>
+            <th scope="col" role="columnheader">
+              {words.standing}
+            </th>
             {shown.map((answer) => (
-              <th key={answer} scope="col">
+              <th key={answer} scope="col" role="columnheader">
                 {words.answers[answer]}
               </th>
             ))}
           </tr>
         </thead>
-        <tbody>
+        <tbody role="rowgroup">
           {zone.quantities.map((quantity) => (
-            <tr key={`${quantity.quantity} ${quantity.caseName}`}>
-              <th scope="row">
+            <tr key={`${quantity.quantity} ${quantity.caseName}`} role="row">
+              <th scope="row" role="rowheader">
                 {sentence(quantity.quantityTitle)}
                 <span class="case">{words.cases[quantity.caseName]}</span>
               </th>
-              <td>
+              <td role="cell" class="first">
                 <span class={`standing ${quantity.standing.replace(' ', '-')}`}>
                   {words.standings[quantity.standing]}
                 </span>
@@ -61,7 +65,7 @@ function QuantityTable(props: { readonly zone: ZoneResult }): VNode {
               {shown.map((answer) => {
                 const figure = quantity.answers[answer];
                 return (
-                  <td key={answer}>
+                  <td key={answer} role="cell" data-label={words.answers[answer]}>
                     {figure === undefined ? '\u2013' : <OpenableFigure figure={figure} />}
                   </td>
                 );
@@ -140,12 +144,14 @@ export function ZoneResults(props: {
   const zones = assessment.zones.toSorted(
     (one, other) => Number(governs(governing, other)) - Number(governs(governing, one)),
   );
+  const counted = zones.filter(({ notComputed }) => notComputed === null);
+  const uncounted = zones.filter(({ notComputed }) => notComputed !== null);
   return (
     <section aria-labelledby="zones-title">
       <h2 id="zones-title">{words.zones}</h2>
       <p class="hint">{words.zonesHint}</p>
       <CueKey assessment={assessment} />
-      {zones.map((zone) => {
+      {counted.map((zone) => {
         const standing = gravest(zone);
         const isGoverning = governs(governing, zone);
         return (
@@ -159,37 +165,45 @@ export function ZoneResults(props: {
               )}
             </summary>
             <p class="hint">{zoneFacts(zone)}</p>
-            {zone.notComputed === null ? (
-              <>
-                <QuantityTable zone={zone} />
-                <Levels quantities={zone.quantities} />
-                {zone.quantities.map(
-                  ({ partialPressure, caseName, quantity }) =>
-                    partialPressure && (
-                      <OpenableFigure
-                        key={`${quantity} ${caseName}`}
-                        figure={partialPressure}
-                        label={`${words.partialPressure}, ${words.cases[caseName]}`}
-                      />
-                    ),
-                )}
-                <Crossings quantities={zone.quantities} />
-                <ZoneCurves
-                  planId={planId}
-                  zone={zone}
-                  assessment={assessment}
-                  moment={moment}
-                  isGoverning={isGoverning}
-                />
-              </>
-            ) : (
-              <p>
-                <strong>{words.notComputed}:</strong> {zone.notComputed}
-              </p>
+            <QuantityTable zone={zone} />
+            <Levels quantities={zone.quantities} />
+            {zone.quantities.map(
+              ({ partialPressure, caseName, quantity }) =>
+                partialPressure && (
+                  <OpenableFigure
+                    key={`${quantity} ${caseName}`}
+                    figure={partialPressure}
+                    label={`${words.partialPressure}, ${words.cases[caseName]}`}
+                  />
+                ),
             )}
+            <Crossings quantities={zone.quantities} />
+            <ZoneCurves
+              planId={planId}
+              zone={zone}
+              assessment={assessment}
+              moment={moment}
+              isGoverning={isGoverning}
+            />
           </details>
         );
       })}
+      {uncounted.length > 0 && (
+        <details class="row zone">
+          <summary>
+            <span class="row-title">
+              {words.notComputed} ({String(uncounted.length)})
+            </span>
+          </summary>
+          <ul>
+            {uncounted.map(({ id, title, notComputed }) => (
+              <li key={id}>
+                <strong>{title}:</strong> {notComputed}
+              </li>
+            ))}
+          </ul>
+        </details>
+      )}
     </section>
   );
 }

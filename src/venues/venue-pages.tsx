@@ -191,8 +191,8 @@ export function VenuePage(props: VenuePageProps): VNode {
           <Form action={saved === undefined ? '/venues' : `/venues/${saved.id}`} viewer={viewer}>
             {saved && <input type="hidden" name="version" value={String(saved.version)} />}
             {/* First in the form, so that the Enter key saves. */}
-            <p class="actions save-bar">
-              <button type="submit" name="do" value="save">
+            <p class="actions unseen" aria-hidden="true">
+              <button type="submit" name="do" value="save" tabIndex={-1}>
                 {differences === undefined ? save : words.conflict.saveMine}
               </button>
             </p>

@@ -270,10 +270,10 @@ describe('riskSheet', () => {
     const [block] = partOf(sheet.blocks, 'Conditions').filter((entry) => entry.kind === 'numbered');
     expect(block?.items).toHaveLength(1);
     expect(plain(block?.items[0]?.words ?? '')).toBe(
-      'Container chained. Blocks the start.\nPlayers: leave at oxygen 19.1 %.\nSeats: leave at oxygen 19.2 %; leave at oxygen 19.3 %.',
+      'Container chained. Blocks the start.\nPlayers: leave at oxygen 19.1 % (Bench fog).\nSeats: leave at oxygen 19.2 % (Bench fog); leave at oxygen 19.3 % (Flue pipe in a gas bag).',
     );
     expect(block?.items[0]?.detail).toBe(
-      'On the day: Chain tried. Act: Bench fog; Flue pipe in a gas bag. Conditions 1–3 of the plan, row 4 of the decision table.',
+      'On the day: Chain tried. Conditions 1–3 of the plan, row 4 of the decision table.',
     );
   });
 

@@ -36,6 +36,8 @@ export async function startServer(
     DATABASE_URL: `file:${join(folder, 'stillair.db')}`,
     PORT: '0',
     STILLAIR_EXAMPLES: 'off',
+    // Pages come with their results, however busy the machine is.
+    STILLAIR_PAGE_WAIT: '60',
     ...environment,
   });
   const database = await openDatabase(settings.databaseFile);

@@ -1,7 +1,7 @@
 import type { Assessment, ControlResult } from '../../assessment/assessment.js';
 import type { Block, Words } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { conditionGroups, numberRanges } from './condition-groups.js';
+import { conditionGroups, numberRanges, placeLine } from '../../assessment/condition-groups.js';
 import { actTitle, figureOrDash, figureWords } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
 
@@ -92,7 +92,8 @@ export function conditionsPart(assessment: Assessment, texts: RiskTexts): Block[
         words: [
           { text: group.head, strong: true },
           ...(group.blocksStart ? [{ text: ` ${words.blocks}` }] : []),
-          ...group.details.map((detail) => ({ text: `\n${detail}` })),
+          ...(group.remark === '' ? [] : [{ text: ` ${group.remark}` }]),
+          ...group.places.map((place) => ({ text: `\n${placeLine(place)}.` })),
         ],
         detail: [
           ...group.checklist.map((line) => filledText(words.onTheDay, { line })),

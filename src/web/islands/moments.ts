@@ -122,9 +122,15 @@ function takeOver(form: HTMLFormElement, select: HTMLSelectElement, view: HTMLEl
   follow();
 }
 
-if (typeof document !== 'undefined') {
+function start(): void {
   const form = document.querySelector<HTMLFormElement>('form.moments');
   const select = form?.querySelector('select');
   const view = document.getElementById('moment-view');
   if (form && select && view) takeOver(form, select, view);
+}
+
+if (typeof document !== 'undefined') {
+  start();
+  // Results that come after the page bring their own form.
+  document.addEventListener('results-shown', start);
 }

@@ -65,7 +65,10 @@ export function OpenableFigure(props: {
   );
 }
 
-/** A table that scrolls in its own frame on a narrow screen, and can be scrolled by keyboard. */
+/**
+ * A table whose rows become blocks of labelled values on a narrow screen. The roles keep it a table
+ * for who listens to it; where it is still too wide it scrolls in its own frame, by keyboard too.
+ */
 export function Table(props: {
   readonly caption: string;
   readonly columns: readonly string[];
@@ -78,27 +81,29 @@ export function Table(props: {
   if (props.rows.length === 0 && props.empty !== undefined) return <p>{props.empty}</p>;
   return (
     <div class="table-frame" role="region" aria-label={props.caption} tabIndex={0}>
-      <table>
+      <table class="stacks" role="table">
         <caption>{props.caption}</caption>
-        <thead>
-          <tr>
+        <thead role="rowgroup">
+          <tr role="row">
             {props.columns.map((column) => (
-              <th key={column} scope="col">
+              <th key={column} scope="col" role="columnheader">
                 {column}
               </th>
             ))}
           </tr>
         </thead>
-        <tbody>
+        <tbody role="rowgroup">
           {props.rows.map((cells, row) => (
-            <tr key={row}>
+            <tr key={row} role="row">
               {cells.map((cell, column) =>
                 column === 0 && props.rowHeads === true ? (
-                  <th key={column} scope="row">
+                  <th key={column} scope="row" role="rowheader">
                     {cell}
                   </th>
                 ) : (
-                  <td key={column}>{cell}</td>
+                  <td key={column} role="cell" data-label={props.columns[column]}>
+                    {cell}
+                  </td>
                 ),
               )}
             </tr>
