@@ -231,7 +231,9 @@ describe('two people at once', () => {
     });
     expect(second.status).toBe(409);
     expect(second.text).toContain('Somebody else saved this venue first');
-    expect(second.text).toMatch(/Mean clear height<\/th><td[^>]*>3\u00a0m<\/td><td[^>]*>4\u00a0m<\/td>/);
+    expect(second.text).toMatch(
+      /Mean clear height<\/th><td[^>]*>3\u00a0m<\/td><td[^>]*>4\u00a0m<\/td>/,
+    );
     expect((await stored().get(id)).spaces[0]?.data.heightM).toBe(3);
     const third = await ada.post(`/venues/${id}`, {
       ...room,
