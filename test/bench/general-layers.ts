@@ -2,7 +2,7 @@ import { airModel } from '../../src/science/room-air/air-model.js';
 import type { AirGasTable } from '../../src/science/room-air/air-gases.js';
 import type { AirInput } from '../../src/science/room-air/air-input.js';
 import { flowSegment } from '../../src/science/room-air/air-flows.js';
-import { layerFlows, layerFlowTable } from '../../src/science/room-air/layer-flows.js';
+import { layerFlows, layerFlowTables } from '../../src/science/room-air/layer-flows.js';
 import { layerRates } from '../../src/science/room-air/layer-rates.js';
 import { layerSegment } from '../../src/science/room-air/layer-segment.js';
 import { usualLayers } from '../../src/science/room-air/layer-parameters.js';
@@ -40,10 +40,10 @@ export function layerContest(input: AirInput, gases: AirGasTable) {
       const to = edges[e + 1];
       if (to === undefined) break;
       const segment = layerSegment(network, flowSegment(network.model, from, to, 'pushOut'));
-      const table = layerFlowTable(network, layout);
+      const tables = layerFlowTables(network, layout);
       const work = emptyZoneState(layout);
       const joined = new Set<number>();
-      const flows = layerFlows(network, layout, segment, parameters, joined, table, work);
+      const flows = layerFlows(network, layout, segment, parameters, joined, tables, work);
       const rates = layerRates(network, layout, flows);
       const f = (t: number, now: readonly number[]): number[] => {
         y.set(now);

@@ -42,25 +42,38 @@ export function highestRollingMean(
     return { value: length > 0 ? area / length : (values[0] ?? 0), atS: last };
   }
 
-  const cumulated: number[] = [0];
+  const cumulated = new Float64Array(count);
   for (let i = 1; i < count; i += 1)
-    cumulated.push(at(cumulated, i - 1) + slice(timesS, values, i));
-
-  // The mean is extreme where one edge of the window meets a sample.
-  let best: WindowedMean = { value: -Infinity, atS: last };
-  const consider = (endS: number) => {
-    const startS = endS - windowS;
-    if (startS < first || endS > last) return;
-    const value =
-      (areaUpTo(endS, timesS, values, cumulated) - areaUpTo(startS, timesS, values, cumulated)) /
-      windowS;
-    if (value > best.value) best = { value, atS: endS };
+    cumulated[i] = (cumulated[i - 1] ?? 0) + slice(timesS, values, i);
+  const areaUpTo = (t: number, low: number): number => {
+    const from = at(timesS, low);
+    const width = at(timesS, low + 1) - from;
+    const area = cumulated[low] ?? 0;
+    if (!(width > 0)) return area;
+    const value = at(values, low) + ((t - from) / width) * (at(values, low + 1) - at(values, low));
+    return area + ((at(values, low) + value) / 2) * (t - from);
   };
-  for (const t of timesS) {
-    consider(t);
-    consider(t + windowS);
+
+  // The mean is extreme where one edge of the window meets a sample: both edges only ever move on.
+  let best: WindowedMean = { value: -Infinity, atS: last };
+  let start = 0;
+  let end = 0;
+  let nextStart = 0;
+  let nextEnd = 0;
+  for (;;) {
+    const byStart = at(timesS, nextStart) + windowS;
+    const byEnd = nextEnd < count ? at(timesS, nextEnd) : Infinity;
+    const endS = Math.min(byStart, byEnd);
+    if (!(endS <= last)) return best;
+    if (byStart <= endS) nextStart += 1;
+    if (byEnd <= endS) nextEnd += 1;
+    const startS = endS - windowS;
+    if (startS < first) continue;
+    while (start + 2 < count && at(timesS, start + 1) <= startS) start += 1;
+    while (end + 2 < count && at(timesS, end + 1) <= endS) end += 1;
+    const value = (areaUpTo(endS, end) - areaUpTo(startS, start)) / windowS;
+    if (value > best.value) best = { value, atS: endS };
   }
-  return best;
 }
 
 const at = (list: readonly number[], i: number): number => list[i] ?? 0;
@@ -73,24 +86,4 @@ function integral(timesS: readonly number[], values: readonly number[]): number 
   let area = 0;
   for (let i = 1; i < timesS.length; i += 1) area += slice(timesS, values, i);
   return area;
-}
-
-function areaUpTo(
-  t: number,
-  timesS: readonly number[],
-  values: readonly number[],
-  cumulated: readonly number[],
-): number {
-  let low = 0;
-  let high = timesS.length - 1;
-  while (high - low > 1) {
-    const middle = (low + high) >> 1;
-    if (at(timesS, middle) <= t) low = middle;
-    else high = middle;
-  }
-  const width = at(timesS, high) - at(timesS, low);
-  if (width <= 0) return at(cumulated, high);
-  const share = (t - at(timesS, low)) / width;
-  const value = at(values, low) + share * (at(values, high) - at(values, low));
-  return at(cumulated, low) + ((at(values, low) + value) / 2) * (t - at(timesS, low));
 }

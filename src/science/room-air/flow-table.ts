@@ -14,6 +14,9 @@ export interface FlowTable {
   readonly variable: Int32Array;
   readonly factor: Float64Array;
   variables: number;
+  /** Variables at the state for which the table was made. */
+  readonly start: Float64Array;
+  /** The same at the end of the step last taken. */
   readonly value: Float64Array;
   readonly zoneA: Int32Array;
   readonly slopeA: Float64Array;
@@ -44,6 +47,7 @@ export function flowTable(
     variable: new Int32Array(flows),
     factor: new Float64Array(flows),
     variables: 0,
+    start: new Float64Array(variables),
     value: new Float64Array(variables),
     zoneA: new Int32Array(variables),
     slopeA: new Float64Array(variables),
@@ -95,6 +99,7 @@ export function addVariable(
   slopeB = 0,
 ): void {
   const v = table.variables++;
+  table.start[v] = value;
   table.value[v] = value;
   table.zoneA[v] = zoneA;
   table.slopeA[v] = slopeA;

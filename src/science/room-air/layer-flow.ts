@@ -31,7 +31,7 @@ export function layerGravity(layer: number, above: number): number {
  * Source: own-room-air (critical flow). Assumes: still pool behind the edge. Accuracy: not stated.
  */
 export function weirFlow(widthM: number, gravity: number, headM: number): number {
-  return headM > 0 ? WEIR_CONSTANT * widthM * Math.sqrt(gravity) * headM ** 1.5 : 0;
+  return headM > 0 ? WEIR_CONSTANT * widthM * Math.sqrt(gravity * headM) * headM : 0;
 }
 
 /**
@@ -143,7 +143,7 @@ export function grilleIntake(grille: LowGrille, gravity: number, depthM: number)
   const plug = grille.flowM3PerS * Math.min(depthM / grille.topM, 1);
   const radius = grilleRadius(grille.flowM3PerS, gravity, depthM);
   const limit =
-    GRILLE_CONSTANT * (grille.widthM + Math.PI * radius) * Math.sqrt(gravity) * depthM ** 1.5;
+    GRILLE_CONSTANT * (grille.widthM + Math.PI * radius) * Math.sqrt(gravity * depthM) * depthM;
   return Math.min(plug, limit);
 }
 

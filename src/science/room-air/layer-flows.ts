@@ -4,9 +4,17 @@ import { flowsWithNet } from './doorway.js';
 import { edgeDilution } from './gravity-current.js';
 import { rectangularFloorExchange } from './floor-opening.js';
 import { addFlow, addSharedFlow, addVariable, flowTable, type FlowTable } from './flow-table.js';
+import type { OpenLink } from './air-flows.js';
+import { fixedFlows, writePressures } from './layer-fixed-flows.js';
 import { basinArea } from './layer-geometry.js';
 import { grilleIntake, jetErosion, turbulentExchange, WEIR_CONSTANT } from './layer-flow.js';
-import type { LayerNetwork, LayerSource, LayerWeir } from './layer-network.js';
+import type {
+  LayerIntake,
+  LayerNetwork,
+  LayerSource,
+  LayerSupply,
+  LayerWeir,
+} from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import type { LayerSegment } from './layer-segment.js';
 import { readDensities, type ZoneLayout, type ZoneState } from './layer-zones.js';
@@ -26,14 +34,29 @@ const BIRTH_CONTRAST = 5;
 export interface LayerFlows {
   /** Flows at a state, for a step from t to t + h; h 0: the rates of this moment. */
   at(t: number, h: number, state: Float64Array): FlowTable;
+  /**
+   * The same at the start of steps: worked out once for each t, as the parts of a step and a second,
+   * shorter try begin at the same state. `at` leaves this table alone.
+   */
+  fromStart(t: number, h: number, state: Float64Array): FlowTable;
   /** Number of outdoors where a flow begins or ends. */
   readonly outdoors: number;
   /** Whether a source or another layer feeds a layer, at the state last asked. */
   isFed(layer: number): boolean;
 }
 
-/** A table that holds all flows that any segment of a network may have. */
-export function layerFlowTable(network: LayerNetwork, layout: ZoneLayout): FlowTable {
+/** Work space for the flows of any segment of a network. */
+export interface LayerFlowTables {
+  readonly inside: FlowTable;
+  readonly start: FlowTable;
+}
+
+/** Tables that hold all flows that any segment of a network may have. */
+export function layerFlowTables(network: LayerNetwork, layout: ZoneLayout): LayerFlowTables {
+  return { inside: layerFlowTable(network, layout), start: layerFlowTable(network, layout) };
+}
+
+function layerFlowTable(network: LayerNetwork, layout: ZoneLayout): FlowTable {
   const { airSystems = [], transfers = [], openings = [] } = network.model.input;
   const n = network.model.spaces.length;
   const served = airSystems.reduce((sum, one) => sum + (one.serves?.length ?? 1), 0);
@@ -67,9 +90,9 @@ export function layerFlowTable(network: LayerNetwork, layout: ZoneLayout): FlowT
  * @param segment    what stays the same between the edges
  * @param parameters what the run assumes
  * @param joined     spaces that have become one mixed zone
- * @param table      work space (layerFlowTable), written by every call
+ * @param tables     work space (layerFlowTables), written by every call
  * @param zones      work space (emptyZoneState), its molar masses and depths written by every call
- * @returns flows by state; the same table every call
+ * @returns flows by state; the same two tables every call
  * Source: own-room-air (recommended layer model), robins-2001 for the exchange. Assumes: level
  * layers, one temperature in the density differences of layers. Accuracy: scenario spread, never
  * one number.
@@ -80,24 +103,37 @@ export function layerFlows(
   segment: LayerSegment,
   parameters: LayerParameters,
   joined: ReadonlySet<number>,
-  table: FlowTable,
+  tables: LayerFlowTables,
   zones: ZoneState,
 ): LayerFlows {
   const { k, layers, held } = layout;
   const { model, components, floorLayerOf, ceilingLayerOf } = network;
   const n = model.spaces.length;
   const outdoors = layout.zones;
-  const { flows, units } = segment;
+  const { flows } = segment;
   const { molarMasses, depths } = zones;
   const air = network.airMolarMassKgPerMol;
+  const fixed = fixedFlows(network, layout, segment, parameters.surplusFromLayer);
   const fed = new Uint8Array(layers);
   const net = new Float64Array(n);
   const pressure = new Float64Array(n);
-  let state = new Float64Array(0);
+  const inside = { table: tables.inside, smears: noSmears(layers) };
+  const start = { table: tables.start, smears: noSmears(layers) };
+  for (const { table } of [inside, start]) {
+    table.count = 0;
+    for (const [i, flow] of fixed.sizes.entries()) {
+      addFlow(table, fixed.from[i] ?? 0, fixed.to[i] ?? 0, flow);
+    }
+  }
+  const fixedCount = inside.table.count;
+  let { table, smears } = inside;
+  let state: Float64Array = new Float64Array(0);
+  let startS = Number.NaN;
 
   const upperOf = (space: number): number => layers + (network.groupOf[space] ?? 0);
+  const isJoined = (space: number): boolean => joined.size > 0 && joined.has(space);
   const layerIn = (space: number, list: readonly number[]): number =>
-    joined.has(space) ? -1 : (list[space] ?? -1);
+    isJoined(space) ? -1 : (list[space] ?? -1);
   const volume = (layer: number): number => state[layer] ?? 0;
   const areaAt = (layer: number): number => {
     const basin = network.layers[layer]?.basin;
@@ -140,7 +176,7 @@ export function layerFlows(
   const addRelease = (source: LayerSource, q: number): void => {
     const { plan } = source;
     const upper = upperOf(plan.space);
-    const layer = source.layer >= 0 && !joined.has(plan.space) ? source.layer : -1;
+    const layer = source.layer >= 0 && !isJoined(plan.space) ? source.layer : -1;
     const to = layer >= 0 ? layer : upper;
     for (const { column, share } of source.columns) {
       addSource(to, column, q * share);
@@ -164,22 +200,35 @@ export function layerFlows(
     addFlow(table, upper, layer, entrained);
   };
 
+  /**
+   * Air that diffusion takes into a layer over a step of some length [m3/s]. h^2 grows evenly while a
+   * layer only smears, so the mean over the step is known exactly.
+   */
+  const smearFlow = (layer: number, area: number, mean: number, h: number): number => {
+    const depth = Math.max(mean, LEAST_SMEAR_DEPTH_M);
+    const growth = Math.PI * (network.layers[layer]?.diffusivityM2PerS ?? 0);
+    const deeper =
+      h > 0 ? (Math.sqrt(depth * depth + growth * h) - depth) / h : growth / (2 * depth);
+    return area * deeper;
+  };
   const addMixing = (h: number): void => {
+    smears.count = 0;
     for (let l = 0; l < layers; l++) {
-      const layer = network.layers[l];
-      if (!layer || joined.has(layer.space)) continue;
       if (volume(l) <= 0 && fed[l] === 0) continue;
+      const layer = network.layers[l];
+      if (!layer || isJoined(layer.space)) continue;
       const upper = layers + layer.group;
       const area = areaAt(l);
       if (area <= 0) continue;
       const mean = volume(l) / area;
-      if (parameters.diffusion > 0) {
-        // h^2 grows evenly while a layer only smears, so the mean over the step is known exactly.
-        const depth = Math.max(mean, LEAST_SMEAR_DEPTH_M);
-        const growth = Math.PI * layer.diffusivityM2PerS;
-        const deeper =
-          h > 0 ? (Math.sqrt(depth * depth + growth * h) - depth) / h : growth / (2 * depth);
-        addFlow(table, upper, l, area * deeper);
+      const deeper = parameters.diffusion > 0 ? smearFlow(l, area, mean, h) : 0;
+      if (deeper > 0) {
+        const i = smears.count++;
+        smears.flow[i] = table.count;
+        smears.layer[i] = l;
+        smears.areaM2[i] = area;
+        smears.meanM[i] = mean;
+        addFlow(table, upper, l, deeper);
       }
       const gPrime = (GRAVITY_M_PER_S2 * excess(l, upper)) / air;
       const exchange =
@@ -191,10 +240,10 @@ export function layerFlows(
   };
 
   const addOutwardWeir = (weir: LayerWeir): void => {
-    const layer = network.layers[weir.a];
-    if (!layer || joined.has(layer.space)) return;
     const depth = (depths[weir.a] ?? 0) - weir.sillA;
     if (depth <= 0) return;
+    const layer = network.layers[weir.a];
+    if (!layer || isJoined(layer.space)) return;
     const head = Math.min(depth, weir.heightM);
     const sign = layer.side === 'ceiling' ? -1 : 1;
     const difference = Math.max(
@@ -205,9 +254,10 @@ export function layerFlows(
       (weir.dischargeCoefficient / 3) *
       weir.widthM *
       smoothRoot((GRAVITY_M_PER_S2 * difference) / air);
-    const flow = speed * head ** 1.5;
+    const root = Math.sqrt(head);
+    const flow = speed * head * root;
     if (flow <= 0) return;
-    const slope = depth < weir.heightM ? (1.5 * speed * Math.sqrt(head)) / areaAt(weir.a) : 0;
+    const slope = depth < weir.heightM ? (1.5 * speed * root) / areaAt(weir.a) : 0;
     // What leaves through the lower part of an opening comes back as air through the rest.
     addVariable(table, flow, weir.a, Math.max(slope, flow / volume(weir.a)), Infinity);
     addSharedFlow(table, weir.a, outdoors, 0, 1);
@@ -222,8 +272,9 @@ export function layerFlows(
     if (head <= 0 || volume(layer) <= 0) return;
     const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
     const speed = WEIR_CONSTANT * weir.widthM * smoothRoot(gravity);
-    own.flow = speed * head ** 1.5;
-    own.slope = Math.max((1.5 * speed * Math.sqrt(head)) / areaAt(layer), own.flow / volume(layer));
+    const root = Math.sqrt(head);
+    own.flow = speed * head * root;
+    own.slope = Math.max((1.5 * speed * root) / areaAt(layer), own.flow / volume(layer));
   };
   /**
    * Most that a hole in a floor lets pour down [m3/s]: as through any hole where the air below has
@@ -239,16 +290,17 @@ export function layerFlows(
     return Math.max(both, spread.mode * area * Math.sqrt(2 * gPrime * Math.max(0, head)));
   };
   const addWeir = (weir: LayerWeir): void => {
+    if (volume(weir.a) <= 0 && volume(weir.b) <= 0) return;
     const first = network.layers[weir.a];
     const second = network.layers[weir.b];
     if (!first || !second) return;
     const upperA = layers + first.group;
     const upperB = layers + second.group;
-    if (joined.has(first.space)) own.flow = own.slope = 0;
+    if (isJoined(first.space)) own.flow = own.slope = 0;
     else readOwn(weir, weir.a, upperB, weir.sillA);
     const flowA = own.flow;
     const slopeA = own.slope;
-    if (joined.has(second.space)) own.flow = own.slope = 0;
+    if (isJoined(second.space)) own.flow = own.slope = 0;
     else readOwn(weir, weir.b, upperA, weir.sillB);
     const flow = flowA - own.flow;
     if (flow === 0) return;
@@ -265,8 +317,7 @@ export function layerFlows(
     // Below some contrast any draught decides, not the gas: what comes over the edge then mixes.
     const least = volume(receiver) > 0 ? 1 : BIRTH_CONTRAST;
     const isWeak = excess(donor, receiverUpper) < least * parameters.joinContrast * air;
-    const target =
-      isWeak || joined.has((forward ? second : first).space) ? receiverUpper : receiver;
+    const target = isWeak || isJoined((forward ? second : first).space) ? receiverUpper : receiver;
     const donorSlope = forward ? slopeA : own.slope;
     const receiverSlope = forward ? own.slope : slopeA;
     addVariable(
@@ -290,151 +341,171 @@ export function layerFlows(
     addFlow(table, receiverUpper, receiver, parameters.fallEntrainment * Math.max(0, plume - size));
   };
 
-  const addUnits = (): void => {
-    for (const intake of units.intakes) {
-      const total = intake.grille.flowM3PerS;
-      if (total <= 0) continue;
-      const upper = upperOf(intake.space);
-      const mixer = held + intake.system;
-      const outdoorShare = intake.outdoorM3PerS / total;
-      const list = intake.level === 'low' ? floorLayerOf : ceilingLayerOf;
-      const layer = intake.level === 'mixed' ? -1 : layerIn(intake.space, list);
-      const full = layer >= 0 ? volume(layer) : 0;
-      let fromLayer = 0;
-      if (full > 0) {
-        const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
-        fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0);
-      }
-      if (fromLayer <= 0) {
-        addFlow(table, upper, outdoors, total * outdoorShare);
-        addFlow(table, upper, mixer, total * (1 - outdoorShare));
-        continue;
-      }
-      // Between plug flow and the thin-layer limit the intake grows with depth to the power 1.25.
-      const slope = fromLayer < total ? (1.25 * fromLayer) / full : fromLayer / full;
-      addVariable(table, fromLayer, layer, slope, total);
-      addSharedFlow(table, layer, outdoors, 0, outdoorShare);
-      addSharedFlow(table, layer, mixer, 0, 1 - outdoorShare);
-      addSharedFlow(table, upper, outdoors, total * outdoorShare, -outdoorShare);
-      addSharedFlow(table, upper, mixer, total * (1 - outdoorShare), outdoorShare - 1);
+  const addIntake = (intake: LayerIntake): void => {
+    const total = intake.grille.flowM3PerS;
+    const upper = upperOf(intake.space);
+    const mixer = held + intake.system;
+    const outdoorShare = intake.outdoorM3PerS / total;
+    const layer = layerIn(intake.space, intake.level === 'low' ? floorLayerOf : ceilingLayerOf);
+    const full = layer >= 0 ? volume(layer) : 0;
+    let fromLayer = 0;
+    if (full > 0) {
+      const gravity = (GRAVITY_M_PER_S2 * excess(layer, upper)) / (molarMasses[layer] ?? air);
+      fromLayer = grilleIntake(intake.grille, gravity, depths[layer] ?? 0);
     }
-    for (const supply of units.supplies) {
-      const layer = supply.level === 'low' ? layerIn(supply.space, floorLayerOf) : -1;
-      const to = layer >= 0 && volume(layer) > 0 ? layer : upperOf(supply.space);
-      addFlow(table, outdoors, to, supply.freshM3PerS);
-      addFlow(table, held + supply.system, to, supply.recirculatedM3PerS);
-      if (supply.jet === undefined) continue;
-      const below = layerIn(supply.space, floorLayerOf);
-      if (below < 0 || volume(below) <= 0) continue;
-      const upper = upperOf(supply.space);
-      const gPrime = (GRAVITY_M_PER_S2 * excess(below, upper)) / air;
-      const flow =
-        parameters.jets *
-        jetErosion(supply.jet.radiusM, supply.jet.speedMPerS, gPrime) *
-        Math.min(1, (depths[below] ?? 0) / RAMP_M);
-      if (flow <= 0) continue;
-      addVariable(table, flow, below, flow / volume(below), Infinity);
-      addSharedFlow(table, below, upper, 0, 1);
+    if (fromLayer <= 0) {
+      addFlow(table, upper, outdoors, total * outdoorShare);
+      addFlow(table, upper, mixer, total * (1 - outdoorShare));
+      return;
     }
+    // Between plug flow and the thin-layer limit the intake grows with depth to the power 1.25.
+    const slope = fromLayer < total ? (1.25 * fromLayer) / full : fromLayer / full;
+    addVariable(table, fromLayer, layer, slope, total);
+    addSharedFlow(table, layer, outdoors, 0, outdoorShare);
+    addSharedFlow(table, layer, mixer, 0, 1 - outdoorShare);
+    addSharedFlow(table, upper, outdoors, total * outdoorShare, -outdoorShare);
+    addSharedFlow(table, upper, mixer, total * (1 - outdoorShare), outdoorShare - 1);
+  };
+  const addSupply = (supply: LayerSupply): void => {
+    const below = layerIn(supply.space, floorLayerOf);
+    const isThere = below >= 0 && volume(below) > 0;
+    const upper = upperOf(supply.space);
+    const to = supply.level === 'low' && isThere ? below : upper;
+    addFlow(table, outdoors, to, supply.freshM3PerS);
+    addFlow(table, held + supply.system, to, supply.recirculatedM3PerS);
+    if (supply.jet === undefined || !isThere) return;
+    const gPrime = (GRAVITY_M_PER_S2 * excess(below, upper)) / air;
+    const flow =
+      parameters.jets *
+      jetErosion(supply.jet.radiusM, supply.jet.speedMPerS, gPrime) *
+      Math.min(1, (depths[below] ?? 0) / RAMP_M);
+    if (flow <= 0) return;
+    addVariable(table, flow, below, flow / volume(below), Infinity);
+    addSharedFlow(table, below, upper, 0, 1);
   };
 
+  /** What people take from a layer that reaches their mouths, and no longer from the air above. */
   const addPeople = (): void => {
-    for (const one of segment.breath) {
-      const layer = one.heightM === undefined ? -1 : layerIn(one.space, floorLayerOf);
-      const inside =
-        layer >= 0 && one.heightM !== undefined && volume(layer) > 0
-          ? Math.min(1, Math.max(0, ((depths[layer] ?? 0) - one.heightM) / RAMP_M))
-          : 0;
-      for (let i = 0; i < 2; i++) {
-        const zone = i === 0 ? upperOf(one.space) : layer;
-        const share = i === 0 ? 1 - inside : inside;
-        if (zone < 0 || share <= 0) continue;
-        addSource(zone, 1, share * one.carbonDioxide);
-        addSource(zone, 0, -share * one.oxygen);
-        addVolume(zone, share * (one.carbonDioxide - one.oxygen));
-      }
-      table.into[1] = (table.into[1] ?? 0) + one.carbonDioxide;
-      table.out[0] = (table.out[0] ?? 0) + one.oxygen;
+    for (const one of fixed.breath) {
+      const layer = layerIn(one.space, floorLayerOf);
+      if (layer < 0 || volume(layer) <= 0) continue;
+      const share = Math.min(1, ((depths[layer] ?? 0) - (one.heightM ?? 0)) / RAMP_M);
+      if (share <= 0) continue;
+      const upper = upperOf(one.space);
+      const carbonDioxide = share * one.carbonDioxide;
+      const oxygen = share * one.oxygen;
+      addSource(layer, 1, carbonDioxide);
+      addSource(layer, 0, -oxygen);
+      addVolume(layer, carbonDioxide - oxygen);
+      addSource(upper, 1, -carbonDioxide);
+      addSource(upper, 0, oxygen);
+      addVolume(upper, oxygen - carbonDioxide);
     }
   };
 
-  const densityOf = (space: number): number => {
-    const { pressurePa, temperatureK } = model.input.ambient;
-    const molar =
-      space < n ? (molarMasses[upperOf(space)] ?? air) : network.outdoorMolarMassKgPerMol;
-    const at = model.spaces[space]?.temperatureK ?? temperatureK;
-    return (molar * pressurePa) / (MOLAR_GAS_CONSTANT * at);
-  };
+  const { pressurePa, temperatureK } = model.input.ambient;
+  /** Density of a space or outdoors over the molar mass of its upper air [mol/m3]. */
+  const molarDensity = Float64Array.from(
+    { length: n + 1 },
+    (_, i) => pressurePa / (MOLAR_GAS_CONSTANT * (model.spaces[i]?.temperatureK ?? temperatureK)),
+  );
+  const densityOf = (space: number): number =>
+    (molarDensity[space] ?? 0) *
+    (space < n ? (molarMasses[upperOf(space)] ?? air) : network.outdoorMolarMassKgPerMol);
   const pass = (from: number, to: number, flow: number): void => {
     if (from >= n) addFlow(table, outdoors, upperOf(to), flow);
     else leave(from, to >= n ? outdoors : upperOf(to), flow);
   };
-  const addNeighbours = (t: number, h: number): void => {
+  const addLink = (link: OpenLink, through: number): void => {
+    const { a, b } = link;
+    const densityA = densityOf(a);
+    const densityB = densityOf(b);
+    if (link.floorHole) {
+      const gPrime = (2 * GRAVITY_M_PER_S2 * (densityA - densityB)) / (densityA + densityB);
+      const { widthM, lengthM } = link.floorHole;
+      const both = flowsWithNet(rectangularFloorExchange(widthM, lengthM, gPrime), through);
+      pass(a, b, both.outM3PerS);
+      pass(b, a, both.inM3PerS);
+    } else {
+      const both = verticalOpeningFlows(link.vertical, densityA, densityB, through);
+      pass(a, b, both.aToBM3PerS);
+      pass(b, a, both.bToAM3PerS);
+    }
+  };
+  /** Pressures and leaks while a release changes by itself; else they are among the fixed flows. */
+  const addLeaks = (t: number, h: number): void => {
     net.set(flows.net);
     for (const source of segment.sources) {
       if (source.plan.decayS === undefined) continue;
       const { space } = source.plan;
       net[space] = (net[space] ?? 0) + sourceFlow(source, t, h);
     }
+    writePressures(segment, net, pressure);
     for (let i = 0; i < n; i++) {
-      let value = 0;
-      for (let j = 0; j < n; j++) {
-        value += (flows.pressures[i * n + j] ?? 0) * (net[j] ?? 0);
-      }
-      pressure[i] = value;
-      const leak = value * (flows.leakM2[i] ?? 0);
+      const leak = (pressure[i] ?? 0) * (flows.leakM2[i] ?? 0);
       if (leak > 0) leave(i, outdoors, leak);
       else addFlow(table, outdoors, upperOf(i), -leak);
-      addFlow(table, outdoors, upperOf(i), segment.infiltration[i] ?? 0);
     }
-    for (const { from, to, flow } of segment.transfers) {
-      if (from >= 0) leave(from, to >= 0 ? upperOf(to) : outdoors, flow);
-      else if (to >= 0) addFlow(table, outdoors, upperOf(to), flow);
+  };
+
+  const write = (into: typeof inside, t: number, h: number, now: Float64Array): FlowTable => {
+    ({ table, smears } = into);
+    state = now;
+    table.count = fixedCount;
+    table.variables = 0;
+    table.volumeSource.set(fixed.volumeSource);
+    table.amountSource.set(fixed.amountSource);
+    table.into.set(fixed.into);
+    table.out.set(fixed.out);
+    fed.fill(0);
+    readDensities(network, layout, segment.excess, state, zones);
+    for (const source of fixed.sources) addRelease(source, sourceFlow(source, t, h));
+    for (const weir of segment.weirs) {
+      if (weir.b < 0) addOutwardWeir(weir);
+      else addWeir(weir);
     }
-    for (const link of flows.links) {
-      const { a, b } = link;
-      const through = link.conductanceM2 * ((pressure[a] ?? 0) - (pressure[b] ?? 0));
-      if (a < n && b < n && upperOf(a) === upperOf(b)) continue;
-      const densityA = densityOf(a);
-      const densityB = densityOf(b);
-      if (link.floorHole) {
-        const gPrime = (2 * GRAVITY_M_PER_S2 * (densityA - densityB)) / (densityA + densityB);
-        const { widthM, lengthM } = link.floorHole;
-        const both = flowsWithNet(rectangularFloorExchange(widthM, lengthM, gPrime), through);
-        pass(a, b, both.outM3PerS);
-        pass(b, a, both.inM3PerS);
-      } else {
-        const both = verticalOpeningFlows(link.vertical, densityA, densityB, through);
-        pass(a, b, both.aToBM3PerS);
-        pass(b, a, both.bToAM3PerS);
-      }
+    addMixing(h);
+    for (const intake of fixed.intakes) addIntake(intake);
+    for (const supply of fixed.supplies) addSupply(supply);
+    addPeople();
+    for (const { space, to, flow } of fixed.surplus) leave(space, to, flow);
+    if (!fixed.isSteady) addLeaks(t, h);
+    for (const { link, through } of fixed.links) {
+      const net = fixed.isSteady
+        ? through
+        : link.conductanceM2 * ((pressure[link.a] ?? 0) - (pressure[link.b] ?? 0));
+      addLink(link, net);
     }
+    return table;
   };
 
   return {
     outdoors,
     isFed: (layer) => fed[layer] === 1,
-    at: (t, h, now) => {
-      state = now as Float64Array<ArrayBuffer>;
-      table.count = 0;
-      table.variables = 0;
-      table.volumeSource.fill(0);
-      table.amountSource.fill(0);
-      table.into.fill(0);
-      table.out.fill(0);
-      fed.fill(0);
-      readDensities(network, layout, segment.excess, state, zones);
-      for (const source of segment.sources) addRelease(source, sourceFlow(source, t, h));
-      for (const weir of segment.weirs) {
-        if (weir.b < 0) addOutwardWeir(weir);
-        else addWeir(weir);
+    at: (t, h, now) => write(inside, t, h, now),
+    fromStart: (t, h, now) => {
+      if (t !== startS || !fixed.isSteady) {
+        startS = t;
+        return write(start, t, h, now);
       }
-      addMixing(h);
-      addUnits();
-      addPeople();
-      addNeighbours(t, h);
-      return table;
+      // Of a state only what smears depends on the length of the step.
+      const { flow, layer, areaM2, meanM } = start.smears;
+      for (let i = 0; i < start.smears.count; i++) {
+        start.table.base[flow[i] ?? 0] = smearFlow(layer[i] ?? 0, areaM2[i] ?? 0, meanM[i] ?? 0, h);
+      }
+      return start.table;
     },
+  };
+}
+
+/** Flows by which layers smear: their place in a table, and what they depend on. */
+function noSmears(layers: number) {
+  return {
+    count: 0,
+    flow: new Int32Array(layers),
+    layer: new Int32Array(layers),
+    areaM2: new Float64Array(layers),
+    meanM: new Float64Array(layers),
   };
 }
 

@@ -1,4 +1,4 @@
-import { flowSize, type FlowTable } from './flow-table.js';
+import type { FlowTable } from './flow-table.js';
 import type { ZoneLayout } from './layer-zones.js';
 
 /** A zone that holds less and lets through less than this counts as empty [m3]. */
@@ -31,77 +31,109 @@ export function implicitStep(layout: ZoneLayout, outdoor: Float64Array): Implici
   const { k, layers, held, zones, amounts } = layout;
   const slope = new Float64Array(layers * layers);
   const growth = new Float64Array(layers);
+  /** Place of a layer among those that drive a variable, -1 for the others. */
+  const driver = new Int32Array(layers).fill(-1);
+  const drivers = new Int32Array(layers);
   const matrix = new Float64Array(zones * zones);
   const right = new Float64Array(zones * k);
   const order = new Int32Array(zones);
-  const place = new Int32Array(zones);
+  const filled = new Int32Array(zones);
   const outflow = new Float64Array(zones);
   const inflow = new Float64Array(zones);
-  const share = new Float64Array(zones);
-  let moved = new Float64Array(0);
-  let from = new Int32Array(0);
-  let to = new Int32Array(0);
+  const arrived = new Float64Array(zones);
+  const departed = new Float64Array(zones);
+  const airParts = Int32Array.from(outdoor.keys()).filter((c) => (outdoor[c] ?? 0) !== 0);
 
+  /** Brings the variables to where they are at the end of the step, by the layers that drive them. */
   const updateVariables = (table: FlowTable, h: number): void => {
-    if (table.variables === 0 || layers === 0) return;
-    growth.fill(0);
-    slope.fill(0);
+    const { variables, zoneA, zoneB, slopeA, slopeB, start, value } = table;
+    if (variables === 0) return;
+    let n = 0;
+    const drive = (layer: number): void => {
+      if (layer < 0 || (driver[layer] ?? 0) >= 0) return;
+      driver[layer] = n;
+      drivers[n++] = layer;
+    };
+    for (let v = 0; v < variables; v++) {
+      drive(zoneA[v] ?? -1);
+      drive(zoneB[v] ?? -1);
+    }
+    slope.fill(0, 0, n * n);
+    for (let r = 0; r < n; r++) {
+      growth[r] = h * (table.volumeSource[drivers[r] ?? 0] ?? 0);
+      slope[r * n + r] = 1;
+    }
     for (let i = 0; i < table.count; i++) {
       const from = table.from[i] ?? 0;
       const to = table.to[i] ?? 0;
-      if (from >= layers && to >= layers) continue;
-      const size = flowSize(table, i);
+      const leaving = from < layers ? (driver[from] ?? -1) : -1;
+      const entering = to < layers ? (driver[to] ?? -1) : -1;
+      if (leaving < 0 && entering < 0) continue;
       const v = table.variable[i] ?? -1;
-      const a = v < 0 ? -1 : (table.zoneA[v] ?? -1);
-      const b = v < 0 ? -1 : (table.zoneB[v] ?? -1);
       const factor = v < 0 ? 0 : h * (table.factor[i] ?? 0);
-      const byA = factor * (table.slopeA[v] ?? 0);
-      const byB = b < 0 ? 0 : factor * (table.slopeB[v] ?? 0);
-      for (let side = 0; side < 2; side++) {
-        const row = side === 0 ? from : to;
-        if (row >= layers) continue;
-        const sign = side === 0 ? -1 : 1;
-        growth[row] = (growth[row] ?? 0) + sign * h * size;
-        if (a >= 0) slope[row * layers + a] = (slope[row * layers + a] ?? 0) - sign * byA;
-        if (b >= 0) slope[row * layers + b] = (slope[row * layers + b] ?? 0) - sign * byB;
+      const size = h * (table.base[i] ?? 0) + (v < 0 ? 0 : factor * (start[v] ?? 0));
+      if (leaving >= 0) growth[leaving] = (growth[leaving] ?? 0) - size;
+      if (entering >= 0) growth[entering] = (growth[entering] ?? 0) + size;
+      if (v < 0) continue;
+      const a = driver[zoneA[v] ?? 0] ?? 0;
+      const byA = factor * (slopeA[v] ?? 0);
+      const zone = zoneB[v] ?? -1;
+      const b = zone < 0 ? a : (driver[zone] ?? 0);
+      const byB = zone < 0 ? 0 : factor * (slopeB[v] ?? 0);
+      if (leaving >= 0) {
+        slope[leaving * n + a] = (slope[leaving * n + a] ?? 0) + byA;
+        slope[leaving * n + b] = (slope[leaving * n + b] ?? 0) + byB;
+      }
+      if (entering >= 0) {
+        slope[entering * n + a] = (slope[entering * n + a] ?? 0) - byA;
+        slope[entering * n + b] = (slope[entering * n + b] ?? 0) - byB;
       }
     }
-    for (let l = 0; l < layers; l++) {
-      growth[l] = (growth[l] ?? 0) + h * (table.volumeSource[l] ?? 0);
-      slope[l * layers + l] = (slope[l * layers + l] ?? 0) + 1;
+    for (let r = 0; r < n; r++) order[r] = r;
+    eliminate(slope, growth, n, n, 1, order, filled);
+    for (let v = 0; v < variables; v++) {
+      const zone = zoneB[v] ?? -1;
+      let flow = (start[v] ?? 0) + (slopeA[v] ?? 0) * (growth[driver[zoneA[v] ?? 0] ?? 0] ?? 0);
+      if (zone >= 0) flow += (slopeB[v] ?? 0) * (growth[driver[zone] ?? 0] ?? 0);
+      // Only a weir between two layers may turn round inside a step.
+      if (zone < 0 && flow < 0) flow = 0;
+      const most = table.most[v] ?? 0;
+      value[v] = flow > most ? most : flow;
     }
-    eliminate(slope, growth, layers, 1);
-    for (let v = 0; v < table.variables; v++) {
-      const a = table.zoneA[v] ?? -1;
-      const b = table.zoneB[v] ?? -1;
-      const change =
-        (table.slopeA[v] ?? 0) * (growth[a] ?? 0) +
-        (b < 0 ? 0 : (table.slopeB[v] ?? 0) * (growth[b] ?? 0));
-      const flow = (table.value[v] ?? 0) + change;
-      table.value[v] = Math.min(table.most[v] ?? 0, Math.max(b < 0 ? 0 : -Infinity, flow));
-    }
+    for (let r = 0; r < n; r++) driver[drivers[r] ?? 0] = -1;
   };
 
   /** Volumes moved in the step, each from where it comes: a weir may turn round inside it. */
   const readMoved = (table: FlowTable, h: number): void => {
-    if (moved.length < table.count) {
-      moved = new Float64Array(2 * table.count);
-      from = new Int32Array(2 * table.count);
-      to = new Int32Array(2 * table.count);
-    }
     inflow.fill(0);
     outflow.fill(0);
+    arrived.fill(0);
+    departed.fill(0);
+    matrix.fill(0);
     for (let i = 0; i < table.count; i++) {
-      const size = h * flowSize(table, i);
-      const forward = size >= 0;
-      const a = (forward ? table.from[i] : table.to[i]) ?? 0;
-      const b = (forward ? table.to[i] : table.from[i]) ?? 0;
-      const volume = Math.abs(size);
-      from[i] = a;
-      to[i] = b;
-      moved[i] = volume;
-      if (a < zones) outflow[a] = (outflow[a] ?? 0) + volume;
-      if (b < zones) inflow[b] = (inflow[b] ?? 0) + volume;
+      let from = table.from[i] ?? 0;
+      let to = table.to[i] ?? 0;
+      const v = table.variable[i] ?? -1;
+      let size = table.base[i] ?? 0;
+      if (v >= 0) size += (table.factor[i] ?? 0) * (table.value[v] ?? 0);
+      if (size < 0) {
+        size = -size;
+        const turned = from;
+        from = to;
+        to = turned;
+      }
+      const volume = h * size;
+      if (from < zones) outflow[from] = (outflow[from] ?? 0) + volume;
+      else arrived[to] = (arrived[to] ?? 0) + volume;
+      if (to >= zones) {
+        departed[from] = (departed[from] ?? 0) + volume;
+        continue;
+      }
+      inflow[to] = (inflow[to] ?? 0) + volume;
+      if (from < zones) {
+        const at = to * zones + from;
+        matrix[at] = (matrix[at] ?? 0) - volume;
+      }
     }
   };
 
@@ -110,73 +142,54 @@ export function implicitStep(layout: ZoneLayout, outdoor: Float64Array): Implici
     readMoved(table, h);
     let count = 0;
     for (let z = 0; z < zones; z++) {
-      const before = z < held ? (state[z] ?? 0) : 0;
-      const source = z < held ? h * (table.volumeSource[z] ?? 0) : 0;
-      const full = before + (inflow[z] ?? 0) + source;
+      let full = inflow[z] ?? 0;
       if (z < held) {
+        full += (state[z] ?? 0) + h * (table.volumeSource[z] ?? 0);
         const left = full - (outflow[z] ?? 0);
         if (left < -NOTHING_M3) return false;
-        next[z] = Math.max(0, left);
+        next[z] = left > 0 ? left : 0;
       }
-      if (full <= NOTHING_M3) {
-        place[z] = -1;
-        if (z >= held) continue;
-        next[z] = before;
-        for (let c = 0; c < k; c++) next[amounts + z * k + c] = state[amounts + z * k + c] ?? 0;
-        continue;
-      }
-      place[z] = count;
-      order[count] = z;
-      share[count] = full;
-      count++;
-    }
-    matrix.fill(0, 0, count * count);
-    for (let r = 0; r < count; r++) {
-      const z = order[r] ?? 0;
-      matrix[r * count + r] = share[r] ?? 0;
-      for (let c = 0; c < k; c++) {
-        right[r * k + c] =
-          z < held
-            ? (state[amounts + z * k + c] ?? 0) + h * (table.amountSource[z * k + c] ?? 0)
-            : 0;
+      if (full > NOTHING_M3) {
+        order[count++] = z;
+        matrix[z * zones + z] = full;
+      } else if (z < held) {
+        next[z] = state[z] ?? 0;
+        const from = amounts + z * k;
+        for (let at = from; at < from + k; at++) next[at] = state[at] ?? 0;
       }
     }
     for (let c = 0; c < k; c++) {
       next[layout.out + c] = (state[layout.out + c] ?? 0) + h * (table.out[c] ?? 0);
       next[layout.into + c] = (state[layout.into + c] ?? 0) + h * (table.into[c] ?? 0);
     }
-    for (let i = 0; i < table.count; i++) {
-      const b = to[i] ?? 0;
-      const row = b < zones ? (place[b] ?? -1) : -1;
-      if (row < 0) continue;
-      const volume = moved[i] ?? 0;
-      const a = from[i] ?? 0;
-      if (a < zones) {
-        const column = place[a] ?? -1;
-        if (column < 0) continue;
-        matrix[row * count + column] = (matrix[row * count + column] ?? 0) - volume;
-        continue;
-      }
-      for (let c = 0; c < k; c++) {
-        const amount = volume * (outdoor[c] ?? 0);
-        right[row * k + c] = (right[row * k + c] ?? 0) + amount;
+    for (let r = 0; r < count; r++) {
+      const z = order[r] ?? 0;
+      const row = z * k;
+      if (z < held) {
+        for (let at = row; at < row + k; at++) {
+          right[at] = (state[amounts + at] ?? 0) + h * (table.amountSource[at] ?? 0);
+        }
+      } else right.fill(0, row, row + k);
+      const fresh = arrived[z] ?? 0;
+      if (fresh === 0) continue;
+      for (const c of airParts) {
+        const amount = fresh * (outdoor[c] ?? 0);
+        right[row + c] = (right[row + c] ?? 0) + amount;
         next[layout.into + c] = (next[layout.into + c] ?? 0) + amount;
       }
     }
-    eliminate(matrix, right, count, k);
+    eliminate(matrix, right, count, zones, k, order, filled);
     for (let r = 0; r < count; r++) {
       const z = order[r] ?? 0;
-      if (z >= held) continue;
-      const volume = next[z] ?? 0;
-      for (let c = 0; c < k; c++) next[amounts + z * k + c] = volume * (right[r * k + c] ?? 0);
-    }
-    for (let i = 0; i < table.count; i++) {
-      if (to[i] !== zones) continue;
-      const row = place[from[i] ?? 0] ?? -1;
-      if (row < 0) continue;
+      const row = z * k;
+      if (z < held) {
+        const volume = next[z] ?? 0;
+        for (let at = row; at < row + k; at++) next[amounts + at] = volume * (right[at] ?? 0);
+      }
+      const gone = departed[z] ?? 0;
+      if (gone === 0) continue;
       for (let c = 0; c < k; c++) {
-        const at = layout.out + c;
-        next[at] = (next[at] ?? 0) + (moved[i] ?? 0) * (right[row * k + c] ?? 0);
+        next[layout.out + c] = (next[layout.out + c] ?? 0) + gone * (right[row + c] ?? 0);
       }
     }
     return true;
@@ -184,30 +197,69 @@ export function implicitStep(layout: ZoneLayout, outdoor: Float64Array): Implici
 }
 
 /**
- * Solves A X = B in place, without exchange of rows: here the diagonal outweighs the rest of its row
- * or column, so no pivot can vanish.
+ * Solves A X = B in place for the rows and columns of `order`, without exchange of rows: here the
+ * diagonal outweighs the rest of its row or column, so no pivot can vanish. Most entries are 0: layers
+ * touch the air above them and a neighbour or two, so what is filled of a row is listed first.
+ *
+ * @param a       matrix, `stride` entries a row
+ * @param b       right sides, `width` a row; the solution when it returns
+ * @param n       number of rows
+ * @param stride  entries of the matrix from row to row
+ * @param width   number of right sides
+ * @param order   the rows in the order of elimination
+ * @param filled  work space of n entries
  */
-function eliminate(a: Float64Array, b: Float64Array, n: number, columns: number): void {
+function eliminate(
+  a: Float64Array,
+  b: Float64Array,
+  n: number,
+  stride: number,
+  width: number,
+  order: Int32Array,
+  filled: Int32Array,
+): void {
   for (let p = 0; p < n; p++) {
-    const pivot = a[p * n + p] ?? 1;
+    const own = order[p] ?? 0;
+    const pivot = a[own * stride + own] ?? 1;
+    let entries = -1;
     for (let r = p + 1; r < n; r++) {
-      const value = a[r * n + p] ?? 0;
+      const row = order[r] ?? 0;
+      const value = a[row * stride + own] ?? 0;
       if (value === 0) continue;
-      const factor = value / pivot;
-      for (let j = p + 1; j < n; j++) {
-        a[r * n + j] = (a[r * n + j] ?? 0) - factor * (a[p * n + j] ?? 0);
+      if (entries < 0) {
+        entries = 0;
+        for (let j = p + 1; j < n; j++) {
+          const column = order[j] ?? 0;
+          if (a[own * stride + column] !== 0) filled[entries++] = column;
+        }
       }
-      for (let c = 0; c < columns; c++) {
-        b[r * columns + c] = (b[r * columns + c] ?? 0) - factor * (b[p * columns + c] ?? 0);
+      const factor = value / pivot;
+      for (let j = 0; j < entries; j++) {
+        const column = filled[j] ?? 0;
+        const at = row * stride + column;
+        a[at] = (a[at] ?? 0) - factor * (a[own * stride + column] ?? 0);
+      }
+      for (let c = 0; c < width; c++) {
+        const at = row * width + c;
+        b[at] = (b[at] ?? 0) - factor * (b[own * width + c] ?? 0);
       }
     }
   }
   for (let p = n - 1; p >= 0; p--) {
-    const pivot = a[p * n + p] ?? 1;
-    for (let c = 0; c < columns; c++) {
-      let value = b[p * columns + c] ?? 0;
-      for (let j = p + 1; j < n; j++) value -= (a[p * n + j] ?? 0) * (b[j * columns + c] ?? 0);
-      b[p * columns + c] = value / pivot;
+    const own = order[p] ?? 0;
+    for (let j = p + 1; j < n; j++) {
+      const column = order[j] ?? 0;
+      const value = a[own * stride + column] ?? 0;
+      if (value === 0) continue;
+      for (let c = 0; c < width; c++) {
+        const at = own * width + c;
+        b[at] = (b[at] ?? 0) - value * (b[column * width + c] ?? 0);
+      }
+    }
+    const pivot = a[own * stride + own] ?? 1;
+    for (let c = 0; c < width; c++) {
+      const at = own * width + c;
+      b[at] = (b[at] ?? 0) / pivot;
     }
   }
 }

@@ -49,35 +49,18 @@ export function layeredBand(
   gasIds: readonly string[],
   thresholds: readonly AirThreshold[],
 ): Bands {
-  const width = gasIds.length + 1;
   const quantities = ['oxygenFraction', ...gasIds];
   const inputs = SAMPLED_INPUTS.map((name) => ({ name, values: draws.map((draw) => draw[name]) }));
   const bands: Band[] = [];
   const drivers: Driver[] = [];
   const chances: Chance[] = [];
+  const known = new Map<Float32Array | undefined, Band>();
   for (const [m, { zone, heightM, isFloorCheck }] of mouths.entries()) {
-    const quantile = (cell: number, of: (part: DrawnValues) => ArrayLike<number> | undefined) =>
-      gathered(parts, cell, of).sort();
-    const band = {
-      p05: new Float64Array(times * width),
-      p50: new Float64Array(times * width),
-      p95: new Float64Array(times * width),
-    };
-    for (let cell = 0; cell < times * width; cell++) {
-      const sorted = quantile(cell, (part) => part.values[m]);
-      band.p05[cell] = sortedQuantile(sorted, 0.05);
-      band.p50[cell] = sortedQuantile(sorted, 0.5);
-      band.p95[cell] = sortedQuantile(sorted, 0.95);
-    }
     const worst = quantities.map((_, q) => gathered(parts, q, (part) => part.worst[m]));
-    const peakAt = (p: number) => {
-      const of = (q: number) => sortedQuantile(Float64Array.from(worst[q] ?? []).sort(), p);
-      return {
-        oxygenFraction: of(0),
-        gasFraction: Object.fromEntries(gasIds.map((gas, g) => [gas, of(g + 1)])),
-      };
-    };
-    bands.push({ ...band, peak: { p05: peakAt(0.05), p50: peakAt(0.5), p95: peakAt(0.95) } });
+    const values = parts[0]?.values[m];
+    const band = known.get(values) ?? bandAt(parts, m, times, gasIds, worst);
+    known.set(values, band);
+    bands.push(band);
     for (const [q, quantity] of isFloorCheck ? [] : quantities.entries()) {
       const values = Array.from(worst[q] ?? []);
       for (const { name, values: input } of inputs) {
@@ -88,7 +71,9 @@ export function layeredBand(
     }
     for (const [l, { quantity, value }] of thresholds.entries()) {
       if (quantityColumn(quantity, gasIds) < 0) continue;
-      const passed = quantile(l, (part) => part.firstS[m]).filter(Number.isFinite);
+      const passed = gathered(parts, l, (part) => part.firstS[m])
+        .sort()
+        .filter(Number.isFinite);
       chances.push({
         zone,
         heightM,
@@ -110,17 +95,68 @@ export function layeredBand(
   return { bands, drivers, chances };
 }
 
+/** The band at one place: quantiles time by time, and of the worst that each draw reaches. */
+function bandAt(
+  parts: readonly DrawnValues[],
+  m: number,
+  times: number,
+  gasIds: readonly string[],
+  worst: readonly Float64Array[],
+): Band {
+  const cells = times * (gasIds.length + 1);
+  const band = {
+    p05: new Float64Array(cells),
+    p50: new Float64Array(cells),
+    p95: new Float64Array(cells),
+  };
+  const all = new Float64Array(drawsOf(parts));
+  for (let cell = 0; cell < cells; cell++) {
+    gather(parts, cell, (part) => part.values[m], all);
+    if (varies(all)) all.sort();
+    band.p05[cell] = sortedQuantile(all, 0.05);
+    band.p50[cell] = sortedQuantile(all, 0.5);
+    band.p95[cell] = sortedQuantile(all, 0.95);
+  }
+  const sorted = worst.map((values) => values.slice().sort());
+  const peakAt = (p: number) => ({
+    oxygenFraction: sortedQuantile(sorted[0] ?? [], p),
+    gasFraction: Object.fromEntries(
+      gasIds.map((gas, g) => [gas, sortedQuantile(sorted[g + 1] ?? [], p)]),
+    ),
+  });
+  return { ...band, peak: { p05: peakAt(0.05), p50: peakAt(0.5), p95: peakAt(0.95) } };
+}
+
+/** Whether a list has more than one value; most gases are nowhere for most of a day. */
+function varies(values: Float64Array): boolean {
+  const first = values[0];
+  for (let i = 1; i < values.length; i++) if (values[i] !== first) return true;
+  return false;
+}
+
+const drawsOf = (parts: readonly DrawnValues[]): number =>
+  parts.reduce((sum, part) => sum + part.draws, 0);
+
 /** One cell of all parts side by side. */
 function gathered(
   parts: readonly DrawnValues[],
   cell: number,
   of: (part: DrawnValues) => ArrayLike<number> | undefined,
 ): Float64Array {
-  const all = new Float64Array(parts.reduce((sum, part) => sum + part.draws, 0));
+  const all = new Float64Array(drawsOf(parts));
+  gather(parts, cell, of, all);
+  return all;
+}
+
+function gather(
+  parts: readonly DrawnValues[],
+  cell: number,
+  of: (part: DrawnValues) => ArrayLike<number> | undefined,
+  into: Float64Array,
+): void {
   let at = 0;
   for (const part of parts) {
     const values = of(part);
-    for (let s = 0; s < part.draws; s++) all[at++] = values?.[cell * part.draws + s] ?? 0;
+    for (let s = 0; s < part.draws; s++) into[at++] = values?.[cell * part.draws + s] ?? 0;
   }
-  return all;
 }

@@ -24,7 +24,7 @@ export interface DrawnMouth {
 /** What a share of the draws gave: mouth by mouth, one column per draw. */
 export interface DrawnValues {
   readonly draws: number;
-  /** By mouth: value at (time, quantity, draw). */
+  /** By mouth: value at (time, quantity, draw); mouths at one place share one list. */
   readonly values: readonly Float32Array[];
   /** By mouth: worst value at (quantity, draw): lowest oxygen, highest gas. */
   readonly worst: readonly Float64Array[];
@@ -76,44 +76,50 @@ export function layeredDraws(
 ): DrawnValues {
   const width = gasIds.length + 1;
   const count = draws.length;
-  const levels = thresholds.map(({ quantity, value }) => ({
-    column: quantityColumn(quantity, gasIds),
-    value,
+  const levels = thresholds
+    .map(({ quantity, value }, l) => ({ l, column: quantityColumn(quantity, gasIds), value }))
+    .filter(({ column }) => column >= 0);
+  // Mouths at one place have one answer; groups of people often share a place.
+  const places = mouths.filter((mouth, m) => m === placeOf(mouths, mouth));
+  const stores = places.map(() => ({
+    values: new Float32Array(timesS.length * width * count),
+    worst: new Float64Array(width * count),
+    firstS: new Float64Array(thresholds.length * count).fill(Infinity),
   }));
-  const values = mouths.map(() => new Float32Array(timesS.length * width * count));
-  const worst = mouths.map(() => new Float64Array(width * count));
-  const firstS = mouths.map(() => new Float64Array(levels.length * count).fill(Infinity));
   const row = new Float64Array(width);
   const keep = (m: number, s: number, i: number): void => {
-    const store = values[m];
-    const peaks = worst[m];
-    const firsts = firstS[m];
-    if (!store || !peaks || !firsts) return;
+    const store = stores[m];
+    if (!store) return;
+    const { values, worst, firstS } = store;
+    const from = i * width * count + s;
     for (let q = 0; q < width; q++) {
       const value = row[q] ?? 0;
-      store[(i * width + q) * count + s] = value;
+      values[from + q * count] = value;
       const at = q * count + s;
-      const before = peaks[at] ?? 0;
-      const isWorse = i === 0 || (q === 0 ? value < before : value > before);
-      if (isWorse) peaks[at] = value;
+      const before = worst[at] ?? 0;
+      if (i === 0 || (q === 0 ? value < before : value > before)) worst[at] = value;
     }
-    for (const [l, { column, value }] of levels.entries()) {
-      if (column < 0 || Number.isFinite(firsts[l * count + s])) continue;
-      const now = row[column] ?? 0;
-      if (column === 0 ? now < value : now > value) firsts[l * count + s] = timesS[i] ?? 0;
+    for (const level of levels) {
+      const at = level.l * count + s;
+      if (firstS[at] !== Infinity) continue;
+      const now = row[level.column] ?? 0;
+      if (level.column === 0 ? now < level.value : now > level.value) firstS[at] = timesS[i] ?? 0;
     }
   };
   for (const [s, draw] of draws.entries()) {
     const model = airModel(sampledInput(input, draw), gases);
     const one = layerCase(model, gases);
     if (one.network.layers.length === 0) {
-      readMixed(model, mouths, timesS, row, (m, i) => {
+      readMixed(model, places, timesS, row, (m, i) => {
         keep(m, s, i);
       });
       continue;
     }
     const parameters = sampledLayers(input, draw);
-    const readers = mouths.map(({ at }) => mouthReader(one, at, parameters));
+    const readers = places.map(({ at, bounds }) => ({
+      read: mouthReader(one, at, parameters),
+      bounds,
+    }));
     let i = 0;
     followLayers(
       one.network,
@@ -122,15 +128,36 @@ export function layeredDraws(
       timesS,
       COARSE,
       (t, _state, zones) => {
-        for (const [m, { bounds }] of mouths.entries()) {
-          readers[m]?.(t, zones, bounds, i * width, row, 0);
+        for (let m = 0; m < readers.length; m++) {
+          const reader = readers[m];
+          if (!reader) continue;
+          reader.read(t, zones, reader.bounds, i * width, row, 0);
           keep(m, s, i);
         }
         i++;
       },
     );
   }
-  return { draws: count, values, worst, firstS };
+  const storeOf = (mouth: DrawnMouth) => {
+    const store = stores[places.indexOf(mouths[placeOf(mouths, mouth)] ?? mouth)];
+    if (!store) throw new RangeError(`no place for ${mouth.zone}`);
+    return store;
+  };
+  const all = mouths.map(storeOf);
+  return {
+    draws: count,
+    values: all.map(({ values }) => values),
+    worst: all.map(({ worst }) => worst),
+    firstS: all.map(({ firstS }) => firstS),
+  };
+}
+
+/** Index of the first mouth at the same place: what lies there is the same for both [-]. */
+function placeOf(mouths: readonly DrawnMouth[], mouth: DrawnMouth): number {
+  return mouths.findIndex(
+    ({ at, bounds }) =>
+      bounds === mouth.bounds && at.levelM === mouth.at.levelM && at.floorM === mouth.at.floorM,
+  );
 }
 
 /** The mixed answer of a draw in which nothing lies as a layer. */

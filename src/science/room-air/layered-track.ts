@@ -1,7 +1,7 @@
 import { NotComputable } from '../../errors.js';
 import { hermiteValue, type AcceptedStep } from '../numerics/runge-kutta.js';
-import { flowSegment } from './air-flows.js';
-import { layerFlows, layerFlowTable, type LayerFlows } from './layer-flows.js';
+import { flowSegments } from './air-flows.js';
+import { layerFlows, layerFlowTables, type LayerFlows } from './layer-flows.js';
 import type { LayerNetwork } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import { layerSegment } from './layer-segment.js';
@@ -131,11 +131,12 @@ export function followLayers(
   const state = startState(network, layout);
   const next = new Float64Array(layout.size);
   const between = new Float64Array(layout.size);
-  const table = layerFlowTable(network, layout);
+  const tables = layerFlowTables(network, layout);
   const work = emptyZoneState(layout);
   const shown = emptyZoneState(layout);
   const joined = new Set<number>();
   const edges = edgesWithWarming(network);
+  const parts = flowSegments(model, 'pushOut', edges);
   let wanted = 0;
   let steps = 0;
   let rejected = 0;
@@ -148,9 +149,11 @@ export function followLayers(
   for (let e = 0; e + 1 < edges.length; e++) {
     const from = edges[e] ?? 0;
     const to = edges[e + 1] ?? 0;
-    const segment = layerSegment(network, flowSegment(model, from, to, 'pushOut'));
+    const part = parts[e];
+    if (!part) break;
+    const segment = layerSegment(network, part);
     const { excess } = segment;
-    const flows = layerFlows(network, layout, segment, parameters, joined, table, work);
+    const flows = layerFlows(network, layout, segment, parameters, joined, tables, work);
     if (e === 0) while ((timesS[wanted] ?? Infinity) <= from) show(from, state, excess);
     let t = from;
     step = Math.min(step, RESTART_STEP_S);
@@ -318,7 +321,9 @@ function extrapolation(
       for (let i = 0; i < parts; i++) {
         const length = h / parts;
         const target = (parts - i) % 2 === 1 ? column(j) : part;
-        if (!step(flows.at(t + i * length, length, now), length, now, target)) return 1e6;
+        const table =
+          i === 0 ? flows.fromStart(t, length, state) : flows.at(t + i * length, length, now);
+        if (!step(table, length, now, target)) return 1e6;
         now = target;
       }
       for (let i = j; i > 0; i--) {

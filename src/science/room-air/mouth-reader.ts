@@ -32,7 +32,9 @@ interface LayerHere {
   readonly diffusivityM2PerS: number;
   /** From the base of the layer to the mouth [m]. */
   readonly distanceM: number;
-  readonly passes: readonly { readonly from: number; readonly until: number }[];
+  /** When releases reach the mouth as a layer, rising, and until when each is a first pass [s]. */
+  readonly fromS: Float64Array;
+  readonly untilS: Float64Array;
 }
 
 /**
@@ -60,51 +62,65 @@ export function mouthReader(
   const k = network.components.length;
   const upper = network.layers.length + (network.groupOf[space] ?? 0);
   const width = columnsOf.length + 1;
-  const columns = columnsOf.flatMap((list, q) => list.map((column) => [q + 1, column] as const));
-  const started = releases.map((release) => ({
-    from: Math.max(release.plan.startS, release.reachS[space] ?? Infinity),
-    until: release.plan.space === space ? release.passEndS : release.plan.startS,
-    side: release.gathering === 'above' ? 'ceiling' : 'floor',
-  }));
-  const here = network.layers.flatMap((layer, zone): LayerHere[] =>
-    layer.space === space
-      ? [
-          {
-            zone,
-            side: layer.side,
-            diffusivityM2PerS: layer.diffusivityM2PerS,
-            distanceM: layer.side === 'floor' ? at.levelM : curve.heightM - at.levelM,
-            passes: started.filter((pass) => pass.side === layer.side),
-          },
-        ]
-      : [],
-  );
+  const columns = columnsOf.flatMap((list, q) => list.map((column) => ({ q: q + 1, column })));
+  const quantities = Int32Array.from(columns, ({ q }) => q);
+  const components = Int32Array.from(columns, ({ column }) => column);
+  const started = releases
+    .map((release) => ({
+      from: Math.max(release.plan.startS, release.reachS[space] ?? Infinity),
+      until: release.plan.space === space ? release.passEndS : release.plan.startS,
+      side: release.gathering === 'above' ? 'ceiling' : 'floor',
+    }))
+    .sort((a, b) => a.from - b.from);
+  const here = network.layers.flatMap((layer, zone): LayerHere[] => {
+    if (layer.space !== space) return [];
+    const passes = started.filter((pass) => pass.side === layer.side);
+    return [
+      {
+        zone,
+        side: layer.side,
+        diffusivityM2PerS: layer.diffusivityM2PerS,
+        distanceM: layer.side === 'floor' ? at.levelM : curve.heightM - at.levelM,
+        fromS: Float64Array.from(passes, ({ from }) => from),
+        untilS: Float64Array.from(passes, ({ until }) => until),
+      },
+    ];
+  });
   const bornS = new Float64Array(here.length).fill(Number.NaN);
+  /** How many of the passes have begun, and when the last of those ends. */
+  const begun = new Int32Array(here.length);
+  const passEndS = new Float64Array(here.length).fill(-Infinity);
   const above = new Float64Array(width);
   const inside = new Float64Array(width);
   const read = (zones: ZoneState, zone: number, into: Float64Array): void => {
+    const from = zone * k;
     into.fill(0);
-    into[0] = zones.fractions[zone * k] ?? 0;
-    for (const [q, column] of columns) {
-      into[q] = Math.min(1, (into[q] ?? 0) + (zones.fractions[zone * k + column] ?? 0));
+    into[0] = zones.fractions[from] ?? 0;
+    for (let i = 0; i < components.length; i++) {
+      const q = quantities[i] ?? 0;
+      const sum = (into[q] ?? 0) + (zones.fractions[from + (components[i] ?? 0)] ?? 0);
+      into[q] = sum > 1 ? 1 : sum;
     }
   };
   return (t, zones, bound, boundAt, out, outAt) => {
     read(zones, upper, above);
     for (let q = 0; q < width; q++) out[outAt + q] = above[q] ?? 0;
-    for (const [i, layer] of here.entries()) {
+    for (let i = 0; i < here.length; i++) {
+      const layer = here[i];
+      if (!layer) continue;
       const depth = zones.depths[layer.zone] ?? 0;
       if (depth < LEAST_REPORTED_M) {
         bornS[i] = Number.NaN;
         continue;
       }
-      let isFirstPass = false;
-      let latest = -Infinity;
-      for (const { from, until } of layer.passes) {
-        if (from > t) continue;
-        latest = Math.max(latest, from);
-        if (until > t) isFirstPass = true;
-      }
+      let next = begun[i] ?? 0;
+      let endS = passEndS[i] ?? -Infinity;
+      while ((layer.fromS[next] ?? Infinity) <= t)
+        endS = Math.max(endS, layer.untilS[next++] ?? endS);
+      begun[i] = next;
+      passEndS[i] = endS;
+      const isFirstPass = endS > t;
+      const latest = next > 0 ? (layer.fromS[next - 1] ?? -Infinity) : -Infinity;
       // A layer seen for the first time is as old as the release that made it.
       if (Number.isNaN(bornS[i])) bornS[i] = Number.isFinite(latest) ? latest : t;
       const smear = smearHeight(
