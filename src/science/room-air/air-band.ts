@@ -4,10 +4,11 @@ import type { AirUncertainty } from './air-input.js';
 import type { AirModel } from './air-model.js';
 import type { AirResult, AirSeries, HeightAir, ZoneAir } from './air-result.js';
 import { outputRows, seriesOf } from './air-series.js';
+import type { FlatTrack } from './answer-track.js';
 import { layerMouth } from './layer-case.js';
 import { layeredBand, type Band } from './layered-band.js';
 import { layeredDraws, type DrawnMouth } from './layered-draws.js';
-import type { MixedRuns } from './mixed-values.js';
+import { spaceTrack, type MixedRuns } from './mixed-values.js';
 import { uncertaintyDraws } from './sampled-input.js';
 import { boundMouth, boundTrack, type BoundRelease } from './zone-bound.js';
 
@@ -46,23 +47,29 @@ export function bandQuestion(
     Math.floor(MOST_VALUES / (places.length * width * uncertainty.samples)),
   );
   const wanted = bandTimes(model, timesS, most);
+  const mixed = model.spaces.map((_, space) => rowsAt(spaceTrack(model, runs, space), wanted));
   const mouths = places.map(({ zone, heightM, isFloorCheck }): DrawnMouth => {
     const space = model.indexOf.get(zone.space) ?? 0;
     const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-    const bound = boundTrack(model, runs, releases, mouth);
-    const bounds = new Float64Array(wanted.length * width);
-    for (const [i, row] of outputRows(bound.timesS, wanted).entries()) {
-      bounds.set(bound.values.subarray(row * width, (row + 1) * width), i * width);
-    }
     return {
       zone: zone.id,
       heightM,
       isFloorCheck,
       at: layerMouth(model, mouth, zone.floorLevelM),
-      bounds,
+      bounds: rowsAt(boundTrack(model, runs, releases, mouth), wanted),
+      mixed: mixed[space] ?? new Float64Array(wanted.length * width),
     };
   });
   return { mouths, timesS: wanted };
+}
+
+/** The rows of a track at chosen times, one after the other. */
+function rowsAt({ timesS, values, width }: FlatTrack, wantedS: readonly number[]): Float64Array {
+  const rows = new Float64Array(wantedS.length * width);
+  for (const [i, row] of outputRows(timesS, wantedS).entries()) {
+    rows.set(values.subarray(row * width, (row + 1) * width), i * width);
+  }
+  return rows;
 }
 
 /** Output times, thinned evenly, with the ends of releases: there most gas is in the air. */

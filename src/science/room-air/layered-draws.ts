@@ -19,6 +19,8 @@ export interface DrawnMouth {
   readonly at: LayerMouth;
   /** Oxygen, then gases, row by row at the times of the draws. */
   readonly bounds: Float64Array;
+  /** The same of the well-mixed answer in its space. */
+  readonly mixed: Float64Array;
 }
 
 /** What a share of the draws gave: mouth by mouth, one column per draw. */
@@ -116,9 +118,10 @@ export function layeredDraws(
       continue;
     }
     const parameters = sampledLayers(input, draw);
-    const readers = places.map(({ at, bounds }) => ({
+    const readers = places.map(({ at, bounds, mixed }) => ({
       read: mouthReader(one, at, parameters),
       bounds,
+      mixed,
     }));
     let i = 0;
     followLayers(
@@ -131,7 +134,7 @@ export function layeredDraws(
         for (let m = 0; m < readers.length; m++) {
           const reader = readers[m];
           if (!reader) continue;
-          reader.read(t, zones, reader.bounds, i * width, row, 0);
+          reader.read(t, zones, reader.bounds, i * width, row, 0, reader.mixed);
           keep(m, s, i);
         }
         i++;
@@ -155,8 +158,10 @@ export function layeredDraws(
 /** Index of the first mouth at the same place: what lies there is the same for both [-]. */
 function placeOf(mouths: readonly DrawnMouth[], mouth: DrawnMouth): number {
   return mouths.findIndex(
-    ({ at, bounds }) =>
-      bounds === mouth.bounds && at.levelM === mouth.at.levelM && at.floorM === mouth.at.floorM,
+    ({ at }) =>
+      at.mouth.space === mouth.at.mouth.space &&
+      at.levelM === mouth.at.levelM &&
+      at.floorM === mouth.at.floorM,
   );
 }
 

@@ -16,6 +16,9 @@ const LEAST_REPORTED_M = 0.002;
  * @param zones fractions, depths and molar masses at that time
  * @param bound oxygen and gases of the inventory bound at the mouth, from an index on
  * @param out   written from an index on
+ * @param mixed well-mixed oxygen and gases of the run that the bound belongs to, from the index of the
+ *   bound on. Where the air above the layers holds more than that, as in a draw with less fresh air,
+ *   the bound is moved by as much.
  */
 export type MouthReader = (
   t: number,
@@ -24,6 +27,7 @@ export type MouthReader = (
   boundAt: number,
   out: Float64Array,
   outAt: number,
+  mixed?: Float64Array,
 ) => void;
 
 interface LayerHere {
@@ -102,7 +106,7 @@ export function mouthReader(
       into[q] = sum > 1 ? 1 : sum;
     }
   };
-  return (t, zones, bound, boundAt, out, outAt) => {
+  return (t, zones, bound, boundAt, out, outAt, mixed) => {
     read(zones, upper, above);
     for (let q = 0; q < width; q++) out[outAt + q] = above[q] ?? 0;
     for (let i = 0; i < here.length; i++) {
@@ -140,7 +144,8 @@ export function mouthReader(
       read(zones, layer.zone, inside);
       const airAbove = above[0] ?? 0;
       const oxygen = inside[0] ?? 0;
-      const least = isFirstPass ? oxygen : Math.max(oxygen, bound[boundAt] ?? 0);
+      const less = mixed ? Math.max(0, (mixed[boundAt] ?? 0) - airAbove) : 0;
+      const least = isFirstPass ? oxygen : Math.max(oxygen, (bound[boundAt] ?? 0) - less);
       out[outAt] = Math.min(
         out[outAt] ?? 1,
         isReached ? least : airAbove,
@@ -149,7 +154,8 @@ export function mouthReader(
       for (let q = 1; q < width; q++) {
         const xl = inside[q] ?? 0;
         const xu = above[q] ?? 0;
-        const limit = isFirstPass ? 1 : (bound[boundAt + q] ?? 1);
+        const more = mixed ? Math.max(0, xu - (mixed[boundAt + q] ?? 0)) : 0;
+        const limit = isFirstPass ? 1 : (bound[boundAt + q] ?? 1) + more;
         out[outAt + q] = Math.max(
           out[outAt + q] ?? 0,
           reportedFraction(xl, xu, limit, depth, smear, layer.distanceM),
