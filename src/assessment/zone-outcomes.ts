@@ -1,4 +1,4 @@
-import { highestRollingMean } from '../science/exposure/rolling-mean.js';
+import { highestRollingMean, type WindowedMean } from '../science/exposure/rolling-mean.js';
 import type {
   AirResult,
   AirSeries,
@@ -45,6 +45,9 @@ const longestShowWindowS = 3600;
 
 type Windows = Readonly<Record<Statistic, number>>;
 
+/** Highest means by series and window: zones of one space share their mixed series. */
+type KnownMeans = Map<readonly number[], Map<number, WindowedMean>>;
+
 /** Averaging windows [s]; 0: the momentary value. A mean over the show never thins out a short one. */
 function windowsOf(showS: number): Windows {
   return {
@@ -79,8 +82,15 @@ function statisticOf(
   timesS: readonly number[],
   values: readonly number[],
   windows: Windows,
+  known: KnownMeans,
 ): { value: number; atS: number } {
-  if (windows[statistic] > 0) return highestRollingMean(timesS, values, windows[statistic]);
+  const window = windows[statistic];
+  if (window > 0) {
+    const means = known.get(values) ?? new Map<number, WindowedMean>();
+    const mean = means.get(window) ?? highestRollingMean(timesS, values, window);
+    known.set(values, means.set(window, mean));
+    return mean;
+  }
   let best = { value: values[0] ?? 0, atS: timesS[0] ?? 0 };
   values.forEach((value, i) => {
     const better = statistic === 'minimum' ? value < best.value : value > best.value;
@@ -105,6 +115,7 @@ function answerOutcome(
   level: JudgedLevel,
   originS: number,
   windows: Windows,
+  known: KnownMeans,
 ): AnswerOutcome {
   const names: readonly LevelName[] = ['aim', 'limit', 'never'];
   const statistics: Partial<Record<Statistic, number>> = {};
@@ -112,7 +123,7 @@ function answerOutcome(
   const firstPast: Partial<Record<LevelName, number>> = {};
   for (const name of names) {
     const { statistic } = level[name];
-    const sampled = statisticOf(statistic, timesS, values, windows).value;
+    const sampled = statisticOf(statistic, timesS, values, windows, known).value;
     const momentary = windows[statistic] === 0 ? extreme?.value : undefined;
     const value = momentary === undefined ? sampled : worseValue(sampled, momentary, level);
     statistics[statistic] = value;
@@ -127,6 +138,7 @@ function answerOutcome(
     timesS,
     values,
     windows,
+    known,
   );
   const between = extreme ?? sampled;
   const worst =
@@ -184,6 +196,7 @@ function peakOf(
     timesS,
     series,
     windowsOf(0),
+    new Map(),
   );
   return { value: isOxygen ? value : value / level.scale, atS };
 }
@@ -244,6 +257,8 @@ export function zoneOutcomes(
 ): readonly ZoneOutcome[] {
   const originS = air.window.startS;
   const windows = windowsOf(air.shortestShowS);
+  const known: KnownMeans = new Map();
+  const timesS = result.timesS.map((t) => t + originS);
   return groups.flatMap((group) => {
     const exact = result.zones[group.id];
     const plain = straight.zones[group.id];
@@ -258,7 +273,7 @@ export function zoneOutcomes(
         if (!series.mixed) return [];
         const answers: Partial<Record<Answer, AnswerOutcome>> = {};
         for (const [answer, one] of Object.entries(series) as [Answer, Track][]) {
-          answers[answer] = answerOutcome(result.timesS, one, level, originS, windows);
+          answers[answer] = answerOutcome(result.timesS, one, level, originS, windows, known);
         }
         return [
           {
@@ -270,7 +285,7 @@ export function zoneOutcomes(
             caseName,
             level,
             answers,
-            timesS: result.timesS.map((t) => t + originS),
+            timesS,
             ...bandOf(height, level),
             oxygenPressurePa:
               level.quantity === 'oxygenFraction'

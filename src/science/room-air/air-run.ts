@@ -10,6 +10,7 @@ import type {
   Extreme,
   GasBalance,
   HeightAir,
+  LayeredSeries,
   OxygenExtreme,
   SpaceAir,
   ZoneAir,
@@ -84,28 +85,51 @@ export function airRun(
   const depths = purePoolDepths(model, releases);
   const wantsLayers = displacement === 'pushOut' && (options.layered ?? true);
   const isStraight = displacement === 'straight';
+  const places = new Map<string, Place>();
+  const placeOf = (zone: AirZone, heightM: number): Place => {
+    const key = `${zone.space}\n${String(zone.floorLevelM)} ${String(heightM)}`;
+    const known = places.get(key);
+    if (known) return known;
+    const space = model.indexOf.get(zone.space) ?? 0;
+    const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
+    const bound = onFirstUse(() => answerOf(boundTrack(model, runs, releases, mouth), model.gases));
+    const boundSeries = onFirstUse(() => seriesOf(model, bound().track, rows));
+    const { floorLevelM } = zone;
+    const place = { index: places.size, mouth, floorLevelM, bound, boundSeries };
+    places.set(key, place);
+    return place;
+  };
   const mouths = (input.zones ?? []).flatMap((zone) =>
-    [zone.heightM, FALLEN_HEIGHT_M].map((heightM): Mouth => {
-      const space = model.indexOf.get(zone.space) ?? 0;
-      const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-      const bound = onFirstUse(() =>
-        answerOf(boundTrack(model, runs, releases, mouth), model.gases),
-      );
-      return { zone, heightM, mouth, bound };
-    }),
+    [zone.heightM, FALLEN_HEIGHT_M].map((heightM): Mouth => ({
+      zone,
+      heightM,
+      place: placeOf(zone, heightM),
+    })),
   );
   const layers = wantsLayers
     ? layerRuns(
         model,
         gases,
-        mouths.map(({ zone, mouth, bound }) => ({
+        [...places.values()].map(({ mouth, floorLevelM, bound }) => ({
           mouth,
-          floorLevelM: zone.floorLevelM,
+          floorLevelM,
           bound: bound().track,
         })),
         runs.tracks[0].timesS,
         options.adverse ?? true,
       )
+    : undefined;
+  const layeredPlaces = new Map<number, LayeredPlace>();
+  const layeredAt = wantsLayers
+    ? ({ index, mouth }: Place): LayeredPlace => {
+        const flat =
+          mixed[mouth.space] ?? answerOf(spaceTrack(model, runs, mouth.space), model.gases);
+        const found =
+          layeredPlaces.get(index) ??
+          layeredPlace(model, flat, layers?.mouths[index], rows, timesS);
+        layeredPlaces.set(index, found);
+        return found;
+      }
     : undefined;
   const spaces: Record<string, SpaceAir> = {};
   for (const [i, space] of model.spaces.entries()) {
@@ -124,11 +148,11 @@ export function airRun(
     const one = mixed[model.indexOf.get(zone.space) ?? 0];
     const series = spaces[zone.space]?.mixed;
     if (!one || !series) continue;
-    const place: ZonePlace = { model, mixed: one, mixedSeries: series, rows, timesS, wantsLayers };
+    const common = { model, mixed: one, mixedSeries: series, layered: layeredAt };
     const answerAt = (m: number): HeightAir | undefined => {
       const mouth = mouths[m];
       if (!mouth) return undefined;
-      return heightAnswer(place, mouth, isStraight, layers?.mouths[m], crossings);
+      return heightAnswer(common, mouth, isStraight, crossings);
     };
     const own = answerAt(2 * z);
     const at02M = answerAt(2 * z + 1);
@@ -143,7 +167,12 @@ export function airRun(
     balance: gasBalances(model, runs, layers?.balanceError ?? 0),
   };
   if (!wantsLayers || !input.uncertainty) return answer;
-  return { ...answer, ...bandedZones({ model, gases, runs, releases, timesS }, zones) };
+  const asked = mouths.map(({ place }) => ({
+    mouth: place.mouth,
+    floorLevelM: place.floorLevelM,
+    bound: place.bound().track,
+  }));
+  return { ...answer, ...bandedZones({ model, gases, asked, timesS }, zones) };
 }
 
 function outputTimes(input: AirInput): readonly number[] {
@@ -195,23 +224,35 @@ interface Answer {
   readonly maximum: Readonly<Record<string, Extreme>>;
 }
 
-/** A mouth of a zone, with its bound as soon as it is asked for. */
+/** Where mouths are, with what several groups of people there share, as soon as it is asked for. */
+interface Place {
+  readonly index: number;
+  readonly mouth: BoundMouth;
+  readonly floorLevelM: number | undefined;
+  readonly bound: () => Answer;
+  readonly boundSeries: () => AirSeries;
+}
+
+/** A mouth of a zone. */
 interface Mouth {
   readonly zone: AirZone;
   readonly heightM: number;
-  readonly mouth: BoundMouth;
-  readonly bound: () => Answer;
+  readonly place: Place;
+}
+
+/** The layered answer at one place. */
+interface LayeredPlace {
+  readonly usual: Answer;
+  readonly series: LayeredSeries;
 }
 
 /** What the mouths of a zone have in common. */
-interface ZonePlace {
+interface ZoneCommon {
   readonly model: AirModel;
   readonly mixed: Answer;
   readonly mixedSeries: AirSeries;
-  /** Row of each output time among the nodes. */
-  readonly rows: Int32Array;
-  readonly timesS: readonly number[];
-  readonly wantsLayers: boolean;
+  /** The layered answer by place; undefined where none is wanted. */
+  readonly layered: ((place: Place) => LayeredPlace) | undefined;
 }
 
 /** A track with its extremes. */
@@ -220,22 +261,20 @@ function answerOf(track: FlatTrack, gases: readonly string[]): Answer {
 }
 
 function heightAnswer(
-  place: ZonePlace,
-  { zone, heightM, bound }: Mouth,
+  { model, mixed, mixedSeries, layered }: ZoneCommon,
+  { zone, heightM, place }: Mouth,
   isStraight: boolean,
-  layers: MouthLayers | undefined,
   crossings: Crossing[],
 ): HeightAir {
-  const { model, mixed, mixedSeries, rows, timesS, wantsLayers } = place;
+  const { bound, boundSeries } = place;
   const tracks = { mixed: () => mixed.track, bound: () => bound().track };
   if (isStraight) {
-    const series = onFirstUse(() => seriesOf(model, bound().track, rows));
     addCrossings(model, zone, heightM, tracks, crossings);
     return {
       heightM,
       mixed: mixedSeries,
       get bound() {
-        return series();
+        return boundSeries();
       },
       minimum: {
         mixed: mixed.minimum,
@@ -251,28 +290,41 @@ function heightAnswer(
       },
     };
   }
-  const common = { heightM, mixed: mixedSeries, bound: seriesOf(model, bound().track, rows) };
+  const common = { heightM, mixed: mixedSeries, bound: boundSeries() };
   const minimum = { mixed: mixed.minimum, bound: bound().minimum };
   const maximum = { mixed: mixed.maximum, bound: bound().maximum };
-  if (!wantsLayers) {
+  if (!layered) {
     addCrossings(model, zone, heightM, tracks, crossings);
     return { ...common, minimum, maximum };
   }
-  // Where nothing gathers as a layer the mixed answer is the layered one.
-  const usual = layers ? answerOf(layers.usual, model.gases) : mixed;
-  const shown = layers ? outputRows(usual.track.timesS, timesS) : rows;
+  const { usual, series } = layered(place);
   addCrossings(model, zone, heightM, { ...tracks, layered: () => usual.track }, crossings);
-  const adverse = layers ? layers.adverse : usual.track.values;
   return {
     ...common,
-    layered: {
-      ...seriesOf(model, usual.track, shown),
-      ...(adverse
-        ? { adverse: seriesOf(model, { values: adverse, width: usual.track.width }, shown) }
-        : {}),
-    },
+    layered: series,
     minimum: { ...minimum, layered: usual.minimum },
     maximum: { ...maximum, layered: usual.maximum },
+  };
+}
+
+/** The layered answer at a place; where nothing gathers as a layer it is the mixed one. */
+function layeredPlace(
+  model: AirModel,
+  mixed: Answer,
+  layers: MouthLayers | undefined,
+  rows: Int32Array,
+  timesS: readonly number[],
+): LayeredPlace {
+  const usual = layers ? answerOf(layers.usual, model.gases) : mixed;
+  const shown = layers ? outputRows(usual.track.timesS, timesS) : rows;
+  const { width, values } = usual.track;
+  const adverse = layers ? layers.adverse : values;
+  return {
+    usual,
+    series: {
+      ...seriesOf(model, usual.track, shown),
+      ...(adverse ? { adverse: seriesOf(model, { values: adverse, width }, shown) } : {}),
+    },
   };
 }
 

@@ -27,6 +27,8 @@ const LEAST_SMEAR_DEPTH_M = 1e-3;
 /** Depth over which what is drawn from a thin layer fades, and over which mouths enter it [m]. */
 const RAMP_M = 0.05;
 
+const NO_STATE: Float64Array = new Float64Array(0);
+
 /** A layer begins beyond an edge only from this many times the contrast at which one ends. */
 const BIRTH_CONTRAST = 5;
 
@@ -49,11 +51,27 @@ export interface LayerFlows {
 export interface LayerFlowTables {
   readonly inside: FlowTable;
   readonly start: FlowTable;
+  readonly insideSmears: Smears;
+  readonly startSmears: Smears;
+  /** By layer: 1 where a source or another layer feeds it. */
+  readonly fed: Uint8Array;
+  /** By space: inflow less listed outflow, and the pressure that follows. */
+  readonly net: Float64Array;
+  readonly pressure: Float64Array;
 }
 
 /** Tables that hold all flows that any segment of a network may have. */
 export function layerFlowTables(network: LayerNetwork, layout: ZoneLayout): LayerFlowTables {
-  return { inside: layerFlowTable(network, layout), start: layerFlowTable(network, layout) };
+  const spaces = network.model.spaces.length;
+  return {
+    inside: layerFlowTable(network, layout),
+    start: layerFlowTable(network, layout),
+    insideSmears: noSmears(layout.layers),
+    startSmears: noSmears(layout.layers),
+    fed: new Uint8Array(layout.layers),
+    net: new Float64Array(spaces),
+    pressure: new Float64Array(spaces),
+  };
 }
 
 function layerFlowTable(network: LayerNetwork, layout: ZoneLayout): FlowTable {
@@ -114,20 +132,18 @@ export function layerFlows(
   const { molarMasses, depths } = zones;
   const air = network.airMolarMassKgPerMol;
   const fixed = fixedFlows(network, layout, segment, parameters.surplusFromLayer);
-  const fed = new Uint8Array(layers);
-  const net = new Float64Array(n);
-  const pressure = new Float64Array(n);
-  const inside = { table: tables.inside, smears: noSmears(layers) };
-  const start = { table: tables.start, smears: noSmears(layers) };
+  const { fed, net, pressure } = tables;
+  const inside = { table: tables.inside, smears: tables.insideSmears };
+  const start = { table: tables.start, smears: tables.startSmears };
   for (const { table } of [inside, start]) {
     table.count = 0;
-    for (const [i, flow] of fixed.sizes.entries()) {
-      addFlow(table, fixed.from[i] ?? 0, fixed.to[i] ?? 0, flow);
+    for (let i = 0; i < fixed.sizes.length; i++) {
+      addFlow(table, fixed.from[i] ?? 0, fixed.to[i] ?? 0, fixed.sizes[i] ?? 0);
     }
   }
   const fixedCount = inside.table.count;
   let { table, smears } = inside;
-  let state: Float64Array = new Float64Array(0);
+  let state = NO_STATE;
   let startS = Number.NaN;
 
   const upperOf = (space: number): number => layers + (network.groupOf[space] ?? 0);
@@ -283,11 +299,10 @@ export function layerFlows(
   const throughHole = ({ hole }: LayerWeir, heavier: number, head: number): number => {
     if (!hole) return Infinity;
     const gPrime = (GRAVITY_M_PER_S2 * heavier) / air;
-    const both = rectangularFloorExchange(hole.widthM, hole.lengthM, gPrime);
+    const both = hole.exchangeM3PerS * Math.sqrt(Math.max(0, gPrime));
     if (!hole.hasOtherWay) return both;
     const { spread } = DISCHARGE_COEFFICIENTS;
-    const area = hole.widthM * hole.lengthM;
-    return Math.max(both, spread.mode * area * Math.sqrt(2 * gPrime * Math.max(0, head)));
+    return Math.max(both, spread.mode * hole.areaM2 * Math.sqrt(2 * gPrime * Math.max(0, head)));
   };
   const addWeir = (weir: LayerWeir): void => {
     if (volume(weir.a) <= 0 && volume(weir.b) <= 0) return;
@@ -499,7 +514,15 @@ export function layerFlows(
 }
 
 /** Flows by which layers smear: their place in a table, and what they depend on. */
-function noSmears(layers: number) {
+interface Smears {
+  count: number;
+  readonly flow: Int32Array;
+  readonly layer: Int32Array;
+  readonly areaM2: Float64Array;
+  readonly meanM: Float64Array;
+}
+
+function noSmears(layers: number): Smears {
   return {
     count: 0,
     flow: new Int32Array(layers),

@@ -3,6 +3,7 @@ import { isActive } from './air-flows.js';
 import type { AirOpening } from './air-input.js';
 import { spaceAt, type AirModel } from './air-model.js';
 import { coldExcess } from './cold-gas.js';
+import { rectangularFloorExchange } from './floor-opening.js';
 import { basinOf, type Basin, type LayerSide } from './layer-geometry.js';
 import type { LowGrille } from './layer-flow.js';
 import { RELEASE_MANNERS, DEFAULT_MANNER, type MannerTraits } from './release-manner.js';
@@ -71,8 +72,9 @@ export interface LayerWeir {
 }
 
 interface FloorHole {
-  readonly widthM: number;
-  readonly lengthM: number;
+  readonly areaM2: number;
+  /** Exchange through it each way at a reduced gravity of 1 m/s2; it grows with its root [m3/s]. */
+  readonly exchangeM3PerS: number;
   /** Whether the air of the lower space can leave by another way. */
   readonly hasOtherWay: boolean;
 }
@@ -336,9 +338,10 @@ function holeOf(
     (one) =>
       one !== opening && (one.openFraction ?? 1) > 0 && (one.from === lower || one.to === lower),
   );
+  const widthM = opening.widthM * (opening.openFraction ?? 1);
   return {
-    widthM: opening.widthM * (opening.openFraction ?? 1),
-    lengthM: opening.heightM,
+    areaM2: widthM * opening.heightM,
+    exchangeM3PerS: rectangularFloorExchange(widthM, opening.heightM, 1),
     hasOtherWay,
   };
 }

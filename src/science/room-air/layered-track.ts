@@ -367,6 +367,9 @@ function startState(network: LayerNetwork, layout: ZoneLayout): Float64Array {
   return state;
 }
 
+/** Oxygen and the carbon dioxide of the air come first among the components. */
+const BACKGROUND_COMPONENTS = 2;
+
 /** Layers that have ended join the air above them, in the state itself. */
 function join(
   network: LayerNetwork,
@@ -395,8 +398,9 @@ function join(
     const g = layers + layer.group;
     const above = state[g] ?? 0;
     if (above < LEAST_UPPER_SHARE * (network.groupVolumesM3[layer.group] ?? 1)) {
-      for (const [other, one] of network.layers.entries()) {
-        if (one.group !== layer.group) continue;
+      for (let other = 0; other < layers; other++) {
+        const one = network.layers[other];
+        if (one?.group !== layer.group) continue;
         if ((state[other] ?? 0) > 0) unite(other);
         joined.add(one.space);
       }
@@ -405,11 +409,12 @@ function join(
     const isFed = flows.isFed(l);
     let heavier = 0;
     let contrast = 0;
-    for (const [c, one] of network.components.entries()) {
+    for (let c = 0; c < k; c++) {
       const here = (state[amounts + l * k + c] ?? 0) / volume;
       const there = (state[amounts + g * k + c] ?? 0) / above;
-      heavier += (excess[c] ?? 0) * here - one.excessKgPerMol * there;
-      if (one.isReleased) contrast += here - there;
+      heavier += (excess[c] ?? 0) * here - (network.excessAbove[c] ?? 0) * there;
+      // Behind oxygen and the carbon dioxide of the air stands what is released.
+      if (c >= BACKGROUND_COMPONENTS) contrast += here - there;
     }
     const wrongWay = layer.side === 'ceiling' ? heavier : -heavier;
     const isTurned = wrongWay > TURNED * network.airMolarMassKgPerMol;

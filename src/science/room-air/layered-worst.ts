@@ -32,13 +32,15 @@ export function worstLayered(
   const row = new Float64Array(width);
   const worst = mouths.map(() => new Float64Array(timesS.length * width));
   for (const [run, parameters] of runs.entries()) {
-    const readers = mouths.map(({ at }) => mouthReader(one, at, parameters));
+    const readers = mouths.map(({ at, bounds }, m) => ({
+      read: mouthReader(one, at, parameters),
+      bounds,
+      into: worst[m] ?? row,
+    }));
     let i = 0;
     followLayers(one.network, layout, parameters, timesS, MIDDLING, (t, _state, zones) => {
-      for (const [m, { bounds }] of mouths.entries()) {
-        const into = worst[m];
-        if (!into) continue;
-        readers[m]?.(t, zones, bounds, i * width, row, 0);
+      for (const { read, bounds, into } of readers) {
+        read(t, zones, bounds, i * width, row, 0);
         if (run === 0) into.set(row, i * width);
         else keepWorse(row, into, i * width, width);
       }
