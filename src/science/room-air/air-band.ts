@@ -5,17 +5,10 @@ import type { AirModel } from './air-model.js';
 import type { AirResult, AirSeries, HeightAir, ZoneAir } from './air-result.js';
 import { outputRows, seriesOf } from './air-series.js';
 import type { FlatTrack } from './answer-track.js';
-<<<<<<< src/science/room-air/air-band.ts
+import { layerMouth } from './layer-case.js';
 import type { AskedMouth } from './layer-runs.js';
-import { layerMouth } from './layer-case.js';
 import { layeredBand, type Band } from './layered-band.js';
 import { layeredDraws, type DrawnMouth } from './layered-draws.js';
-=======
-import { layerMouth } from './layer-case.js';
-import { layeredBand, type Band } from './layered-band.js';
-import { layeredDraws, type DrawnMouth } from './layered-draws.js';
-import { spaceTrack, type MixedRuns } from './mixed-values.js';
->>>>>>> /tmp/new.f
 import { uncertaintyDraws } from './sampled-input.js';
 
 /** Most values that the draws of one run may keep at a time: about 60 MB. */
@@ -29,6 +22,8 @@ export interface BandSource {
   readonly gases: AirGasTable;
   /** The mouths of each zone: at its own height, then 0.2 m above its floor. */
   readonly asked: readonly AskedMouth[];
+  /** By space: the mixed air as stated. */
+  readonly mixed: readonly FlatTrack[];
   readonly timesS: readonly number[];
 }
 
@@ -41,7 +36,7 @@ export interface BandQuestion {
 
 /** The mouths and times of the band of a run. */
 export function bandQuestion(
-  { model, asked, timesS }: BandSource,
+  { model, asked, mixed, timesS }: BandSource,
   uncertainty: AirUncertainty,
 ): BandQuestion {
   const places = (model.input.zones ?? []).flatMap((zone) =>
@@ -53,37 +48,20 @@ export function bandQuestion(
     Math.floor(MOST_VALUES / (places.length * width * uncertainty.samples)),
   );
   const wanted = bandTimes(model, timesS, most);
-<<<<<<< src/science/room-air/air-band.ts
   const known = new Map<FlatTrack, Float64Array>();
-  const boundsOf = (bound: FlatTrack): Float64Array => {
-    const bounds = known.get(bound) ?? new Float64Array(wanted.length * width);
-    if (known.has(bound)) return bounds;
-    for (const [i, row] of outputRows(bound.timesS, wanted).entries()) {
-      bounds.set(bound.values.subarray(row * width, (row + 1) * width), i * width);
-    }
-    known.set(bound, bounds);
-    return bounds;
+  const rowsOf = (track: FlatTrack): Float64Array => {
+    const rows = known.get(track) ?? rowsAt(track, wanted);
+    known.set(track, rows);
+    return rows;
   };
   const mouths = asked.flatMap(({ mouth, floorLevelM, bound }, i): DrawnMouth[] => {
     const place = places[i];
-    if (!place) return [];
+    const flat = mixed[mouth.space];
+    if (!place || !flat) return [];
     const { zone, heightM, isFloorCheck } = place;
     const at = layerMouth(model, mouth, floorLevelM);
-    return [{ zone: zone.id, heightM, isFloorCheck, at, bounds: boundsOf(bound) }];
-=======
-  const mixed = model.spaces.map((_, space) => rowsAt(spaceTrack(model, runs, space), wanted));
-  const mouths = places.map(({ zone, heightM, isFloorCheck }): DrawnMouth => {
-    const space = model.indexOf.get(zone.space) ?? 0;
-    const mouth = boundMouth(model, releases, space, zone.floorLevelM, heightM);
-    return {
-      zone: zone.id,
-      heightM,
-      isFloorCheck,
-      at: layerMouth(model, mouth, zone.floorLevelM),
-      bounds: rowsAt(boundTrack(model, runs, releases, mouth), wanted),
-      mixed: mixed[space] ?? new Float64Array(wanted.length * width),
-    };
->>>>>>> /tmp/new.f
+    const [bounds, air] = [rowsOf(bound), rowsOf(flat)];
+    return [{ zone: zone.id, heightM, isFloorCheck, at, bounds, mixed: air }];
   });
   return { mouths, timesS: wanted };
 }

@@ -172,7 +172,8 @@ export function airRun(
     floorLevelM: place.floorLevelM,
     bound: place.bound().track,
   }));
-  return { ...answer, ...bandedZones({ model, gases, asked, timesS }, zones) };
+  const flat = mixed.map(({ track }) => track);
+  return { ...answer, ...bandedZones({ model, gases, asked, mixed: flat, timesS }, zones) };
 }
 
 function outputTimes(input: AirInput): readonly number[] {
