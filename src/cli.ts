@@ -78,9 +78,12 @@ async function writeSheets(document: unknown, folder: string, data: AssessmentDa
   const { assess, checkedPlan } = await import('./assessment/assess.js');
   const { renderRiskSheet } = await import('./sheets/risk-sheet-pdf.js');
   const assessment = assess(checkedPlan(document, data), data);
-  const pdf = await renderRiskSheet(assessment, {
-    printedOn: assessment.date ?? new Date().toISOString().slice(0, 10),
+  const printedOn = assessment.date ?? new Date().toISOString().slice(0, 10);
+  const pdf = await renderRiskSheet(assessment, { printedOn, status: 'draft' });
+  const workings = await renderRiskSheet(assessment, {
+    printedOn,
     status: 'draft',
+    kind: 'workings',
   });
   try {
     mkdirSync(folder, { recursive: true });
@@ -92,6 +95,7 @@ async function writeSheets(document: unknown, folder: string, data: AssessmentDa
     );
   }
   writeWhole(join(folder, 'risk-sheet.pdf'), pdf);
+  writeWhole(join(folder, 'workings.pdf'), workings);
 }
 
 async function writePreviews(document: unknown, file: string, data: AssessmentData): Promise<void> {

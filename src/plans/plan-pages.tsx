@@ -239,6 +239,9 @@ export function PlanPage(props: PlanPageProps): VNode {
           <a href={`/plans/${plan.id}/sheets/risk.pdf`}>{words.download}</a>
         </li>
         <li>
+          <a href={`/plans/${plan.id}/sheets/workings.pdf`}>{words.workings}</a>
+        </li>
+        <li>
           <a href={`/plans/${plan.id}/export.json`}>{words.export}</a>
         </li>
         {venueId !== undefined && (

@@ -3,19 +3,27 @@ import { quantityText } from '../assessment/figure-text.js';
 import type { Block, DocumentTree, SheetStatus } from './document-tree.js';
 import { filledText } from './filled-text.js';
 import { actsPart } from './risk/acts-part.js';
-import { conditionsPart, controlsPart, findingsPart, questionsPart } from './risk/controls-part.js';
+import {
+  conditionsPart,
+  controlsPart,
+  findingsPart,
+  offeredPart,
+  questionsPart,
+} from './risk/controls-part.js';
 import { decisionPart } from './risk/decision-part.js';
-import { curvePart, sectionPart } from './risk/drawings-part.js';
+import { curvePart, momentsPart, sectionPart } from './risk/drawings-part.js';
 import { amountsPart, soundPart } from './risk/effects-part.js';
 import {
   assumptionsPart,
   cautionsPart,
+  inputsPart,
   rulesPart,
   signOffPart,
   validityPart,
 } from './risk/record-part.js';
 import type { PartName, RiskTexts } from './risk/risk-texts.js';
-import { zonesPart } from './risk/zones-part.js';
+import { driversPart, numberPart, tablePart } from './risk/workings-part.js';
+import { floorPart, zonesPart } from './risk/zones-part.js';
 
 export interface RiskSheetFacts {
   /** Day of printing, yyyy-mm-dd; passed in, so that the same sheet is the same bytes. */
@@ -40,6 +48,13 @@ const parts: Record<PartName, (assessment: Assessment, texts: RiskTexts) => Bloc
   assumptions: assumptionsPart,
   validity: (_assessment, texts) => validityPart(texts),
   signOff: signOffPart,
+  number: numberPart,
+  drivers: driversPart,
+  floor: floorPart,
+  moments: momentsPart,
+  offered: offeredPart,
+  inputs: inputsPart,
+  table: tablePart,
 };
 
 /** The risk sheet of an assessment: nothing is computed here, every number is a formatted Figure. */
@@ -48,26 +63,50 @@ export function riskSheet(
   texts: RiskTexts,
   facts: RiskSheetFacts,
 ): DocumentTree {
+  const { sheetName, subject, order, running } = texts;
+  return sheetOf(assessment, texts, facts, {
+    sheetName,
+    subject,
+    order,
+    headerLeft: running.headerLeft,
+  });
+}
+
+/** How the numbers of a risk sheet came about, from the same assessment. */
+export function workingsSheet(
+  assessment: Assessment,
+  texts: RiskTexts,
+  facts: RiskSheetFacts,
+): DocumentTree {
+  return sheetOf(assessment, texts, facts, texts.workings);
+}
+
+function sheetOf(
+  assessment: Assessment,
+  texts: RiskTexts,
+  facts: RiskSheetFacts,
+  kind: RiskTexts['workings'],
+): DocumentTree {
   const status = texts.status[facts.status];
   const { running } = texts;
   const slots = { title: assessment.title, revision: assessment.revision, status };
   return {
-    title: `${texts.sheetName}: ${assessment.title}`,
+    title: `${kind.sheetName}: ${assessment.title}`,
     lang: texts.language,
     revision: assessment.revision,
     status: facts.status,
     mark: facts.status === 'approved' ? null : texts.mark[facts.status],
-    sheetName: texts.sheetName,
-    subject: texts.subject,
+    sheetName: kind.sheetName,
+    subject: kind.subject,
     keywords: texts.keywords,
-    headerLeft: filledText(running.headerLeft, slots),
+    headerLeft: filledText(kind.headerLeft, slots),
     headerRight: filledText(running.headerRight, slots),
     footerLeft: running.footerLeft,
     footerRight: running.footerRight,
     blocks: [
-      { kind: 'heading', level: 1, over: texts.sheetName, words: assessment.title },
+      { kind: 'heading', level: 1, over: kind.sheetName, words: assessment.title },
       aboutThisSheet(assessment, texts, facts),
-      ...texts.order.flatMap((name, index): Block[] => [
+      ...kind.order.flatMap((name, index): Block[] => [
         {
           kind: 'heading',
           level: 2,

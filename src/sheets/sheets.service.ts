@@ -1,12 +1,14 @@
 import { Injectable } from '@nestjs/common';
 import { InvalidInput } from '../errors.js';
 import { PlansService } from '../plans/plans.service.js';
-import { renderRiskSheet } from './risk-sheet-pdf.js';
+import { renderRiskSheet, type SheetKind } from './risk-sheet-pdf.js';
 
 export interface SheetFile {
   readonly name: string;
   readonly bytes: Uint8Array;
 }
+
+const fileEnds: Record<SheetKind, string> = { risk: 'risk-sheet', workings: 'workings' };
 
 /** Sheets of plans, printed from the same assessment that the page shows. */
 @Injectable()
@@ -14,7 +16,7 @@ export class SheetsService {
   constructor(private readonly plans: PlansService) {}
 
   /** @throws {NotFound} without such a plan; {InvalidInput} while it cannot be worked out */
-  async riskSheet(planId: string, printedOn: string): Promise<SheetFile> {
+  async sheet(planId: string, kind: SheetKind, printedOn: string): Promise<SheetFile> {
     const { plan, outcome } = await this.plans.open(planId);
     if (outcome.assessment === undefined) {
       throw new InvalidInput(
@@ -23,8 +25,8 @@ export class SheetsService {
         outcome.failure.details,
       );
     }
-    const bytes = await renderRiskSheet(outcome.assessment, { printedOn, status: 'draft' });
+    const bytes = await renderRiskSheet(outcome.assessment, { printedOn, status: 'draft', kind });
     const name = plan.title.replaceAll(/[^A-Za-z0-9]+/g, '-').slice(0, 60);
-    return { name: `${name === '' ? 'plan' : name}-risk-sheet.pdf`, bytes };
+    return { name: `${name === '' ? 'plan' : name}-${fileEnds[kind]}.pdf`, bytes };
   }
 }

@@ -90,12 +90,18 @@ describe('renderRiskSheet', () => {
   let document: PDFDocumentProxy;
   let folder: string;
   let file: string;
+  let workingsFile: string;
   beforeAll(async () => {
     bytes = await renderRiskSheet(assessmentFixture, draft);
     document = await open(bytes);
     folder = mkdtempSync(join(tmpdir(), 'sheet-'));
     file = join(folder, 'sheet.pdf');
     writeFileSync(file, bytes);
+    workingsFile = join(folder, 'workings.pdf');
+    writeFileSync(
+      workingsFile,
+      await renderRiskSheet(assessmentFixture, { ...draft, kind: 'workings' }),
+    );
   });
   afterAll(() => {
     rmSync(folder, { recursive: true });
@@ -150,11 +156,20 @@ describe('renderRiskSheet', () => {
   });
 
   it('says what each figure shows, numbers included', async () => {
-    const figures = (await tagsOf(document)).filter((tag) => tag.role === 'Figure');
-    expect(figures).toHaveLength(3);
-    const [curve, planned, worst] = figures.map((figure) =>
-      (figure.alt ?? '').replaceAll('\u00a0', ' '),
+    const altsOf = async (sheet: PDFDocumentProxy): Promise<string[]> =>
+      (await tagsOf(sheet))
+        .filter((tag) => tag.role === 'Figure')
+        .map((figure) => (figure.alt ?? '').replaceAll('\u00a0', ' '));
+    const signed = await altsOf(document);
+    const workings = await altsOf(
+      await open(await renderRiskSheet(assessmentFixture, { ...draft, kind: 'workings' })),
     );
+    // The sheet that is signed shows the case that decides, the workings show both.
+    expect(signed).toHaveLength(2);
+    expect(workings).toHaveLength(2);
+    const [curve] = signed;
+    const [planned, worst] = workings;
+    expect(signed[1]).toBe(planned);
     expect(curve).toContain('inventory bound lowest 17.8 % at 20:00');
     expect(curve).toContain('layered, 95 in 100');
     expect(planned).toContain('20:00, when the planned day is at its worst.');
@@ -205,7 +220,9 @@ describe('renderRiskSheet', () => {
   });
 
   it.skipIf(!isInstalled('qpdf'))('passes qpdf --check without a complaint', () => {
-    expect(run('qpdf', '--check', file)).toContain('No syntax or stream encoding errors found');
+    for (const path of [file, workingsFile]) {
+      expect(run('qpdf', '--check', path)).toContain('No syntax or stream encoding errors found');
+    }
   });
 
   it.skipIf(!isInstalled('pdfinfo'))(
@@ -222,7 +239,11 @@ describe('renderRiskSheet', () => {
   it.skipIf(!isInstalled('pdftotext'))(
     'prints every figure that it shows exactly as the formatter writes it',
     () => {
-      const text = run('pdftotext', '-layout', file, '-').replaceAll('\u00a0', ' ');
+      // The sound stands in the workings, the rest in the sheet that is signed.
+      const text = [file, workingsFile]
+        .map((path) => run('pdftotext', '-layout', path, '-'))
+        .join('\n')
+        .replaceAll('\u00a0', ' ');
       const shown = shownFigures(assessmentFixture);
       expect(shown.length).toBeGreaterThan(50);
       for (const figure of shown) {

@@ -10,7 +10,7 @@ import type {
 import { decisionStrips } from './decision-strips.js';
 import { setLines, type Typesetter } from './lines.js';
 import { accent, baselineIn, looks } from './look.js';
-import type { Mark, Strip, StructureNode } from './marks.js';
+import type { Mark, Piece, Strip, StructureNode } from './marks.js';
 import { tableStrips } from './table-strips.js';
 import { lineMark, lineMarks, textStrips } from './text-strips.js';
 
@@ -203,7 +203,10 @@ function bulletStrips(
   return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));
 }
 
-/** Numbered entries in one column or two; in two they run across, so that a page may end anywhere. */
+/** Tallest run of entries side by side in two columns [pt]: a page may end between two runs. */
+const tallestRun = 84;
+
+/** Numbered entries in one column, or in two that are read down, run by run. */
 function numberedStrips(
   list: NumberedList,
   frame: Frame,
@@ -218,42 +221,85 @@ function numberedStrips(
   const width = (frame.width - gap * (columns - 1)) / columns;
   const indent = 18;
   const look = columns === 1 ? looks.body : looks.note;
-  const entries = list.items.map((entry, index) => {
+  const entries = list.items.map((entry) => {
     const item = node('LI');
     const label = node('Lbl');
     const body = node('LBody');
     item.children.push(label, body);
     element.children.push(item);
-    const x = frame.x + (index % columns) * (width + gap);
     const numberLook = { ...look, weight: 'strong' as const };
     const numbers = setLines(entry.number, numberLook, indent, set);
     const lines = setLines(entry.words, look, width - indent, set);
     const detail = setLines(entry.detail, looks.small, width - indent, set);
     return {
       height: lines.length * look.leading + detail.length * looks.small.leading,
-      pieces: [
-        { node: label, marks: lineMarks(numbers, numberLook, x, 0) },
+      piecesAt: (x: number, y: number): Piece[] => [
+        { node: label, marks: lineMarks(numbers, numberLook, x, y) },
         {
           node: body,
           marks: [
-            ...lineMarks(lines, look, x + indent, 0),
-            ...lineMarks(detail, looks.small, x + indent, lines.length * look.leading),
+            ...lineMarks(lines, look, x + indent, y),
+            ...lineMarks(detail, looks.small, x + indent, y + lines.length * look.leading),
           ],
         },
       ],
     };
   });
-  const strips: Strip[] = [];
-  for (let first = 0; first < entries.length; first += columns) {
-    const row = entries.slice(first, first + columns);
-    strips.push({
-      height: Math.max(...row.map((entry) => entry.height)),
-      before: columns === 1 ? 2.5 : 1.2,
+  if (columns === 1) {
+    return entries.map(({ height, piecesAt }) => ({
+      height,
+      before: 2.5,
       keepWithNext: false,
-      pieces: row.flatMap((entry) => entry.pieces),
-    });
+      pieces: piecesAt(frame.x, 0),
+    }));
   }
-  return strips;
+  return columnRuns(entries).map((run) => {
+    const halves = evenHalves(run);
+    return {
+      height: Math.max(...halves.map(heightOf)),
+      before: between,
+      keepWithNext: false,
+      pieces: halves.flatMap((half, column) =>
+        half.flatMap((entry, index) =>
+          entry.piecesAt(
+            frame.x + column * (width + gap),
+            index === 0 ? 0 : heightOf(half.slice(0, index)) + between,
+          ),
+        ),
+      ),
+    };
+  });
+}
+
+const between = 1.4;
+
+interface Entry {
+  readonly height: number;
+  piecesAt(x: number, y: number): Piece[];
+}
+
+/** Height of entries under each other. */
+const heightOf = (entries: readonly Entry[]): number =>
+  entries.reduce((sum, entry) => sum + entry.height, 0) + between * Math.max(0, entries.length - 1);
+
+/** Entries in runs that fill two columns of the height of a run, or of one tall entry. */
+function columnRuns(entries: readonly Entry[]): Entry[][] {
+  const runs: Entry[][] = [];
+  for (const entry of entries) {
+    const open = runs.at(-1);
+    if (open !== undefined && heightOf([...open, entry]) <= 2 * tallestRun) open.push(entry);
+    else runs.push([entry]);
+  }
+  return runs;
+}
+
+/** A run cut in two where the taller half is lowest. */
+function evenHalves(run: readonly Entry[]): [readonly Entry[], readonly Entry[]] {
+  const cuts = Array.from({ length: run.length }, (_, index) => index + 1);
+  const taller = (cut: number): number =>
+    Math.max(heightOf(run.slice(0, cut)), heightOf(run.slice(cut)));
+  const best = cuts.reduce((one, other) => (taller(other) < taller(one) ? other : one), 1);
+  return [run.slice(0, best), run.slice(best)];
 }
 
 function emptyStrips(words: string, frame: Frame, parent: StructureNode, set: Typesetter): Strip[] {
@@ -314,7 +360,7 @@ function signOffStrips(
     frame,
     parent,
     set,
-    24,
+    21,
   );
   // The whole block is signed at once: it never spans two pages.
   return strips.map((strip, index) => ({ ...strip, keepWithNext: index < strips.length - 1 }));

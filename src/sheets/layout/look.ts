@@ -16,7 +16,7 @@ export interface Paper {
   readonly bottom: number;
 }
 
-const margins = { left: 40, right: 40, top: 52, bottom: 46 };
+const margins = { left: 40, right: 40, top: 48, bottom: 46 };
 export const papers: Record<Size, Paper> = {
   a4: { width: 595.28, height: 841.89, ...margins },
   letter: { width: 612, height: 792, ...margins },

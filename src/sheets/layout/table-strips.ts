@@ -159,9 +159,13 @@ export function tableStrips(
   groups.forEach((rows, index) => {
     const last = index === groups.length - 1;
     const under = groupStrips(rows, table.columns.length, setting, last);
-    // The first rows stay with the head, so that a head never stands alone.
+    // A short first row keeps the next one too, so that a head never stands almost alone.
     strips.push(
-      ...under.map((strip) => (index === 0 && !last ? { ...strip, keepWithNext: true } : strip)),
+      ...under.map((strip) =>
+        index === 0 && !last && under.length === 1 && strip.height < 3 * looks.cell.leading
+          ? { ...strip, keepWithNext: true }
+          : strip,
+      ),
     );
   });
   return strips;

@@ -15,15 +15,11 @@ export function actsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       caption: words.caption,
       empty: words.none,
       columns: [
-        { title: words.act, share: 3, align: 'left' },
-        { title: words.case, share: 1.2, align: 'left' },
-        { title: words.release, share: 2.4, align: 'left' },
-        { title: words.gas, share: 0.6, align: 'left' },
-        { title: words.mass, share: 1.1, align: 'right' },
-        { title: words.volume, share: 1.1, align: 'right' },
-        { title: words.over, share: 1.1, align: 'right' },
+        { title: words.act, share: 2.6, align: 'left' },
+        { title: words.planned, share: 3.6, align: 'left' },
+        { title: words.worst, share: 3.6, align: 'left' },
       ],
-      rows: assessment.acts.flatMap((act) => actRows(act, texts)),
+      rows: assessment.acts.map((act) => actRow(act, texts)),
     },
     {
       kind: 'table',
@@ -68,15 +64,8 @@ function repeatsTogether(lines: readonly ReleaseLine[], texts: RiskTexts): Relea
   });
 }
 
-function actRows(act: ActResult, texts: RiskTexts): TableRow[] {
+function actRow(act: ActResult, texts: RiskTexts): TableRow {
   const words = texts.parts.acts;
-  const lines: { caseName: 'planned' | 'worstCredible'; line: ReleaseLine }[] = [
-    ...repeatsTogether(act.planned, texts).map((line) => ({ caseName: 'planned' as const, line })),
-    ...repeatsTogether(act.worstCredible, texts).map((line) => ({
-      caseName: 'worstCredible' as const,
-      line,
-    })),
-  ];
   const title = [
     { text: `${act.title}\n`, strong: true as const },
     {
@@ -90,17 +79,27 @@ function actRows(act: ActResult, texts: RiskTexts): TableRow[] {
       ),
     },
   ];
-  if (lines.length === 0) return [{ cells: [title, '–', words.none, '–', '–', '–', '–'] }];
-  return lines.map(({ caseName, line }, index) => ({
-    cells: [
-      index === 0 ? title : '',
-      texts.cases[caseName],
-      line.title,
-      line.gas,
-      figureOnLine(line.mass),
-      figureOnLine(line.volume),
-      line.durationS === 0 ? words.atOnce : quantityText(line.durationS, 's'),
-    ],
-    ...(index === 0 ? {} : { continues: true as const }),
-  }));
+  return {
+    cells: [title, releaseWords(act.planned, texts), releaseWords(act.worstCredible, texts)],
+  };
+}
+
+/** Releases under each other, each with its gas, amount and how fast it comes. */
+function releaseWords(lines: readonly ReleaseLine[], texts: RiskTexts): string {
+  const words = texts.parts.acts;
+  if (lines.length === 0) return words.none;
+  return repeatsTogether(lines, texts)
+    .map((line) =>
+      filledText(words.line, {
+        title: line.title,
+        gas: line.gas,
+        mass: figureOnLine(line.mass),
+        volume: figureOnLine(line.volume),
+        over:
+          line.durationS === 0
+            ? words.atOnce
+            : filledText(words.over, { time: quantityText(line.durationS, 's') }),
+      }),
+    )
+    .join('\n');
 }

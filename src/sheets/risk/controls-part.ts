@@ -1,7 +1,13 @@
 import type { Assessment, ControlResult } from '../../assessment/assessment.js';
+import { findingGroups, type FindingGroup } from '../../assessment/finding-groups.js';
 import type { Block, Words } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
-import { conditionGroups, numberRanges, placeLine } from '../../assessment/condition-groups.js';
+import {
+  conditionGroups,
+  numberRanges,
+  placeLine,
+  type ConditionGroup,
+} from '../../assessment/condition-groups.js';
 import { actTitle, figureOrDash, figureWords } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
 
@@ -19,13 +25,10 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
   const sorted = assessment.controls.toSorted(
     (one, other) => levelOrder.indexOf(one.level) - levelOrder.indexOf(other.level),
   );
-  const offered = offeredLines(
-    assessment,
-    sorted.filter((control) => !control.chosen),
-    texts,
-  );
   return [
-    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
+    ...(sorted.some((control) => control.chosen)
+      ? [{ kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true } as const]
+      : []),
     {
       kind: 'table',
       caption: words.chosenCaption,
@@ -51,13 +54,17 @@ export function controlsPart(assessment: Assessment, texts: RiskTexts): Block[] 
           ],
         })),
     },
-    ...(offered.length === 0
+    ...(sorted.every((control) => control.chosen)
       ? []
-      : ([
-          { kind: 'paragraph', look: 'note', words: words.offered, keepWithNext: true },
-          { kind: 'list', look: 'note', items: offered, empty: words.none },
-        ] as const)),
+      : [{ kind: 'paragraph', look: 'note', words: words.more } as const]),
   ];
+}
+
+/** What the catalogue offers and the plan has not taken. */
+export function offeredPart(assessment: Assessment, texts: RiskTexts): Block[] {
+  const offered = assessment.controls.filter((control) => !control.chosen);
+  const items = offeredLines(assessment, offered, texts);
+  return [{ kind: 'list', look: 'note', items, empty: texts.parts.offered.none }];
 }
 
 /** One line per act with the titles of the controls it could still take. */
@@ -93,7 +100,7 @@ export function conditionsPart(assessment: Assessment, texts: RiskTexts): Block[
           { text: group.head, strong: true },
           ...(group.blocksStart ? [{ text: ` ${words.blocks}` }] : []),
           ...(group.remark === '' ? [] : [{ text: ` ${group.remark}` }]),
-          ...group.places.map((place) => ({ text: `\n${placeLine(place)}.` })),
+          ...placeLines(group).map((line) => ({ text: `\n${line}.` })),
         ],
         detail: [
           ...group.checklist.map((line) => filledText(words.onTheDay, { line })),
@@ -110,6 +117,14 @@ export function conditionsPart(assessment: Assessment, texts: RiskTexts): Block[
       })),
     },
   ];
+}
+
+/** A line per place; bare names of places stand in one line. */
+function placeLines({ places }: ConditionGroup): string[] {
+  const lines = places.map(placeLine);
+  return places.every(({ asks }) => asks.length === 0) && lines.length > 0
+    ? [lines.join('; ')]
+    : lines;
 }
 
 /** What was refused and what was found. */
@@ -130,18 +145,22 @@ export function findingsPart(assessment: Assessment, texts: RiskTexts): Block[] 
       })),
     },
     {
-      kind: 'table',
-      caption: words.findingsCaption,
+      kind: 'list',
+      look: 'note',
       empty: words.noFindings,
-      columns: [
-        { title: words.kind, share: 1, align: 'left' },
-        { title: words.text, share: 7, align: 'left' },
-      ],
-      rows: assessment.findings.map((finding) => ({
-        cells: [texts.findingKinds[finding.kind], finding.text],
-      })),
+      items: findingGroups(assessment).map(({ kind, items, shared }) => [
+        { text: `${texts.findingKinds[kind]}: `, strong: true },
+        { text: findingWords(items, shared) },
+      ]),
     },
   ];
+}
+
+/** What differs between findings alike, then what they share. */
+function findingWords(items: FindingGroup['items'], shared: string): string {
+  const texts = items.map(({ text }) => text.replace(/\.$/, ''));
+  const all = `${texts.join('; ')}.`;
+  return shared === '' ? all : `${all} ${shared}`;
 }
 
 /** The few answers that would change the word. */

@@ -117,10 +117,25 @@ function printedMoments({ section }: Assessment): readonly SectionMoment[] {
   );
 }
 
-/** The section of the spaces with people, acts or gas, and the names of those left out. */
+/** The section at the worst of the case that decides. */
 export function sectionPart(assessment: Assessment, texts: RiskTexts): Block[] {
-  const words = texts.parts.section;
   const moments = printedMoments(assessment);
+  const caseName = assessment.governing?.caseName;
+  const [decisive = moments.at(-1)] = moments.filter((moment) => moment.caseName === caseName);
+  return drawnMoments(assessment, decisive === undefined ? [] : [decisive], texts);
+}
+
+/** The section at the worst of each case. */
+export const momentsPart = (assessment: Assessment, texts: RiskTexts): Block[] =>
+  drawnMoments(assessment, printedMoments(assessment), texts);
+
+/** The section of the spaces with people, acts or gas, and the names of those left out. */
+function drawnMoments(
+  assessment: Assessment,
+  moments: readonly SectionMoment[],
+  texts: RiskTexts,
+): Block[] {
+  const words = texts.parts.section;
   const { view, leftOut } = spacesInUse(assessment.section, assessment.acts, moments);
   const drawn = moments.map((moment) => ({
     view: momentView(view, moment, sectionWords),

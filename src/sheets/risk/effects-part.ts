@@ -1,4 +1,4 @@
-import type { Assessment, Figure, SoundResult } from '../../assessment/assessment.js';
+import type { Assessment, Figure, HoldTime, SoundResult } from '../../assessment/assessment.js';
 import { quantityText, spanText } from '../../assessment/figure-text.js';
 import type { Block } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
@@ -114,6 +114,35 @@ const spanWords = (figure: Figure): string => {
   return span === undefined ? '' : ` (${span})`;
 };
 
+type Amounts = [Assessment['largestAmounts'][number], ...Assessment['largestAmounts'][number][]];
+
+/** Largest amounts that are the same and limited alike, told together. */
+function largestAlike({ largestAmounts }: Assessment): Amounts[] {
+  const groups = new Map<string, Amounts>();
+  for (const amount of largestAmounts) {
+    const { zone, limitedBy, mass, volume } = amount;
+    const key = JSON.stringify([zone, limitedBy, mass.value, volume.value]);
+    const known = groups.get(key);
+    if (known === undefined) groups.set(key, [amount]);
+    else known.push(amount);
+  }
+  return [...groups.values()];
+}
+
+type Holds = [HoldTime, ...HoldTime[]];
+
+/** Hold times with the same time and remark, told together. */
+function holdsAlike({ holdTimes }: Assessment): Holds[] {
+  const groups = new Map<string, Holds>();
+  for (const hold of holdTimes) {
+    const key = JSON.stringify([hold.time?.value ?? null, hold.words]);
+    const known = groups.get(key);
+    if (known === undefined) groups.set(key, [hold]);
+    else known.push(hold);
+  }
+  return [...groups.values()];
+}
+
 /** Largest amounts that pass, how long to wait, and the greenhouse effect where it counts. */
 export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.amounts;
@@ -133,21 +162,26 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       caption: words.largestCaption,
       empty: words.noLargest,
       columns: [
-        { title: words.act, share: 3, align: 'left' },
-        { title: words.gas, share: 0.8, align: 'left' },
-        { title: words.limitedBy, share: 5.2, align: 'left' },
+        { title: words.act, share: 5.4, align: 'left' },
+        { title: words.gas, share: 1.1, align: 'left' },
+        { title: words.limitedBy, share: 4, align: 'left' },
         { title: words.mass, share: 0.9, align: 'right' },
         { title: words.volume, share: 0.9, align: 'right' },
-        { title: words.planned, share: 0.9, align: 'right' },
       ],
-      rows: assessment.largestAmounts.map((entry) => ({
+      rows: largestAlike(assessment).map(([entry, ...more]) => ({
         cells: [
-          actTitle(assessment, entry.act),
-          entry.gas,
+          [entry, ...more]
+            .map((one) =>
+              filledText(words.actPlanned, {
+                act: actTitle(assessment, one.act),
+                planned: figureOnLine(one.planned),
+              }),
+            )
+            .join('; '),
+          [...new Set([entry, ...more].flatMap((one) => one.gas.split(', ')))].join(', '),
           `${zoneTitle(assessment, entry.zone)}: ${entry.limitedBy}`,
           figureWords(entry.mass, 'down'),
           figureWords(entry.volume, 'down'),
-          figureWords(entry.planned),
         ],
       })),
     },
@@ -156,19 +190,23 @@ export function amountsPart(assessment: Assessment, texts: RiskTexts): Block[] {
       caption: words.holdCaption,
       empty: words.noHold,
       columns: [
-        { title: words.space, share: 2, align: 'left' },
-        { title: words.quantity, share: 1.6, align: 'left' },
-        { title: words.toLevel, share: 1, align: 'right' },
-        { title: words.time, share: 1.2, align: 'right' },
+        { title: words.space, share: 1.4, align: 'left' },
+        { title: words.toLevel, share: 2, align: 'left' },
+        { title: words.time, share: 1, align: 'right' },
         ...(sharedRemark === null
-          ? [{ title: words.words, share: 4, align: 'left' } as const]
+          ? [{ title: words.words, share: 5.6, align: 'left' } as const]
           : []),
       ],
-      rows: assessment.holdTimes.map((hold) => ({
+      rows: holdsAlike(assessment).map(([hold, ...more]) => ({
         cells: [
-          hold.spaceTitle,
-          titles.get(hold.quantity) ?? hold.quantity,
-          levelWords(hold.toLevel),
+          [...new Set([hold, ...more].map((one) => one.spaceTitle))].join(', '),
+          [
+            ...new Set(
+              [hold, ...more].map(
+                (one) => `${titles.get(one.quantity) ?? one.quantity} ${levelWords(one.toLevel)}`,
+              ),
+            ),
+          ].join(', '),
           hold.time === null ? words.noTime : figureWords(hold.time),
           ...(sharedRemark === null ? [hold.words] : []),
         ],

@@ -9,39 +9,44 @@ export function rulesPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.rules;
   return [
     { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
+    ...(assessment.rulesCited.length === 0
+      ? [{ kind: 'paragraph', look: 'note', words: words.none } as const]
+      : ruleLists(assessment, texts)),
+  ];
+}
+
+/** The rules by how far they were checked; numbered through. */
+function ruleLists(assessment: Assessment, texts: RiskTexts): Block[] {
+  const words = texts.parts.rules;
+  const byStatus = new Map<string, Assessment['rulesCited'][number][]>();
+  for (const rule of assessment.rulesCited) {
+    const pattern = rule.confirm ? words.statusConfirm : words.status;
+    const status = filledText(pattern, { checked: rule.checked });
+    byStatus.set(status, [...(byStatus.get(status) ?? []), rule]);
+  }
+  let number = 0;
+  return [...byStatus].flatMap(([status, rules]): Block[] => [
     {
-      kind: 'table',
-      caption: '',
-      empty: words.none,
-      columns: [
-        { title: words.rule, share: 2.9, align: 'left' },
-        { title: words.edition, share: 1.5, align: 'left' },
-        { title: words.duty, share: 4.1, align: 'left' },
-        { title: words.status, share: 1.7, align: 'left' },
-      ],
-      rows: assessment.rulesCited.map((rule) => ({
-        cells: [
-          rule.instrument,
-          rule.edition,
-          [
-            ...(rule.section === '' ? [] : [{ text: `${rule.section}: `, strong: true as const }]),
-            { text: shortDuty(rule.duty) },
-          ],
-          [
-            { text: rule.checked },
-            ...(rule.confirm
-              ? [
-                  {
-                    text: rule.checked === '' ? words.confirm : `; ${words.confirm}`,
-                    strong: true as const,
-                  },
-                ]
-              : []),
-          ],
+      kind: 'paragraph',
+      look: 'note',
+      words: [{ text: status.replace(/^./, (letter) => letter.toUpperCase()), strong: true }],
+      keepWithNext: true,
+    },
+    {
+      kind: 'numbered',
+      columns: 2,
+      empty: '',
+      items: rules.map((rule) => ({
+        number: String((number += 1)),
+        words: [
+          { text: `${rule.instrument} `, strong: true },
+          { text: `(${rule.edition}): ` },
+          { text: [rule.section, shortDuty(rule.duty)].filter((part) => part !== '').join(': ') },
         ],
+        detail: '',
       })),
     },
-  ];
+  ]);
 }
 
 /** The main clause of a duty; the whole of it stands in the rule pack and the workings. */
@@ -72,9 +77,35 @@ export function cautionsPart(assessment: Assessment, texts: RiskTexts): Block[] 
   ];
 }
 
-/** Inputs with where they came from, so that a reader can doubt each. */
+/** What was not measured, by where it comes from. */
 export function assumptionsPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.assumptions;
+  const byOrigin = new Map<string, Set<string>>();
+  for (const { text, path, origin, figure } of assessment.assumptions) {
+    const [what = text] = text.split(': ');
+    const place = placeOf(assessment, path);
+    const named = place === null || what.includes(place) ? what : `${place}: ${what}`;
+    const key = texts.origins[origin];
+    const value = figure === null ? '' : ` ${figureOnLine(figure)}`;
+    byOrigin.set(key, (byOrigin.get(key) ?? new Set()).add(`${named}${value}`));
+  }
+  return [
+    { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
+    {
+      kind: 'list',
+      look: 'note',
+      empty: words.none,
+      items: [...byOrigin].map(([origin, whats]) => [
+        { text: `${origin}: `, strong: true },
+        { text: `${[...whats].join('; ')}.` },
+      ]),
+    },
+  ];
+}
+
+/** Inputs with where they came from, so that a reader can doubt each. */
+export function inputsPart(assessment: Assessment, texts: RiskTexts): Block[] {
+  const words = texts.parts.inputs;
   const { assumptions } = assessment;
   // A text that names its value needs no column for it.
   const withValues = assumptions.some((entry) => entry.figure !== null);

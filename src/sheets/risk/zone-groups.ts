@@ -42,6 +42,11 @@ const standings: readonly ZoneQuantity['standing'][] = [
   'past never',
 ];
 
+/** The standing furthest from the aim. */
+export const gravestStanding = (quantities: readonly ZoneQuantity[]): ZoneQuantity['standing'] =>
+  standings.findLast((standing) => quantities.some((entry) => entry.standing === standing)) ??
+  'meets aim';
+
 /** The standing further from the aim. */
 const worseStanding = (
   one: ZoneQuantity['standing'],

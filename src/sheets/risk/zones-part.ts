@@ -13,7 +13,13 @@ import type { Block, Table, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
 import { levelWords } from './figure-words.js';
 import type { RiskTexts } from './risk-texts.js';
-import { floorChecks, isLowBad, zoneGroups, type ZoneGroup } from './zone-groups.js';
+import {
+  floorChecks,
+  gravestStanding,
+  isLowBad,
+  zoneGroups,
+  type ZoneGroup,
+} from './zone-groups.js';
 
 /** What people breathe: declared heights, the floor, the levels, and when one is passed. */
 export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
@@ -21,12 +27,11 @@ export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const { zones } = assessment;
   const groups = zoneGroups(zones);
   const floors = floorChecks(zones);
-  const notComputed = zones.flatMap((zone) =>
-    zone.notComputed === null
-      ? []
-      : [filledText(words.notComputed, { zone: zone.title, words: zone.notComputed })],
-  );
-  const remarks = [...notComputed, ...leftOut([...groups, ...floors], texts)];
+  const remarks = [
+    ...notComputed(zones, texts),
+    ...leftOut([...groups, ...floors], texts),
+    ...floorNote(floors, texts),
+  ];
   return [
     { kind: 'paragraph', look: 'small', words: words.intro, keepWithNext: true },
     answerTable(groups, words.caption, words.zone, texts, (group) => [
@@ -41,19 +46,50 @@ export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
         }),
       },
     ]),
-    ...(floors.length === 0
-      ? []
-      : [
-          answerTable(floors, words.floorCaption, words.floorSpace, texts, (group) => [
-            { text: group.first.spaceTitle, strong: true },
-          ]),
-        ]),
     ...(remarks.length === 0
       ? []
       : [{ kind: 'list', look: 'note', items: remarks, empty: words.none } as const]),
     levelTable(zones, texts),
     ...crossingBlocks(assessment, groups, texts),
   ];
+}
+
+/** The check near the floor, with its numbers. */
+export function floorPart(assessment: Assessment, texts: RiskTexts): Block[] {
+  const words = texts.parts.zones;
+  const floors = floorChecks(assessment.zones);
+  if (floors.length === 0) {
+    return [{ kind: 'paragraph', look: 'body', words: texts.parts.floor.none }];
+  }
+  return [
+    answerTable(floors, words.floorCaption, words.floorSpace, texts, (group) => [
+      { text: group.first.spaceTitle, strong: true },
+    ]),
+  ];
+}
+
+/** How each space stands near its floor, in a line. */
+function floorNote(floors: readonly ZoneGroup[], texts: RiskTexts): string[] {
+  if (floors.length === 0) return [];
+  const byStanding = new Map<string, string[]>();
+  for (const { first, quantities } of floors) {
+    const standing = texts.standings[gravestStanding(quantities)];
+    byStanding.set(standing, [...(byStanding.get(standing) ?? []), first.spaceTitle]);
+  }
+  const spaces = [...byStanding].map(([standing, names]) => `${names.join(', ')} ${standing}`);
+  return [filledText(texts.parts.zones.floorNote, { spaces: spaces.join('; ') })];
+}
+
+/** Zones without a number, those for the same reason together. */
+function notComputed(zones: readonly ZoneResult[], texts: RiskTexts): string[] {
+  const byReason = new Map<string, string[]>();
+  for (const zone of zones) {
+    if (zone.notComputed === null) continue;
+    byReason.set(zone.notComputed, [...(byReason.get(zone.notComputed) ?? []), zone.title]);
+  }
+  return [...byReason].map(([reason, titles]) =>
+    filledText(texts.parts.zones.notComputed, { zone: titles.join('; '), words: reason }),
+  );
 }
 
 const shownCases: readonly CaseName[] = ['planned', 'worstCredible'];
@@ -138,7 +174,7 @@ function answerTable(
             answers.map((answer) => answerWords(entries[caseName], answer, texts)),
           ),
           answerWords(entries.fansOff, 'mixed', texts),
-          standingWords(entries, texts),
+          ...shownCases.map((caseName) => standingWords(entries[caseName], texts)),
         ];
         return index === 0 ? { cells } : { cells, continues: true };
       }),
@@ -148,12 +184,13 @@ function answerTable(
     kind: 'table',
     caption,
     columns: [
-      { title: head, share: 3, align: 'left' },
-      { title: words.quantity, share: 1.6, align: 'left' },
+      { title: head, share: 2.8, align: 'left' },
+      { title: words.quantity, share: 1.5, align: 'left' },
       ...answers.map((answer) => number(words.planned[answer])),
       ...answers.map((answer) => number(words.worst[answer])),
       number(words.fansOff),
-      { title: words.standing, share: 2, align: 'left' },
+      { title: words.plannedStands, share: 1.2, align: 'left' },
+      { title: words.worstStands, share: 1.2, align: 'left' },
     ],
     rows,
     empty: words.none,
@@ -177,22 +214,8 @@ function answerWords(entry: ZoneQuantity | undefined, answer: Answer, texts: Ris
     : `${value}\n${filledText(texts.parts.zones.median, { value: median })}`;
 }
 
-/** How planned and worst stand; once when they stand alike. */
-function standingWords(entries: Partial<Record<CaseName, ZoneQuantity>>, texts: RiskTexts): string {
-  const [planned, worst] = shownCases.map((name) => entries[name]?.standing);
-  const words = texts.parts.zones;
-  if (planned === worst && planned !== undefined) {
-    return filledText(words.bothStand, { standing: texts.standings[planned] });
-  }
-  return [
-    planned === undefined
-      ? []
-      : filledText(words.plannedStands, { standing: texts.standings[planned] }),
-    worst === undefined ? [] : filledText(words.worstStands, { standing: texts.standings[worst] }),
-  ]
-    .flat()
-    .join('\n');
-}
+const standingWords = (entry: ZoneQuantity | undefined, texts: RiskTexts): string =>
+  entry === undefined ? '–' : texts.standings[entry.standing];
 
 /** Each different set of levels once, with all whom it is for and where it comes from. */
 function levelTable(zones: readonly ZoneResult[], texts: RiskTexts): Table {
@@ -279,13 +302,21 @@ function crossingBlocks(
           clockText(passing.at.value, 'seconds'),
           `${passing.quantityTitle}, ${texts.answers[passing.answer]}`,
         ];
-  const rows = groups.flatMap((group) => {
+  // Zones that pass at the same times share a row.
+  const titles = new Map<string, { title: string[]; passed: string[] }>();
+  for (const group of groups) {
     const limit = earliest(group, 'limit');
     const never = earliest(group, 'never');
-    if (limit === null && never === null) return [];
-    const title = group.zones.map((zone) => zone.title).join('; ');
-    return [{ cells: [title, ...cells(limit), ...cells(never)] }];
-  });
+    if (limit === null && never === null) continue;
+    const passed = [...cells(limit), ...cells(never)];
+    const key = passed.join('\n');
+    const row = titles.get(key) ?? { title: [], passed };
+    row.title.push(...group.zones.map((zone) => zone.title));
+    titles.set(key, row);
+  }
+  const rows = [...titles.values()].map(({ title, passed }) => ({
+    cells: [title.join('; '), ...passed],
+  }));
   return [
     ...(rows.length === 0
       ? []

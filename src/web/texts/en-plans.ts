@@ -32,6 +32,7 @@ export const planTexts = {
   notStated: 'Not stated',
   yesNo: { yes: 'Yes', no: 'No', blank: 'Not stated' },
   download: 'Risk sheet (PDF)',
+  workings: 'Workings (PDF)',
   export: 'Plan file (JSON)',
   editVenue: 'Open the venue',
   toResults: 'Go to the results',
