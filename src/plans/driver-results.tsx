@@ -1,8 +1,10 @@
 import type { VNode } from 'preact';
 import type { Assessment, DriverResult } from '../assessment/assessment.js';
+import { driverGroups } from '../assessment/driver-groups.js';
 import { quantityText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
+import { sentence } from '../web/views/sentence.js';
 import { Folded } from './result-tables.js';
 
 const strengths = [
@@ -21,10 +23,8 @@ function effectText({ quantity, rankCorrelation }: DriverResult): string {
 
 /** What drives the answer: the uncertain inputs that move the band most, and how it was drawn. */
 export function DriverResults({ assessment }: { readonly assessment: Assessment }): VNode {
-  const { drivers, sampling, zones } = assessment;
-  const titleOf = ({ zone, quantity }: DriverResult): string =>
-    zones.find(({ id }) => id === zone)?.quantities.find((entry) => entry.quantity === quantity)
-      ?.quantityTitle ?? quantity;
+  const { sampling } = assessment;
+  const groups = driverGroups(assessment);
   return (
     <Folded title={words.drivers.title}>
       <p>
@@ -34,15 +34,20 @@ export function DriverResults({ assessment }: { readonly assessment: Assessment 
               .replace('{samples}', String(sampling.samples))
               .replace('{seed}', String(sampling.seed))}
       </p>
-      {drivers.length > 0 && (
+      {groups.length > 0 && (
         <Table
           caption={words.drivers.title}
           columns={words.drivers.columns}
-          rows={drivers.map((driver) => [
-            driver.zoneTitle,
-            titleOf(driver),
-            driver.inputTitle,
-            effectText(driver),
+          rows={groups.map(({ zoneTitle, quantityTitle, drivers }) => [
+            zoneTitle,
+            quantityTitle,
+            <ul class="plain">
+              {drivers.map((driver) => (
+                <li key={driver.input}>
+                  {sentence(driver.inputTitle)}. {effectText(driver)}
+                </li>
+              ))}
+            </ul>,
           ])}
           rowHeads
         />

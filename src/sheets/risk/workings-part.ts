@@ -1,4 +1,5 @@
 import type { Assessment, Figure } from '../../assessment/assessment.js';
+import { driverGroups } from '../../assessment/driver-groups.js';
 import { quantityText } from '../../assessment/figure-text.js';
 import type { Block, TableRow } from '../document-tree.js';
 import { filledText } from '../filled-text.js';
@@ -48,11 +49,8 @@ function inputWords(input: Figure['inputs'][number], texts: RiskTexts): string {
 /** How the band was drawn, and which uncertain inputs move it most. */
 export function driversPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.drivers;
-  const { sampling, drivers, zones } = assessment;
+  const { sampling } = assessment;
   if (sampling === null) return [{ kind: 'paragraph', look: 'body', words: words.notSampled }];
-  const titles = new Map(
-    zones.flatMap((zone) => zone.quantities.map((entry) => [entry.quantity, entry.quantityTitle])),
-  );
   return [
     {
       kind: 'paragraph',
@@ -70,15 +68,18 @@ export function driversPart(assessment: Assessment, texts: RiskTexts): Block[] {
       columns: [
         { title: words.zone, share: 3, align: 'left' },
         { title: words.quantity, share: 1.4, align: 'left' },
-        { title: words.input, share: 3.4, align: 'left' },
-        { title: words.correlation, share: 1, align: 'right' },
+        { title: words.input, share: 6, align: 'left' },
       ],
-      rows: drivers.map((driver) => ({
+      rows: driverGroups(assessment).map(({ zoneTitle, quantityTitle, drivers }) => ({
         cells: [
-          driver.zoneTitle,
-          titles.get(driver.quantity) ?? driver.quantity,
-          driver.inputTitle,
-          quantityText(driver.rankCorrelation, 'ratio'),
+          zoneTitle,
+          quantityTitle,
+          drivers
+            .map(
+              ({ inputTitle, rankCorrelation }) =>
+                `${inputTitle} ${quantityText(rankCorrelation, 'ratio')}`,
+            )
+            .join('; '),
         ],
       })),
     },

@@ -57,11 +57,20 @@ export function zonesPart(assessment: Assessment, texts: RiskTexts): Block[] {
 /** The check near the floor, with its numbers. */
 export function floorPart(assessment: Assessment, texts: RiskTexts): Block[] {
   const words = texts.parts.zones;
+  const groups = zoneGroups(assessment.zones);
   const floors = floorChecks(assessment.zones);
-  if (floors.length === 0) {
+  if (groups.length + floors.length === 0) {
     return [{ kind: 'paragraph', look: 'body', words: texts.parts.floor.none }];
   }
   return [
+    answerTable(
+      groups,
+      texts.parts.floor.caption,
+      words.zone,
+      texts,
+      (group) => [{ text: group.zones.map((zone) => zone.title).join('; '), strong: true }],
+      ['planned', 'fansOff'],
+    ),
     answerTable(floors, words.floorCaption, words.floorSpace, texts, (group) => [
       { text: group.first.spaceTitle, strong: true },
     ]),
@@ -156,6 +165,7 @@ function answerTable(
   head: string,
   texts: RiskTexts,
   title: (group: ZoneGroup) => TableRow['cells'][number],
+  cases: readonly CaseName[] = shownCases,
 ): Table {
   const words = texts.parts.zones;
   const answers = (['mixed', 'layered', 'bound'] as const).filter(
@@ -170,11 +180,10 @@ function answerTable(
         const cells = [
           index === 0 ? title(group) : '',
           Object.values(entries)[0]?.quantityTitle ?? quantity,
-          ...shownCases.flatMap((caseName) =>
+          ...cases.flatMap((caseName) =>
             answers.map((answer) => answerWords(entries[caseName], answer, texts)),
           ),
-          answerWords(entries.fansOff, 'mixed', texts),
-          ...shownCases.map((caseName) => standingWords(entries[caseName], texts)),
+          ...cases.map((caseName) => standingWords(entries[caseName], texts)),
         ];
         return index === 0 ? { cells } : { cells, continues: true };
       }),
@@ -186,11 +195,12 @@ function answerTable(
     columns: [
       { title: head, share: 2.8, align: 'left' },
       { title: words.quantity, share: 1.5, align: 'left' },
-      ...answers.map((answer) => number(words.planned[answer])),
-      ...answers.map((answer) => number(words.worst[answer])),
-      number(words.fansOff),
-      { title: words.plannedStands, share: 1.2, align: 'left' },
-      { title: words.worstStands, share: 1.2, align: 'left' },
+      ...cases.flatMap((caseName) => answers.map((answer) => number(words[caseName][answer]))),
+      ...cases.map((caseName) => ({
+        title: words.stands[caseName],
+        share: 1.2,
+        align: 'left' as const,
+      })),
     ],
     rows,
     empty: words.none,

@@ -81,10 +81,10 @@ export const resultTexts = {
   drivers: {
     title: 'What drives the answer',
     sampled:
-      'The band of the layered answer comes from {samples} runs with the uncertain inputs drawn anew each time (seed {seed}: the same seed gives the same band). Each line names an input that moves the worst value; the rank correlation runs from \u22121 to 1.',
+      'The band of the layered answer comes from {samples} runs with the uncertain inputs drawn anew each time (seed {seed}: the same seed gives the same band). Named are the inputs that move the worst value most; the rank correlation runs from \u22121 to 1.',
     notSampled:
       'No input was varied for this answer, so the layered answer has no band. The bound holds whatever the mixing.',
-    columns: ['Who', 'What', 'Uncertain input', 'Effect of more of it'],
+    columns: ['Who', 'What', 'Uncertain inputs, and the effect of more of each'],
     strong: 'Strong',
     clear: 'Clear',
     slight: 'Slight',
