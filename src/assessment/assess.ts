@@ -6,20 +6,26 @@ import type {
   ActResult,
   Assessment,
   Condition,
-  ControlResult,
   DayEvent,
   DecisionPair,
   DecisionWord,
-  Figure,
-  Governing,
   ReleaseLine,
   StatedAssumption,
 } from './assessment.js';
 import type { AssessmentData } from './assessment-data.js';
-import type { RulePack } from './catalogue-types.js';
-import { conditionsOf, hitReason } from './conditions.js';
+import type { Control, RulePack } from './catalogue-types.js';
+import { conditionsOf } from './conditions.js';
 import { requireContainers } from './container-problems.js';
-import { controlledPlan, isCredited } from './controlled-plan.js';
+import {
+  chosenControls,
+  leastControlSets,
+  offeredControls,
+  suggestedRows,
+  type ControlContext,
+} from './control-results.js';
+import { controlSubjects, enoughShare } from './control-subjects.js';
+import { controlWords } from './control-words.js';
+import { controlledPlan, filedPlan, isCredited, type ControlSources } from './controlled-plan.js';
 import {
   decisionRows,
   rowsAboutKnowledge,
@@ -28,14 +34,15 @@ import {
   type Hit,
 } from './decision-table.js';
 import type { Evaluation } from './evaluation.js';
-import { freshAirOf, levelFigure, statisticFigure, plainFigure, sourceText } from './figures.js';
+import { freshAirOf, plainFigure, sourceText } from './figures.js';
 import { planFindings } from './findings.js';
+import { governingOf, gravestHit, zoneTitle } from './governing.js';
 import { driverResults, samplingOf } from './driver-results.js';
 import { holdTimes } from './hold-times.js';
 import { atNineDigits, canonicalHash } from './input-hash.js';
 import { knowledge, type Knowledge } from './knowledge.js';
 import { largestAmounts } from './largest-amounts.js';
-import { planFileSchema, type PlanFile } from './plan-file.js';
+import { planFileSchema, type ChosenControl, type PlanFile } from './plan-file.js';
 import { requireReferences } from './plan-references.js';
 import { quantityWords } from './quantity-words.js';
 import type { ResolvedRelease } from './resolved-plan.js';
@@ -51,10 +58,10 @@ import { holdFindings } from './plausibility-findings.js';
 import { pressureFindings } from './pressure-findings.js';
 import { streamFindings } from './stream-findings.js';
 import { stopReading } from './stop-reading.js';
-import { spentShare } from './spent-share.js';
+import { sensitivityRows } from './sensitivity.js';
 import { soundResults } from './sound-results.js';
+import { suggestedControls } from './suggested-controls.js';
 import { zoneResults } from './zone-results.js';
-import type { ZoneOutcome } from './zone-outcomes.js';
 
 export type { AssessmentData } from './assessment-data.js';
 
@@ -90,80 +97,6 @@ const wordOfHits = (hits: readonly Hit[]): DecisionWord => worstWord(hits.map((h
 function partWord(hits: readonly Hit[], known: Knowledge): DecisionWord {
   const word = wordOfHits(hits);
   return known.hasUnknown ? worseWord(word, 'goWithConditions') : word;
-}
-
-/** The gravest hit; of several with the same word and row the one furthest past its level. */
-function gravestHit(hits: readonly Hit[]): Hit | null {
-  const spent = (hit: Hit) => (hit.outcome ? spentShare(hit.outcome, hit.answer, hit.level) : 0);
-  return hits.reduce<Hit | null>((gravest, hit) => {
-    if (!gravest) return hit;
-    if (hit.word !== gravest.word) {
-      return worseWord(hit.word, gravest.word) === hit.word ? hit : gravest;
-    }
-    return hit.row === gravest.row && spent(hit) > spent(gravest) ? hit : gravest;
-  }, null);
-}
-
-/** The number nearest to its aim on the planned day: the one to watch where nothing fails. */
-function closestToAim(
-  { planned, resolved }: Evaluation,
-  nameOf: (gas: string) => string,
-): Omit<Governing, 'row' | 'reason'> | null {
-  const closest = planned
-    .filter((outcome) => outcome.judgedFully && outcome.answers.mixed)
-    .map((outcome) => ({ outcome, spent: spentShare(outcome, 'mixed', 'aim') }))
-    .sort((one, other) => other.spent - one.spent)[0]?.outcome;
-  const figure = closest ? statisticFigure(closest, 'mixed', 'aim', resolved) : null;
-  if (!closest || !figure) return null;
-  return {
-    zone: closest.zone,
-    zoneTitle: zoneTitle(closest),
-    quantity: quantityWords(closest.level, nameOf),
-    answer: 'mixed',
-    caseName: 'planned',
-    figure,
-    limit: levelFigure(closest.level, 'aim'),
-  };
-}
-
-const zoneTitle = ({ floorCheck, group }: ZoneOutcome): string =>
-  floorCheck ? `${group.title}, 0.2 m above the floor` : group.title;
-
-function governingOf(known: Knowledge, nameOf: (gas: string) => string): Governing | null {
-  const { resolved, hits } = known.shown;
-  // A number says more than a refusal of the same gravity, and refusals stand on their own.
-  const gravest = gravestHit(hits);
-  const numbered = gravestHit(hits.filter((one) => one.outcome !== null));
-  const hit = numbered?.word === gravest?.word ? numbered : gravest;
-  if (hit?.outcome) {
-    const answer = hit.outcome.answers[hit.answer] ? hit.answer : 'mixed';
-    const figure = statisticFigure(hit.outcome, answer, hit.level, resolved);
-    const limit = levelFigure(hit.outcome.level, hit.level);
-    if (!figure) return null;
-    return {
-      zone: hit.outcome.zone,
-      zoneTitle: zoneTitle(hit.outcome),
-      quantity: quantityWords(hit.outcome.level, nameOf),
-      answer,
-      caseName: hit.caseName,
-      figure,
-      limit,
-      row: hit.row,
-      reason: hitReason({ ...hit, answer }, figure, limit),
-    };
-  }
-  const closest = closestToAim(known.shown, nameOf);
-  if (!closest) return null;
-  // What decides is no number of a zone: the number nearest to its aim stands beside the reason.
-  if (hit) return { ...closest, row: hit.row, reason: hitReason(hit, null, null) };
-  if (known.word !== 'go') {
-    return { ...closest, row: 10, reason: 'a figure that nobody knows has to be confirmed' };
-  }
-  return {
-    ...closest,
-    row: 12,
-    reason: 'every level is met; this number comes closest to its aim',
-  };
 }
 
 function releaseLine(release: ResolvedRelease, molarVolumeM3PerMol: number): ReleaseLine {
@@ -217,94 +150,21 @@ function actResults(
   });
 }
 
-/** Words of a control before its numbers are chosen: an open slot is told as such. */
-const withoutSlots = (words: string): string =>
-  words.replaceAll(/\{[A-Za-z]+\}/g, 'the agreed number of');
-
-function controlResults(
-  asFiled: Knowledge,
-  controlled: Knowledge,
-  data: AssessmentData,
-): readonly ControlResult[] {
-  const { plan } = asFiled.shown;
-  const number = (known: Knowledge): Figure | null => {
-    const hit = gravestHit(asFiled.shown.hits.filter((candidate) => candidate.outcome !== null));
-    if (!hit?.outcome) return null;
-    const target = hit.outcome;
-    const pool =
-      target.caseName === 'worstCredible'
-        ? known.shown.worst.flatMap((one) => one.outcomes)
-        : target.caseName === 'fansOff'
-          ? known.shown.fansOff
-          : known.shown.planned;
-    // Of several slips the one that leaves this zone worst off.
-    const found = pool
-      .filter(
-        (outcome) =>
-          outcome.zone === target.zone &&
-          outcome.floorCheck === target.floorCheck &&
-          outcome.level.quantity === target.level.quantity,
-      )
-      .sort(
-        (one, other) =>
-          spentShare(other, hit.answer, hit.level) - spentShare(one, hit.answer, hit.level),
-      )[0];
-    return found ? statisticFigure(found, hit.answer, hit.level, known.shown.resolved) : null;
-  };
-  const before = number(asFiled);
-  const after = number(controlled);
-  const chosen = (plan.controls ?? []).flatMap((one): ControlResult[] => {
-    const control = data.catalogue.controls.find((candidate) => candidate.id === one.control);
-    if (!control) return [];
-    const credited = isCredited(control);
-    return [
-      {
-        id: control.id,
-        title: control.title,
-        level: control.level,
-        act: one.act ?? null,
-        chosen: true,
-        credited,
-        words: one.note ?? withoutSlots(control.text),
-        before: credited ? before : null,
-        after: credited ? after : null,
-      },
-    ];
+/** Chosen controls that the numbers with controls rest on. */
+function creditedControls(plan: PlanFile, filed: PlanFile, sources: ControlSources) {
+  return (plan.controls ?? []).flatMap((chosen) => {
+    const control = sources.controls.find((candidate) => candidate.id === chosen.control);
+    return control && isCredited(filed, chosen, sources) ? [{ control, chosen }] : [];
   });
-  const offered = plan.acts.flatMap((act) => {
-    const demonstration = data.catalogue.demonstrations.find(
-      (candidate) => candidate.id === act.catalogueId,
-    );
-    return (demonstration?.controls ?? []).flatMap((row): ControlResult[] => {
-      const control = data.catalogue.controls.find((candidate) => candidate.id === row.control);
-      const isChosen = chosen.some(
-        (one) => one.id === row.control && (one.act === null || one.act === act.id),
-      );
-      if (!control || isChosen) return [];
-      return [
-        {
-          id: control.id,
-          title: control.title,
-          level: control.level,
-          act: act.id,
-          chosen: false,
-          credited: false,
-          words: withoutSlots(row.text),
-          before: null,
-          after: null,
-        },
-      ];
-    });
-  });
-  return [...chosen, ...offered];
 }
 
-/** Chosen controls that the numbers with controls rest on. */
-function creditedControls(plan: PlanFile, data: AssessmentData) {
-  return (plan.controls ?? []).flatMap((chosen) => {
-    const control = data.catalogue.controls.find((candidate) => candidate.id === chosen.control);
-    return control && isCredited(control) ? [{ control, chosen }] : [];
-  });
+/** A control as a condition: what is done, and what must be shown before it counts. */
+function controlText(control: Control, chosen: ChosenControl, plan: PlanFile): string {
+  const { steps } = controlWords(control, chosen, plan);
+  const done = steps.length > 1 ? steps.map((step, i) => `${String(i + 1)}. ${step}`) : steps;
+  return [`${control.title}:`, ...done, control.creditOnlyIf, chosen.note]
+    .filter((part) => part !== undefined)
+    .join(' ');
 }
 
 function dayEvents({ resolved }: Evaluation): readonly DayEvent[] {
@@ -430,13 +290,15 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
 
   const answers = airAnswers(airGasTable(data.gases));
   const context = { data, pack, answers };
-  const asFiled = knowledge(plan, context, true);
-  const withControls = controlledPlan(plan, data.catalogue.controls);
-  const controlled = withControls === plan ? asFiled : knowledge(withControls, context, false);
+  const sources: ControlSources = { controls: data.catalogue.controls, gases: data.gases };
+  const filed = filedPlan(plan, sources);
+  const credited = creditedControls(plan, filed, sources);
+  const asFiled = knowledge(filed, context, true);
+  const controlled =
+    credited.length === 0 ? asFiled : knowledge(controlledPlan(plan, sources), context, false);
   const { shown } = asFiled;
   const { resolved, reader } = shown;
 
-  const credited = creditedControls(plan, data);
   // What a control earned holds only while the control does: it is a condition of the word.
   const decision: DecisionPair = {
     asFiled: asFiled.word,
@@ -493,10 +355,36 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     row: governing?.row ?? 12,
     act: chosen.act ?? null,
     zone: null,
-    text: `${control.title}${chosen.space === undefined ? '' : ` (${spaceTitle(chosen.space)})`}: ${chosen.note ?? control.text}`,
-    checklistLine: `${control.title}${chosen.space === undefined ? '' : `, ${spaceTitle(chosen.space)}`}: in place`,
+    text: controlText(control, chosen, filed),
+    checklistLine: controlWords(control, chosen, filed).checklistLine,
     blocksStart: true,
   }));
+  const largest = largestAmounts(shown, answers);
+  const controlContext: ControlContext = {
+    filed,
+    resolved,
+    holds,
+    data,
+    sources,
+    evaluation: context,
+  };
+  const tried = controlSubjects(shown).flatMap((subject) => {
+    const catalogueId = plan.acts.find(({ id }) => id === subject.act)?.catalogueId;
+    const released = resolved.acts
+      .filter(({ id }) => id === subject.act)
+      .flatMap((act) => act.planned.flatMap(({ composition }) => Object.keys(composition)));
+    const facts = {
+      enoughShare: enoughShare(subject.act, sound, largest),
+      otherGases: (
+        data.catalogue.demonstrations.find(({ id }) => id === catalogueId)?.gases ?? []
+      ).filter((gas) => !released.includes(gas)),
+    };
+    return suggestedControls(filed, subject, facts, context, sources) ?? [];
+  });
+  const told = [
+    ...chosenControls(plan.controls ?? [], tried[0] ?? null, controlContext),
+    ...suggestedRows(tried, controlContext),
+  ];
   const confirmations =
     decision.withControls === 'goWithConditions'
       ? unknownConditions.map(({ figure, space }, index) => ({
@@ -552,10 +440,12 @@ export function assess(plan: PlanFile, data: AssessmentData): Assessment {
     refusals: shown.refusals,
     zones: zoneResults(shown, nameOf),
     sound,
-    largestAmounts: largestAmounts(shown, answers),
+    largestAmounts: largest,
     holdTimes: holds,
     questionsThatDecide: asFiled.questions,
-    controls: controlResults(asFiled, controlled, data),
+    controls: [...told, ...offeredControls(told, controlContext)],
+    leastControls: leastControlSets(tried, controlContext, nameOf),
+    sensitivity: sensitivityRows(filed, credited, context, sources, nameOf),
     rulesCited: rulesCited(pack, facts),
     cautions: cautionsFor(data.catalogue.cautions, facts),
     assumptions: assumptionsOf(shown),

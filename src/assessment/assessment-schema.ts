@@ -1,6 +1,6 @@
 import Type, { type TSchema } from 'typebox';
 import { decisionOrder, type Assessment } from './assessment.js';
-import { originSchema } from './plan-file.js';
+import { chosenControlSchema, originSchema } from './plan-file.js';
 
 /** JSON Schema of an assessment, as every door answers it. Mirrors assessment.ts; a test holds both together. */
 
@@ -252,6 +252,56 @@ const schema = Type.Object(
         words: text,
         before: orNull(figure),
         after: orNull(figure),
+        terms: text,
+        burden: number,
+        rank: orNull(number),
+        wordAlone: orNull(word),
+        steps: list(text),
+        checklistLine: text,
+        choice: chosenControlSchema,
+      }),
+    ),
+    leastControls: list(
+      object({
+        act: orNull(text),
+        space: text,
+        title: text,
+        isReached: flag,
+        wordAsFiled: word,
+        word,
+        burden: number,
+        controls: list(
+          object({
+            title: text,
+            burden: number,
+            steps: list(text),
+            checklistLine: text,
+            choice: chosenControlSchema,
+          }),
+        ),
+        numbers: list(
+          object({
+            zone: text,
+            zoneTitle: text,
+            quantity: text,
+            answer,
+            caseName,
+            before: figure,
+            after: orNull(figure),
+            limit: figure,
+          }),
+        ),
+      }),
+    ),
+    sensitivity: list(
+      object({
+        id: text,
+        title: text,
+        word,
+        zoneTitle: text,
+        quantity: text,
+        figure: orNull(figure),
+        limit: orNull(figure),
       }),
     ),
     rulesCited: list(

@@ -1,4 +1,4 @@
-import type { Origin } from './plan-file.js';
+import type { ChosenControl, Origin } from './plan-file.js';
 
 /**
  * The shape of one assessment: the single value that the page, the JSON answer and every sheet read.
@@ -261,8 +261,66 @@ export interface ControlResult {
   readonly chosen: boolean;
   readonly credited: boolean;
   readonly words: string;
+  /** The number that decides, without any control and with this one alone, by one layered run each. */
   readonly before: Figure | null;
+  /** Null where it was not worked out, or where nobody is left in that zone. */
   readonly after: Figure | null;
+  /** What must be shown before it counts, or why it earns nothing. */
+  readonly terms: string;
+  /** What it asks of a house and its crew, 1 little to 5 much. */
+  readonly burden: number;
+  /** Place among what was tried for its act or space, 1 the best; null where it was not tried. */
+  readonly rank: number | null;
+  /** Word of its act or space with this control alone, where it was tried. */
+  readonly wordAlone: DecisionWord | null;
+  /** How it is done here, its numbers filled in. */
+  readonly steps: readonly string[];
+  readonly checklistLine: string;
+  /** The same as a plan file states it. */
+  readonly choice: ChosenControl;
+}
+
+/** The least set of controls found that brings an act, or a space, from No-go to Go with conditions. */
+export interface LeastControls {
+  readonly act: string | null;
+  readonly space: string;
+  readonly title: string;
+  /** False where no set was found; then the closest one stands here. */
+  readonly isReached: boolean;
+  readonly wordAsFiled: DecisionWord;
+  readonly word: DecisionWord;
+  /** Sum over its controls. */
+  readonly burden: number;
+  readonly controls: readonly {
+    readonly title: string;
+    readonly burden: number;
+    readonly steps: readonly string[];
+    readonly checklistLine: string;
+    readonly choice: ChosenControl;
+  }[];
+  /** What refuses it as filed, and the same number with the set; null where nobody is left there. */
+  readonly numbers: readonly {
+    readonly zone: string;
+    readonly zoneTitle: string;
+    readonly quantity: string;
+    readonly answer: Answer;
+    readonly caseName: CaseName;
+    readonly before: Figure;
+    readonly after: Figure | null;
+    readonly limit: Figure;
+  }[];
+}
+
+/** The planned day with one thing that carries it given way. */
+export interface SensitivityRow {
+  /** asJudged, halfAir, twiceRelease, fansOff, or without:n for the n-th credited control. */
+  readonly id: string;
+  readonly title: string;
+  readonly word: DecisionWord;
+  readonly zoneTitle: string;
+  readonly quantity: string;
+  readonly figure: Figure | null;
+  readonly limit: Figure | null;
 }
 
 export interface CitedRule {
@@ -419,6 +477,8 @@ export interface Assessment {
   readonly holdTimes: readonly HoldTime[];
   readonly questionsThatDecide: readonly DecidingQuestion[];
   readonly controls: readonly ControlResult[];
+  readonly leastControls: readonly LeastControls[];
+  readonly sensitivity: readonly SensitivityRow[];
   readonly rulesCited: readonly CitedRule[];
   readonly cautions: readonly { readonly id: string; readonly text: string }[];
   readonly assumptions: readonly StatedAssumption[];

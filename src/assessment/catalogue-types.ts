@@ -756,6 +756,9 @@ export const controlEffectSchema = Type.Enum([
   'personalMonitor',
   'readingGate', // no entry or start before a reading
   'noiseLowered',
+  'doorsBetweenShows',
+  'fansOn', // the air systems of a space run all day
+  'stockMoved', // containers kept outdoors
 ]);
 
 export const controlsFileSchema = Type.Object(
@@ -769,6 +772,12 @@ export const controlsFileSchema = Type.Object(
         /** Whether the numbers may change at all; a condition never has credit. */
         credit: Type.Boolean(),
         creditOnlyIf: optional(words('what must be shown before it counts', 300)),
+        /** Why a control without credit earns none. */
+        noCreditBecause: optional(words('why no number changes', 300)),
+        /** What it asks of a house and its crew, 1 little to 5 much: the order in which sets are sought. */
+        burden: Type.Integer({ minimum: 1, maximum: 5 }),
+        steps: Type.Array(words('one step; slots in braces', 240), { minItems: 1, maxItems: 6 }),
+        line: words('the line that the crew ticks; slots in braces', 240),
         text: words('what it does to the air or the people', 400),
         parameters: list(
           Type.Object(

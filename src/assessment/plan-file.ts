@@ -369,7 +369,14 @@ export const chosenControlSchema = Type.Object(
     control: Type.String({ maxLength: 60 }),
     act: optional(id),
     space: optional(id),
-    value: optional(Type.Number()),
+    group: optional(id),
+    gas: optional(Type.String({ maxLength: 20, description: 'the gas that takes the place' })),
+    value: optional(Type.Number({ description: 'the first parameter of the control' })),
+    values: optional(
+      Type.Record(Type.String({ pattern: '^[a-z][A-Za-z0-9]*$' }), Type.Number(), {
+        description: 'parameters of the control by key',
+      }),
+    ),
     note: optional(words(400, 'how it is done here')),
   },
   closed,

@@ -163,6 +163,12 @@ export function referenceProblems(plan: PlanFile, gases: GasLibrary): readonly E
       complain(`/controls/${String(index)}/act`, `there is no act ${control.act}`);
     }
     space(control.space, `/controls/${String(index)}/space`);
+    if (
+      control.group !== undefined &&
+      !plan.event.audience.some((group) => group.id === control.group)
+    ) {
+      complain(`/controls/${String(index)}/group`, `there is no group ${control.group}`);
+    }
   });
   return problems;
 }

@@ -109,6 +109,9 @@ export function checklistsOf(path: string, names: KnownNames): Checklists {
   return checklists;
 }
 
+/** Slots of every control besides its own parameters. */
+const controlSlots = ['act', 'space', 'group', 'gas', 'cap'] as const;
+
 /** The controls of `policy/controls.yaml`, best first. */
 export function controlsOf(path: string, checklists: Checklists): readonly Control[] {
   const file = readDataFile(path);
@@ -134,6 +137,24 @@ export function controlsOf(path: string, checklists: Checklists): readonly Contr
               },
             ]
           : []),
+        ...(control.credit === (control.noCreditBecause !== undefined)
+          ? [
+              {
+                path: `${place}/credit`,
+                problem: control.credit
+                  ? 'a control with credit has no reason for none'
+                  : 'a control without credit must say why',
+                hint: 'State noCreditBecause where credit is false, and only there.',
+              },
+            ]
+          : []),
+        ...[...control.steps, control.line].flatMap((text, j) =>
+          slotFaults(
+            text,
+            j < control.steps.length ? `${place}/steps/${String(j)}` : `${place}/line`,
+            new Set([...controlSlots, ...control.parameters.map(({ key }) => key)]),
+          ),
+        ),
         ...(control.credit && control.effect === 'condition'
           ? [
               {

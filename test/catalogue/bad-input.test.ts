@@ -291,13 +291,35 @@ describe('a policy file is refused with file, line and hint', () => {
     expect(refusalOf(() => controlsOf(order.path, catalogue.checklists)).message).toMatch(
       /policy\/controls\.yaml line \d+: .*stands after protect/,
     );
-    const credit = spoiled(
-      'policy/controls.yaml',
-      'effect: condition\n    credit: false',
-      'effect: condition\n    credit: true',
-    );
+    const credit = spoiled('policy/controls.yaml', 'effect: sourceRemoved', 'effect: condition');
     expect(refusalOf(() => controlsOf(credit.path, catalogue.checklists)).message).toMatch(
       /earns no credit/,
+    );
+  });
+
+  test('when a control claims credit and a reason for none, or gives neither', () => {
+    const both = spoiled(
+      'policy/controls.yaml',
+      'effect: condition\n    credit: false',
+      'effect: holdTime\n    credit: true',
+    );
+    expect(refusalOf(() => controlsOf(both.path, catalogue.checklists)).message).toMatch(
+      /policy\/controls\.yaml line \d+: .*has no reason for none/,
+    );
+    const neither = spoiled('policy/controls.yaml', 'credit: true', 'credit: false');
+    expect(refusalOf(() => controlsOf(neither.path, catalogue.checklists)).message).toMatch(
+      /must say why/,
+    );
+  });
+
+  test('when a step or a line of a control has a slot that is no parameter of it', () => {
+    const step = spoiled(
+      'policy/controls.yaml',
+      '{amountShare} of the planned',
+      '{share} of the planned',
+    );
+    expect(refusalOf(() => controlsOf(step.path, catalogue.checklists)).message).toMatch(
+      /policy\/controls\.yaml line \d+: .*share/,
     );
   });
 
