@@ -87,28 +87,39 @@ export function roomRow(spaces: number, days: number): AirInput {
   };
 }
 
-/** Stage with an open pit: dry ice in hot water for ten minutes, followed for half an hour. */
-export const stageWithPit: AirInput = {
+/**
+ * Raked hall over an open pit, with low extract in the pit: fog for ten minutes runs down the rake as
+ * a thin layer, pours over the edge and is drawn off. Stiff: the layer is a few millimetres deep.
+ */
+export const rakedHallWithPit: AirInput = {
   ambient: { temperatureK: 293.15, pressurePa: 101_325, relativeHumidity: 0 },
-  durationS: 1800,
+  durationS: 600,
   outputIntervalS: 60,
   spaces: [
-    { id: 'stage', floorAreaM2: 60, heightM: 9, floorLevelM: 0 },
+    { id: 'hall', floorAreaM2: 200, heightM: 9, floorRiseM: 2, floorLevelM: 0 },
     { id: 'pit', floorAreaM2: 40, heightM: 1.5, floorLevelM: -1.5 },
   ],
   openings: [
-    { from: 'stage', to: 'pit', kind: 'floorOpening', widthM: 5, heightM: 8, sillLevelM: 0 },
+    { from: 'hall', to: 'pit', kind: 'floorOpening', widthM: 5, heightM: 8, sillLevelM: 0 },
   ],
   airSystems: [
     {
-      space: 'stage',
+      space: 'hall',
       drive: 'balanced',
       supplyM3PerS: 0.66,
       extractM3PerS: 0.66,
       supplyLevel: 'high',
       extractLevel: 'high',
     },
+    {
+      space: 'pit',
+      drive: 'extract',
+      freshAirM3PerS: 0.1,
+      extractLevel: 'low',
+      extractWidthM: 1,
+      extractTopM: 0.3,
+    },
   ],
-  releases: [{ space: 'stage', gas: 'CO2', massKg: 6, durationS: 600, manner: 'fog' }],
+  releases: [{ space: 'hall', gas: 'CO2', massKg: 6, durationS: 600, manner: 'fog' }],
   zones: [{ id: 'player', space: 'pit', heightM: 1.15 }],
 };

@@ -1,14 +1,14 @@
 import { Worker } from 'node:worker_threads';
 import { airRun } from '../../src/science/room-air/air-run.js';
 import { FINE } from '../../src/science/room-air/layered-track.js';
-import { roomRow, stageWithPit, wholeDay } from './air-scenario.js';
+import type { DrawnValues } from '../../src/science/room-air/layered-draws.js';
+import { rakedHallWithPit, roomRow, wholeDay } from './air-scenario.js';
 import { layerContest } from './general-layers.js';
-import { sampledDay, type SampledShare } from './sampled-day.js';
+import { bandOfDay, drawnDay, sampledDay, type SampledDay } from './sampled-day.js';
 import { clockTimesOf, growthExponent, timesOf, timesText } from './times.js';
 
-/** Whether (a) to (c) work the two-layer answer out too; the lines say which they did. */
-const options: { readonly layered: boolean } = { layered: false };
-const ANSWERS = options.layered ? 'mixed, layered and bound' : 'mixed and bound, no layers';
+const options = { layered: true } as const;
+const ANSWERS = 'mixed, layered and bound';
 const SAMPLES = 512;
 
 type Day = ReturnType<typeof wholeDay>;
@@ -19,7 +19,7 @@ function dayLines({ planned, worst, gases }: Day): readonly string[] {
     airRun(input, gases, straight);
     airRun(input, gases, options);
   };
-  const rounds = options.layered ? 7 : 31;
+  const rounds = 7;
   return [
     timesText(
       `(a) whole day, planned and worst, ${ANSWERS}, and M`,
@@ -29,7 +29,7 @@ function dayLines({ planned, worst, gases }: Day): readonly string[] {
           one(worst);
         },
         rounds,
-        options.layered ? 2 : 30,
+        2,
       ),
     ),
     timesText(
@@ -40,11 +40,15 @@ function dayLines({ planned, worst, gases }: Day): readonly string[] {
       `    planned, ${ANSWERS}`,
       timesOf(() => airRun(planned, gases, options), rounds),
     ),
+    timesText(
+      '    the same without the runs that leave all mixing out',
+      timesOf(() => airRun(planned, gases, { ...options, adverse: false }), rounds),
+    ),
   ];
 }
 
 /** A thread that has compiled what it needs and waits to be told to start. */
-async function readyWorker(share: SampledShare): Promise<Worker> {
+async function readyWorker(share: SampledDay): Promise<Worker> {
   const worker = new Worker(new URL('./air-worker.ts', import.meta.url), {
     workerData: share,
     execArgv: ['--import', new URL('../../.scripts/run-source.mjs', import.meta.url).href],
@@ -60,45 +64,41 @@ const answerOf = (worker: Worker): Promise<unknown> =>
   });
 
 async function sampleLines({ planned, gases }: Day): Promise<readonly string[]> {
-  const whole: SampledShare = {
-    input: planned,
-    gases,
-    layered: options.layered,
-    samples: SAMPLES,
-    first: 0,
-    count: SAMPLES,
-  };
-  const lines: string[] = [];
+  const day = sampledDay(planned, gases, SAMPLES);
+  const lines = [
+    timesText(
+      `(b) band of ${String(SAMPLES)} draws of the planned day, one core`,
+      timesOf(() => bandOfDay(day, [drawnDay(day)]), 3),
+    ),
+    timesText(
+      '    of which the quantiles',
+      ((parts) => timesOf(() => bandOfDay(day, parts), 3))([drawnDay(day)]),
+    ),
+  ];
   const clock: number[] = [];
   for (const threads of [1, 2]) {
     const count = SAMPLES / threads;
     const workers = await Promise.all(
-      Array.from({ length: threads }, (_, i) => readyWorker({ ...whole, first: i * count, count })),
+      Array.from({ length: threads }, (_, i) =>
+        readyWorker({ ...day, draws: day.draws.slice(i * count, (i + 1) * count) }),
+      ),
     );
-    const times = await clockTimesOf(
-      () =>
-        Promise.all(
-          workers.map((worker) => {
-            const answer = answerOf(worker);
-            worker.postMessage('start');
-            return answer;
-          }),
-        ),
-      3,
-    );
+    const times = await clockTimesOf(async () => {
+      const parts = await Promise.all(
+        workers.map((worker) => {
+          const answer = answerOf(worker);
+          worker.postMessage('start');
+          return answer;
+        }),
+      );
+      return bandOfDay(day, parts as DrawnValues[]);
+    }, 3);
     clock.push(times.median);
     lines.push(timesText(`    by the clock on ${String(threads)} worker(s)`, times));
     await Promise.all(workers.map((worker) => worker.terminate()));
   }
   const [one = NaN, two = NaN] = clock;
-  return [
-    timesText(
-      `(b) ${String(SAMPLES)} draws of the planned day, ${ANSWERS}, one core`,
-      timesOf(() => sampledDay(whole), 3, 0),
-    ),
-    ...lines,
-    `    two workers over one: ${(one / two).toFixed(2)} times faster`,
-  ];
+  return [...lines, `    two workers over one: ${(one / two).toFixed(2)} times faster`];
 }
 
 function growthLines({ gases }: Day): readonly string[] {
@@ -121,7 +121,7 @@ function growthLines({ gases }: Day): readonly string[] {
 const TOLERANCES = [1e-3, 1e-4, 1e-5, 1e-6, 1e-7] as const;
 
 function contestLines({ gases }: Day): readonly string[] {
-  const { own, general, difference } = layerContest(stageWithPit, gases);
+  const { own, general, difference } = layerContest(rakedHallWithPit, gases);
   const exact = general(1e-9);
   const ownError = difference(own(FINE), exact);
   const errors = TOLERANCES.map(
@@ -133,7 +133,7 @@ function contestLines({ gases }: Day): readonly string[] {
   const theirs = timesOf(() => general(relative), 3);
   return [
     timesText(
-      `(d) layers of a stage with a pit, own steps, off by ${ownError.toExponential(1)}`,
+      `(d) thin layer on a rake over a pit with low extract, own steps, off by ${ownError.toExponential(1)}`,
       mine,
     ),
     timesText(

@@ -11,6 +11,8 @@ import { layerCase } from '../../src/science/room-air/layer-case.js';
 import { followLayers, type LayerAccuracy } from '../../src/science/room-air/layered-track.js';
 import { generalSolution } from '../support/general-solver.js';
 
+const THIN_M = 0.002;
+
 /** The layers are there by then, and no contender meets a space without any [s]. */
 const FROM_S = 30;
 
@@ -60,7 +62,9 @@ export function layerContest(input: AirInput, gases: AirGasTable) {
     const most = held.reduce((sum, value) => Math.max(sum, Math.abs(value)), 0);
     let worst = 0;
     for (let z = 0; z < layout.layers; z++) {
-      const volume = Math.max(1e-3, b[z] ?? most);
+      // A layer too thin to be reported counts as one of 2 mm.
+      const thin = THIN_M * (network.layers[z]?.basin.areaM2 ?? 1);
+      const volume = Math.max(thin, b[z] ?? most);
       worst = Math.max(worst, Math.abs((a[z] ?? NaN) - (b[z] ?? NaN)) / volume);
       for (let c = 0; c < layout.k; c++) {
         const at = layout.amounts + z * layout.k + c;
