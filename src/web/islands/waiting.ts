@@ -13,17 +13,21 @@ const pause = (ms: number): Promise<void> =>
   });
 
 /** The results as HTML, or null when the server cannot be asked any more. */
-async function fetchedResults(source: string): Promise<string | null> {
+export async function fetchedResults(
+  source: string,
+  ask: (source: string) => Promise<Response> = fetch,
+  rest: (ms: number) => Promise<void> = pause,
+): Promise<string | null> {
   for (let faults = 0; faults < mostFaults;) {
     try {
-      const answer = await fetch(source);
+      const answer = await ask(source);
       // 202: not yet; the server has held the question as long as it may.
       if (answer.status === 202) continue;
       if (answer.ok && !answer.redirected) return await answer.text();
       return null;
     } catch {
       faults += 1;
-      await pause(pauseMs);
+      await rest(pauseMs);
     }
   }
   return null;
@@ -45,6 +49,8 @@ async function replace(waiting: HTMLElement, part: HTMLElement): Promise<void> {
   document.dispatchEvent(new Event('results-shown'));
 }
 
-const waiting = document.querySelector<HTMLElement>('.waiting');
-const part = document.getElementById('results-part');
-if (waiting && part) void replace(waiting, part);
+if (typeof document !== 'undefined') {
+  const waiting = document.querySelector<HTMLElement>('.waiting');
+  const part = document.getElementById('results-part');
+  if (waiting && part) void replace(waiting, part);
+}
