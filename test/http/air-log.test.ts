@@ -104,8 +104,8 @@ describe('the page about a log', () => {
     expect(status).toBe(200);
     const rate = record.expected.air_change_per_h ?? NaN;
     expect(plain(text)).toContain(`Air changes ${rate.toPrecision(3)} per hour`);
-    // Three digits shown; the volume of this space is 100 m3.
-    expect(plain(text)).toContain(`Fresh air ${((rate * 100) / 3600).toPrecision(3)} m³/s`);
+    // Three digits shown, small flows in litres; the volume of this space is 100 m3.
+    expect(plain(text)).toContain(`Fresh air ${((rate * 100_000) / 3600).toPrecision(3)} L/s`);
     expect(text).toContain('<svg');
     expect(text).toContain('Readings as dots');
   });
