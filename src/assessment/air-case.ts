@@ -15,9 +15,9 @@ import type {
 } from './resolved-plan.js';
 
 /** People are in their places this long before a performance begins. */
-const doorsBeforeS = 600;
+export const doorsBeforeS = 600;
 /** The day is followed this long after its last event. */
-const afterDayS = 1800;
+export const afterDayS = 1800;
 /** A worst credible release is followed this long. */
 const afterWorstS = 3600;
 

@@ -1,3 +1,4 @@
+import { afterDayS, doorsBeforeS } from './air-case.js';
 import type { Control } from './catalogue-types.js';
 import {
   spaceOf,
@@ -9,11 +10,6 @@ import {
 import { highestOf } from './gas-content.js';
 import type { PhysicalFigure, PlanAirSystem, PlanFile, PlanOpening } from './plan-file.js';
 import { secondsOfDay } from './resolve.js';
-
-/** People are in their places this long before a performance begins [s]. */
-const doorsBeforeS = 600;
-/** Doors stay open this long after the last house [s]. */
-const afterLastS = 1800;
 
 const servesSpace = (system: PlanAirSystem, space: string): boolean =>
   system.space === space || (system.serves?.some((served) => served.space === space) ?? false);
@@ -129,7 +125,7 @@ function gapsBetweenShows(plan: PlanFile): readonly { fromS: number; toS: number
   return shows
     .map(({ endS }, index) => ({
       fromS: endS,
-      toS: (shows[index + 1]?.startS ?? endS + afterLastS + doorsBeforeS) - doorsBeforeS,
+      toS: (shows[index + 1]?.startS ?? endS + afterDayS + doorsBeforeS) - doorsBeforeS,
     }))
     .filter(({ fromS, toS }) => toS > fromS);
 }

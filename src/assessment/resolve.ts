@@ -1,5 +1,6 @@
 import { InvalidInput } from '../errors.js';
 import type { Distribution } from '../science/room-air/air-input.js';
+import { servedShares } from '../science/room-air/plant-flows.js';
 import { standardAltitude, standardPressure } from '../science/atmosphere.js';
 import type { Composition, GasLibrary } from '../science/gases/gas-library.js';
 import { molarVolumeM3PerMol } from '../science/gases/molar-volume.js';
@@ -319,8 +320,7 @@ function resolvedAirSystem(
   const decidingKey = balanced ? 'supplyM3PerS' : 'freshAirM3PerS';
   return {
     title: system.title ?? system.id ?? `air system ${String(index + 1)}`,
-    serves:
-      system.serves ?? (system.space === undefined ? [] : [{ space: system.space, share: 1 }]),
+    serves: servedShares(system),
     freshAirM3PerS: balanced ? 0 : delivered(system.freshAirM3PerS, 'freshAirM3PerS'),
     drive: system.drive,
     supplyM3PerS: balanced ? delivered(system.supplyM3PerS, 'supplyM3PerS') : null,

@@ -1,3 +1,4 @@
+import { servedShares } from '../science/room-air/plant-flows.js';
 import type { PhysicalFigure, PlanAirSystem, PlanVenue } from '../assessment/plan-file.js';
 import type { ResolvedPlan } from '../assessment/resolved-plan.js';
 
@@ -15,11 +16,8 @@ export interface MeasuredAir {
 /** What was running: an air system by its place in the list, nothing, or a system not entered yet. */
 export type RunningPart = `system:${number}` | 'leakage' | 'newSystem';
 
-const sharesOf = (system: PlanAirSystem) =>
-  system.serves ?? (system.space === undefined ? [] : [{ space: system.space, share: 1 }]);
-
 const shareIn = (system: PlanAirSystem, space: string): number =>
-  sharesOf(system)
+  servedShares(system)
     .filter((served) => served.space === space)
     .reduce((sum, { share }) => sum + share, 0);
 

@@ -1,6 +1,6 @@
 import { Worker } from 'node:worker_threads';
 import { airRun } from '../../src/science/room-air/air-run.js';
-import { FINE } from '../../src/science/room-air/layered-track.js';
+import { FINE } from '../../src/science/room-air/layer-extrapolation.js';
 import type { DrawnValues } from '../../src/science/room-air/layered-draws.js';
 import { rakedHallWithPit, roomRow, wholeDay } from './air-scenario.js';
 import { layerContest } from './general-layers.js';

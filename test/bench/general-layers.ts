@@ -8,7 +8,8 @@ import { layerSegment } from '../../src/science/room-air/layer-segment.js';
 import { usualLayers } from '../../src/science/room-air/layer-parameters.js';
 import { emptyZoneState, zoneLayout } from '../../src/science/room-air/layer-zones.js';
 import { layerCase } from '../../src/science/room-air/layer-case.js';
-import { followLayers, type LayerAccuracy } from '../../src/science/room-air/layered-track.js';
+import type { LayerAccuracy } from '../../src/science/room-air/layer-extrapolation.js';
+import { followLayers } from '../../src/science/room-air/layered-track.js';
 import { generalSolution } from '../support/general-solver.js';
 
 const THIN_M = 0.002;

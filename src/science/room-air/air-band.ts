@@ -3,7 +3,7 @@ import type { AirGasTable } from './air-gases.js';
 import type { AirUncertainty } from './air-input.js';
 import type { AirModel } from './air-model.js';
 import type { AirResult, AirSeries, HeightAir, ZoneAir } from './air-result.js';
-import { outputRows, seriesOf } from './air-series.js';
+import { rowsAt, seriesOf } from './air-series.js';
 import type { FlatTrack } from './answer-track.js';
 import { layerMouth } from './layer-case.js';
 import type { AskedMouth } from './layer-runs.js';
@@ -64,15 +64,6 @@ export function bandQuestion(
     return [{ zone: zone.id, heightM, isFloorCheck, at, bounds, mixed: air }];
   });
   return { mouths, timesS: wanted };
-}
-
-/** The rows of a track at chosen times, one after the other. */
-function rowsAt({ timesS, values, width }: FlatTrack, wantedS: readonly number[]): Float64Array {
-  const rows = new Float64Array(wantedS.length * width);
-  for (const [i, row] of outputRows(timesS, wantedS).entries()) {
-    rows.set(values.subarray(row * width, (row + 1) * width), i * width);
-  }
-  return rows;
 }
 
 /** Output times, thinned evenly, with the ends of releases: there most gas is in the air. */

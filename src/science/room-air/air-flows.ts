@@ -2,11 +2,8 @@ import { linearSolution } from '../numerics/linear-solve.js';
 import type { AirOpening, Timed } from './air-input.js';
 import type { AirModel } from './air-model.js';
 import { BACKGROUND_CO2, OXYGEN } from './air-model.js';
-import {
-  breathCarbonDioxide,
-  RESPIRATORY_QUOTIENT,
-  SEATED_ADULT_CO2_M3_PER_S,
-} from './occupant.js';
+import { breathFlows } from './occupant.js';
+import { plantFlows, servedShares } from './plant-flows.js';
 import { releaseFlow, type ReleasePlan } from './release-flow.js';
 import type { VerticalOpening } from './vertical-openings.js';
 
@@ -63,13 +60,6 @@ const LEAST_KNOWN_FLOW = 1e-9;
 /** Whether something with a schedule runs at a time: from its start on, no longer at its end. */
 export function isActive(one: Timed, t: number): boolean {
   return t >= (one.fromS ?? 0) && t < (one.toS ?? Infinity);
-}
-
-function servedShares(system: {
-  readonly space?: string;
-  readonly serves?: readonly { readonly space: string; readonly share: number }[];
-}): readonly { readonly space: string; readonly share: number }[] {
-  return system.serves ?? (system.space === undefined ? [] : [{ space: system.space, share: 1 }]);
 }
 
 function effectiveWidth(opening: AirOpening, toOutdoors: boolean): number {
@@ -184,24 +174,11 @@ function ventilation(model: AirModel, t: number): Ventilation {
 
   for (const system of input.airSystems ?? []) {
     if (!isActive(system, t)) continue;
-    const m1 = Math.min(1, system.effectiveness ?? 1);
     const served = servedShares(system);
-    const flow = (system.freshAirM3PerS ?? 0) * m1;
-    const supply =
-      system.drive === 'balanced'
-        ? (system.supplyM3PerS ?? system.freshAirM3PerS ?? 0) * m1
-        : system.drive === 'supply'
-          ? flow
-          : 0;
-    const exhaust =
-      system.drive === 'balanced'
-        ? (system.extractM3PerS ?? system.freshAirM3PerS ?? 0) * m1
-        : system.drive === 'extract'
-          ? flow
-          : 0;
+    const { supplyM3PerS: supply, exhaustM3PerS: exhaust, mixing: factor } = plantFlows(system);
     for (const { space, share } of served) {
       const i = place(space);
-      mixing[i] = Math.min(mixing[i] ?? 1, m1);
+      mixing[i] = Math.min(mixing[i] ?? 1, factor);
       add(fresh, i, supply * share);
       add(extract, i, exhaust * share);
       add(known, i, Math.max(supply, exhaust) * share);
@@ -329,16 +306,10 @@ export function flowSegments(
       const one = people[index];
       if (!one) continue;
       const i = model.indexOf.get(one.space) ?? 0;
-      const perPerson =
-        one.carbonDioxideM3PerS ??
-        (one.metabolicRateMet === undefined
-          ? SEATED_ADULT_CO2_M3_PER_S
-          : breathCarbonDioxide(one.metabolicRateMet));
-      const out = one.count * perPerson * model.siteFactor;
-      const taken = out / (one.respiratoryQuotient ?? RESPIRATORY_QUOTIENT);
-      add(sources, i * m + BACKGROUND_CO2, out);
-      add(sources, i * m + OXYGEN, -taken);
-      add(net, i, out - taken);
+      const { carbonDioxide, oxygen } = breathFlows(one, model.siteFactor);
+      add(sources, i * m + BACKGROUND_CO2, carbonDioxide);
+      add(sources, i * m + OXYGEN, -oxygen);
+      add(net, i, carbonDioxide - oxygen);
     }
     const decaying: ReleasePlan[] = [];
     for (const index of releasesIn[e] ?? []) {

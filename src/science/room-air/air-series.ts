@@ -13,6 +13,18 @@ export function outputRows(nodesS: Float64Array, timesS: readonly number[]): Int
   });
 }
 
+/** The rows of a track at chosen times, one after the other; at a jump the state after it. */
+export function rowsAt(
+  { timesS, values, width }: Pick<FlatTrack, 'timesS' | 'values' | 'width'>,
+  wantedS: readonly number[],
+): Float64Array {
+  const rows = new Float64Array(wantedS.length * width);
+  for (const [i, row] of outputRows(timesS, wantedS).entries()) {
+    rows.set(values.subarray(row * width, (row + 1) * width), i * width);
+  }
+  return rows;
+}
+
 /** The series of a track at chosen rows. */
 export function seriesOf(
   model: AirModel,

@@ -1,4 +1,5 @@
 import type { OpenLink } from './air-flows.js';
+import type { FlowTable } from './flow-table.js';
 import type { LayerIntake, LayerNetwork, LayerSource, LayerSupply } from './layer-network.js';
 import type { LayerSegment } from './layer-segment.js';
 import type { ZoneLayout } from './layer-zones.js';
@@ -46,6 +47,31 @@ export function writePressures(segment: LayerSegment, net: Float64Array, into: F
   }
 }
 
+/** Adds to a list of sums. */
+const grow = (list: Float64Array, at: number, value: number): void => {
+  list[at] = (list[at] ?? 0) + value;
+};
+
+/** What a source brings of its own: the gas, not the air that comes with it. */
+export function addSourceGas(
+  { components }: LayerNetwork,
+  sums: Pick<FlowTable, 'volumeSource' | 'amountSource' | 'into'>,
+  { columns, airShare }: LayerSource,
+  zone: number,
+  q: number,
+): void {
+  const k = components.length;
+  for (const { column, share } of columns) {
+    grow(sums.amountSource, zone * k + column, q * share);
+    grow(sums.into, column, q * share);
+    if (components[column]?.gas !== 'O2') continue;
+    // Released oxygen is oxygen of the zone too.
+    grow(sums.amountSource, zone * k, q * share);
+    grow(sums.into, 0, q * share);
+  }
+  grow(sums.volumeSource, zone, q * (1 - airShare));
+}
+
 /**
  * The flows of a segment that no state changes, worked out once for all its steps.
  *
@@ -61,7 +87,7 @@ export function fixedFlows(
   surplusFromLayer: number,
 ): FixedFlows {
   const { k, layers, held } = layout;
-  const { model, components, floorLayerOf, ceilingLayerOf } = network;
+  const { model, floorLayerOf, ceilingLayerOf } = network;
   const n = model.spaces.length;
   const outdoors = layout.zones;
   const { flows, units } = segment;
@@ -73,9 +99,6 @@ export function fixedFlows(
   const into = new Float64Array(k);
   const out = new Float64Array(k);
   const upperOf = (space: number): number => layers + (network.groupOf[space] ?? 0);
-  const grow = (list: Float64Array, at: number, value: number): void => {
-    list[at] = (list[at] ?? 0) + value;
-  };
   const add = (a: number, b: number, flow: number): void => {
     if (flow <= 0 || a === b) return;
     const known = from.findIndex((zone, i) => zone === a && to[i] === b);
@@ -97,17 +120,11 @@ export function fixedFlows(
 
   const isFixedSource = ({ plan, layer }: LayerSource): boolean =>
     layer < 0 && plan.decayS === undefined;
-  for (const { plan, airShare, columns } of segment.sources.filter(isFixedSource)) {
+  for (const source of segment.sources.filter(isFixedSource)) {
+    const { plan, airShare } = source;
     const q = plan.totalM3 / (plan.endS - plan.startS);
     const zone = upperOf(plan.space);
-    for (const { column, share } of columns) {
-      const parts = components[column]?.gas === 'O2' ? [column, 0] : [column];
-      for (const c of parts) {
-        grow(amountSource, zone * k + c, q * share);
-        grow(into, c, q * share);
-      }
-    }
-    grow(volumeSource, zone, q * (1 - airShare));
+    addSourceGas(network, { volumeSource, amountSource, into }, source, zone, q);
     add(outdoors, zone, q * airShare);
   }
 

@@ -5,7 +5,7 @@ import { edgeDilution } from './gravity-current.js';
 import { rectangularFloorExchange } from './floor-opening.js';
 import { addFlow, addSharedFlow, addVariable, flowTable, type FlowTable } from './flow-table.js';
 import type { OpenLink } from './air-flows.js';
-import { fixedFlows, writePressures } from './layer-fixed-flows.js';
+import { addSourceGas, fixedFlows, writePressures } from './layer-fixed-flows.js';
 import { basinArea } from './layer-geometry.js';
 import { grilleIntake, jetErosion, turbulentExchange, WEIR_CONSTANT } from './layer-flow.js';
 import type {
@@ -125,7 +125,7 @@ export function layerFlows(
   zones: ZoneState,
 ): LayerFlows {
   const { k, layers, held } = layout;
-  const { model, components, floorLayerOf, ceilingLayerOf } = network;
+  const { model, floorLayerOf, ceilingLayerOf } = network;
   const n = model.spaces.length;
   const outdoors = layout.zones;
   const { flows } = segment;
@@ -194,15 +194,7 @@ export function layerFlows(
     const upper = upperOf(plan.space);
     const layer = source.layer >= 0 && !isJoined(plan.space) ? source.layer : -1;
     const to = layer >= 0 ? layer : upper;
-    for (const { column, share } of source.columns) {
-      addSource(to, column, q * share);
-      table.into[column] = (table.into[column] ?? 0) + q * share;
-      if (components[column]?.gas === 'O2') {
-        addSource(to, 0, q * share);
-        table.into[0] = (table.into[0] ?? 0) + q * share;
-      }
-    }
-    addVolume(to, q * (1 - source.airShare));
+    addSourceGas(network, table, source, to, q);
     addFlow(table, outdoors, to, q * source.airShare);
     if (layer < 0 || q <= 0) return;
     fed[layer] = 1;

@@ -1,3 +1,4 @@
+import { GRAVITY_M_PER_S2 } from './air-constants.js';
 import { airMolarMass, diffusivityInAir, type AirGasTable } from './air-gases.js';
 import { isActive } from './air-flows.js';
 import type { AirOpening } from './air-input.js';
@@ -6,6 +7,7 @@ import { coldExcess } from './cold-gas.js';
 import { rectangularFloorExchange } from './floor-opening.js';
 import { basinOf, type Basin, type LayerSide } from './layer-geometry.js';
 import type { LowGrille } from './layer-flow.js';
+import { plantFlows, servedShares } from './plant-flows.js';
 import { RELEASE_MANNERS, DEFAULT_MANNER, type MannerTraits } from './release-manner.js';
 import type { BoundRelease } from './zone-bound.js';
 
@@ -210,7 +212,7 @@ export function layerNetwork(
           ? Math.max(1, Math.sqrt(floorAreaM2 / Math.PI) / Math.cbrt(plan.totalM3 / Math.PI))
           : 1,
       mostDilution: Math.max(1, (MOST_FIRST_MIXING * capacityM3) / plan.totalM3),
-      gZero: (9.81 * Math.abs(plan.molarMassKgPerMol - air)) / air,
+      gZero: (GRAVITY_M_PER_S2 * Math.abs(plan.molarMassKgPerMol - air)) / air,
       airShare: (plan.shares as { readonly air?: number }).air ?? 0,
       columns: Object.entries(plan.shares)
         .filter(([gas]) => gas !== 'air')
@@ -416,21 +418,8 @@ export function layerUnits(
   const supplies: LayerSupply[] = [];
   for (const [index, system] of (model.input.airSystems ?? []).entries()) {
     if (!isActive(system, t)) continue;
-    const served = system.serves ?? [{ space: system.space ?? '', share: 1 }];
-    const m = Math.min(1, system.effectiveness ?? 1);
-    const fresh = (system.freshAirM3PerS ?? 0) * m;
-    const balanced = system.drive === 'balanced';
-    const supply = balanced
-      ? (system.supplyM3PerS ?? system.freshAirM3PerS ?? 0) * m
-      : system.drive === 'supply'
-        ? fresh
-        : 0;
-    const exhaust = balanced
-      ? (system.extractM3PerS ?? system.freshAirM3PerS ?? 0) * m
-      : system.drive === 'extract'
-        ? fresh
-        : 0;
-    for (const { space, share } of served) {
+    const { supplyM3PerS: supply, exhaustM3PerS: exhaust } = plantFlows(system);
+    for (const { space, share } of servedShares(system)) {
       const at = model.indexOf.get(space) ?? 0;
       const recirculatedM3PerS = (system.recirculatedM3PerS ?? 0) * share;
       intakes.push({

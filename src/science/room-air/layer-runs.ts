@@ -1,7 +1,7 @@
 import type { AirGasTable } from './air-gases.js';
 import type { AirModel } from './air-model.js';
 import type { AirSeries, SpaceLayers } from './air-result.js';
-import { outputRows } from './air-series.js';
+import { rowsAt } from './air-series.js';
 import type { FlatTrack } from './answer-track.js';
 import { layerCase, layerMouth } from './layer-case.js';
 import { adverseLayers, usualLayers } from './layer-parameters.js';
@@ -58,14 +58,10 @@ export function layerRuns(
   const overrides = model.input.layers ?? {};
   const usual = usualLayers(overrides);
   const track = layeredTrack(network, usual, timesS);
-  const width = model.gases.length + 1;
-  const bounded = asked.map(({ mouth, floorLevelM, bound }) => {
-    const bounds = new Float64Array(timesS.length * width);
-    for (const [i, row] of outputRows(bound.timesS, timesS).entries()) {
-      bounds.set(bound.values.subarray(row * width, (row + 1) * width), i * width);
-    }
-    return { at: layerMouth(model, mouth, floorLevelM), bounds };
-  });
+  const bounded = asked.map(({ mouth, floorLevelM, bound }) => ({
+    at: layerMouth(model, mouth, floorLevelM),
+    bounds: rowsAt(bound, timesS),
+  }));
   const hasFalls = network.weirs.some((weir) => weir.b >= 0 && weir.sillA !== weir.sillB);
   const adverse = wantsAdverse
     ? worstLayered(

@@ -5,11 +5,7 @@ import {
   type LayerSource,
   type LayerWeir,
 } from './layer-network.js';
-import {
-  breathCarbonDioxide,
-  RESPIRATORY_QUOTIENT,
-  SEATED_ADULT_CO2_M3_PER_S,
-} from './occupant.js';
+import { breathFlows, type BreathFlows } from './occupant.js';
 
 /** What the flows of one segment read: everything that does not change inside it. */
 export interface LayerSegment {
@@ -22,12 +18,10 @@ export interface LayerSegment {
     readonly to: number;
     readonly flow: number;
   }[];
-  readonly breath: readonly {
+  readonly breath: readonly (BreathFlows & {
     readonly space: number;
     readonly heightM: number | undefined;
-    readonly carbonDioxide: number;
-    readonly oxygen: number;
-  }[];
+  })[];
   /** Infiltration into each space [m3/s]. */
   readonly infiltration: Float64Array;
   /** By component: excess over the molar mass of air in a layer [kg/mol]. */
@@ -52,20 +46,11 @@ export function layerSegment(network: LayerNetwork, flows: FlowSegment): LayerSe
   }
   const breath = (model.input.occupants ?? [])
     .filter((one) => isActive(one, t))
-    .map((one) => {
-      const perPerson =
-        one.carbonDioxideM3PerS ??
-        (one.metabolicRateMet === undefined
-          ? SEATED_ADULT_CO2_M3_PER_S
-          : breathCarbonDioxide(one.metabolicRateMet));
-      const carbonDioxide = one.count * perPerson * model.siteFactor;
-      return {
-        space: place(one.space),
-        heightM: one.heightM,
-        carbonDioxide,
-        oxygen: carbonDioxide / (one.respiratoryQuotient ?? RESPIRATORY_QUOTIENT),
-      };
-    });
+    .map((one) => ({
+      space: place(one.space),
+      heightM: one.heightM,
+      ...breathFlows(one, model.siteFactor),
+    }));
   return {
     flows,
     units,

@@ -2,9 +2,11 @@ import type { AirGasTable } from './air-gases.js';
 import { flowSegments } from './air-flows.js';
 import type { AirInput, AirThreshold } from './air-input.js';
 import { airModel, type AirModel } from './air-model.js';
+import { rowsAt } from './air-series.js';
 import { layerCase, type LayerMouth } from './layer-case.js';
 import { zoneLayout } from './layer-zones.js';
-import { COARSE, followLayers } from './layered-track.js';
+import { COARSE } from './layer-extrapolation.js';
+import { followLayers } from './layered-track.js';
 import { mixedTrack } from './mixed-track.js';
 import { spaceTrack } from './mixed-values.js';
 import { mouthReader } from './mouth-reader.js';
@@ -182,11 +184,9 @@ function readMixed(
   const track = mixedTrack(model, flowSegments(model, 'pushOut'), timesS, options);
   const runs = { displacement: 'pushOut' as const, tracks: [track] as const };
   for (const [m, mouth] of mouths.entries()) {
-    const flat = spaceTrack(model, runs, mouth.at.mouth.space);
-    let at = 0;
-    for (const [i, t] of timesS.entries()) {
-      while ((flat.timesS[at + 1] ?? Infinity) <= t) at++;
-      row.set(flat.values.subarray(at * flat.width, (at + 1) * flat.width));
+    const rows = rowsAt(spaceTrack(model, runs, mouth.at.mouth.space), timesS);
+    for (let i = 0; i < timesS.length; i++) {
+      row.set(rows.subarray(i * row.length, (i + 1) * row.length));
       keep(m, i);
     }
   }

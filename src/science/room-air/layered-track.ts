@@ -2,11 +2,12 @@ import { NotComputable } from '../../errors.js';
 import { hermiteValue, type AcceptedStep } from '../numerics/runge-kutta.js';
 import { flowSegments } from './air-flows.js';
 import { layerFlows, layerFlowTables, type LayerFlows } from './layer-flows.js';
+import { extrapolatedStep, FINE, type LayerAccuracy } from './layer-extrapolation.js';
+import { joinEndedLayers } from './layer-ends.js';
 import type { LayerNetwork } from './layer-network.js';
 import type { LayerParameters } from './layer-parameters.js';
 import { layerSegment } from './layer-segment.js';
 import { layerRates } from './layer-rates.js';
-import { implicitStep } from './layer-step.js';
 import {
   emptyZoneState,
   readZones,
@@ -33,38 +34,11 @@ export interface LayerTrack extends LayerRunReport {
   readonly nodes: readonly LayerNode[];
 }
 
-/** How closely the layers are followed. */
-export interface LayerAccuracy {
-  /** Error a step may make, relative to what is there [-]. */
-  readonly relative: number;
-  /** Columns of the extrapolation: its order. */
-  readonly order: 2 | 3 | 4;
-}
-
-/** Single runs: their error is far below it, as the column before the last one is held to it. */
-export const FINE: LayerAccuracy = { relative: 1e-3, order: 3 };
-/** The bracket without any mixing, of which only the worst is shown. */
-export const MIDDLING: LayerAccuracy = { relative: 5e-3, order: 2 };
-/** One of many runs of a band, whose inputs are known to a few per cent at best. */
-export const COARSE: LayerAccuracy = { relative: 1e-2, order: 2 };
-
-/** Upper air below this share of its zone: the whole becomes one mixed zone [-]. */
-const LEAST_UPPER_SHARE = 0.02;
-/** Depth [m] and fraction [-] that a step may miss at a relative error of 1. */
-const DEPTH_SCALE_M = 0.1;
-const FRACTION_SCALE = 0.01;
-/** A layer thinner than this is not reported; its fraction need not be followed closely [m]. */
-const THIN_M = 0.002;
 const FIRST_STEP_S = 0.05;
 /** After an edge of the schedule a step is no longer than this [s]. */
 const RESTART_STEP_S = 30;
 const MAX_STEP_S = 600;
 const MAX_STEPS = 200_000;
-/** Excess of the wrong sign, over the molar mass of air, at which a layer turns over [-]. */
-const TURNED = 1e-6;
-/** A layer below this depth has drained [m]. */
-const DRAINED_M = 1e-7;
-
 /**
  * The two-layer answer of all spaces over the whole time.
  *
@@ -127,7 +101,7 @@ export function followLayers(
   visit: (t: number, state: Float64Array, zones: ZoneState) => void,
 ): LayerRunReport {
   const { model } = network;
-  const extrapolated = extrapolation(network, layout, accuracy);
+  const extrapolated = extrapolatedStep(network, layout, accuracy);
   const state = startState(network, layout);
   const next = new Float64Array(layout.size);
   const between = new Float64Array(layout.size);
@@ -182,7 +156,7 @@ export function followLayers(
       }
       state.set(next);
       t = end;
-      join(network, layout, excess, state, flows, joined, parameters.joinContrast);
+      joinEndedLayers(network, layout, excess, state, flows, joined, parameters.joinContrast);
       const factor = Math.min(5, 0.85 * Math.max(error, 1e-6) ** (-1 / accuracy.order));
       if (!isLast || h * factor < step) step = Math.min(MAX_STEP_S, h * Math.max(0.3, factor));
     }
@@ -264,89 +238,6 @@ function liesBetween(
   return true;
 }
 
-/** A step with its error over what is allowed; above 1 it must be taken again, shorter. */
-type Extrapolated = (
-  flows: LayerFlows,
-  t: number,
-  h: number,
-  state: Float64Array,
-  next: Float64Array,
-) => number;
-
-function extrapolation(
-  network: LayerNetwork,
-  layout: ZoneLayout,
-  accuracy: LayerAccuracy,
-): Extrapolated {
-  const { k, layers, held, amounts, size } = layout;
-  const step = implicitStep(layout, network.outdoor);
-  const { order, relative } = accuracy;
-  const columns = Array.from({ length: order }, () => new Float64Array(size));
-  const part = new Float64Array(size);
-  const column = (i: number): Float64Array => columns[i] ?? part;
-  const areas = Float64Array.from(network.layers, (layer) => layer.basin.areaM2);
-
-  /** Largest difference of two results over what is allowed; NaN where the first is out of range. */
-  const difference = (a: Float64Array, b: Float64Array): number => {
-    let worst = 0;
-    for (let z = 0; z < held; z++) {
-      const volume = a[z] ?? 0;
-      const other = b[z] ?? 0;
-      if (volume < 0) return Number.NaN;
-      if (volume <= 0 && other <= 0) continue;
-      const scale = Math.max(volume, other);
-      const change = volume - other;
-      let weight = 1;
-      if (z < layers) {
-        const area = areas[z] ?? 1;
-        worst = Math.max(worst, Math.abs(change) / (scale + DEPTH_SCALE_M * area));
-        weight = Math.min(1, scale / (THIN_M * area));
-      }
-      const from = amounts + z * k;
-      for (let c = 0; c < k; c++) {
-        const amount = a[from + c] ?? 0;
-        if (amount < -1e-12 || amount > volume + 1e-12) return Number.NaN;
-        const x = volume > 0 ? amount / volume : 0;
-        const off = Math.abs(amount - (b[from + c] ?? 0) - x * change) / scale;
-        worst = Math.max(worst, (weight * off) / (x + FRACTION_SCALE));
-      }
-    }
-    return worst / relative;
-  };
-
-  return (flows, t, h, state, next) => {
-    for (let j = 0; j < order; j++) {
-      const parts = j + 1;
-      let now = state;
-      for (let i = 0; i < parts; i++) {
-        const length = h / parts;
-        const target = (parts - i) % 2 === 1 ? column(j) : part;
-        const table =
-          i === 0 ? flows.fromStart(t, length, state) : flows.at(t + i * length, length, now);
-        if (!step(table, length, now, target)) return 1e6;
-        now = target;
-      }
-      for (let i = j; i > 0; i--) {
-        const weight = 1 / (parts / i - 1);
-        const right = column(i);
-        const left = column(i - 1);
-        for (let at = 0; at < size; at++) {
-          const value = right[at] ?? 0;
-          left[at] = value + weight * (value - (left[at] ?? 0));
-        }
-      }
-    }
-    const error = difference(column(0), column(1));
-    if (!Number.isNaN(error)) {
-      next.set(column(0));
-      return error;
-    }
-    // The finest of the parts is a mean of means: it never leaves the range.
-    next.set(column(order - 1));
-    return difference(next, column(order - 2));
-  };
-}
-
 function startState(network: LayerNetwork, layout: ZoneLayout): Float64Array {
   const { model } = network;
   const state = new Float64Array(layout.size);
@@ -365,62 +256,6 @@ function startState(network: LayerNetwork, layout: ZoneLayout): Float64Array {
     }
   }
   return state;
-}
-
-/** Oxygen and the carbon dioxide of the air come first among the components. */
-const BACKGROUND_COMPONENTS = 2;
-
-/** Layers that have ended join the air above them, in the state itself. */
-function join(
-  network: LayerNetwork,
-  layout: ZoneLayout,
-  excess: Float64Array,
-  state: Float64Array,
-  flows: LayerFlows,
-  joined: Set<number>,
-  joinContrast: number,
-): void {
-  const { k, layers, amounts } = layout;
-  const unite = (l: number): void => {
-    const zone = layers + (network.layers[l]?.group ?? 0);
-    state[zone] = (state[zone] ?? 0) + (state[l] ?? 0);
-    state[l] = 0;
-    for (let c = 0; c < k; c++) {
-      const to = amounts + zone * k + c;
-      state[to] = (state[to] ?? 0) + (state[amounts + l * k + c] ?? 0);
-      state[amounts + l * k + c] = 0;
-    }
-  };
-  for (let l = 0; l < layers; l++) {
-    const layer = network.layers[l];
-    const volume = state[l] ?? 0;
-    if (!layer || volume <= 0) continue;
-    const g = layers + layer.group;
-    const above = state[g] ?? 0;
-    if (above < LEAST_UPPER_SHARE * (network.groupVolumesM3[layer.group] ?? 1)) {
-      for (let other = 0; other < layers; other++) {
-        const one = network.layers[other];
-        if (one?.group !== layer.group) continue;
-        if ((state[other] ?? 0) > 0) unite(other);
-        joined.add(one.space);
-      }
-      continue;
-    }
-    const isFed = flows.isFed(l);
-    let heavier = 0;
-    let contrast = 0;
-    for (let c = 0; c < k; c++) {
-      const here = (state[amounts + l * k + c] ?? 0) / volume;
-      const there = (state[amounts + g * k + c] ?? 0) / above;
-      heavier += (excess[c] ?? 0) * here - (network.excessAbove[c] ?? 0) * there;
-      // Behind oxygen and the carbon dioxide of the air stands what is released.
-      if (c >= BACKGROUND_COMPONENTS) contrast += here - there;
-    }
-    const wrongWay = layer.side === 'ceiling' ? heavier : -heavier;
-    const isTurned = wrongWay > TURNED * network.airMolarMassKgPerMol;
-    const isDrained = volume < DRAINED_M * layer.basin.areaM2;
-    if (isTurned || (!isFed && (isDrained || contrast < joinContrast))) unite(l);
-  }
 }
 
 /** Share of a component that came in and neither went out nor stayed, the largest [-]. */

@@ -1,7 +1,8 @@
 import type { LayerCase, LayerMouth } from './layer-case.js';
 import type { LayerParameters } from './layer-parameters.js';
 import { zoneLayout } from './layer-zones.js';
-import { followLayers, MIDDLING } from './layered-track.js';
+import { MIDDLING } from './layer-extrapolation.js';
+import { followLayers } from './layered-track.js';
 import { keepWorse } from './mixed-values.js';
 import { mouthReader } from './mouth-reader.js';
 

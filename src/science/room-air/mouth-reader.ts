@@ -4,10 +4,7 @@ import { bodyHeatShare } from './body-heat.js';
 import type { LayerCase, LayerMouth } from './layer-case.js';
 import type { LayerParameters } from './layer-parameters.js';
 import type { ZoneState } from './layer-zones.js';
-import { reportedFraction, smearHeight } from './smear.js';
-
-/** Depth below which a layer is not reported [m]. */
-const LEAST_REPORTED_M = 0.002;
+import { LEAST_REPORTED_M, reportedFraction, smearHeight } from './smear.js';
 
 /**
  * Writes what the two-layer answer shows at a mouth at one moment: oxygen, then each gas [-].

@@ -1,3 +1,5 @@
+/** A layer thinner than this is not reported [m]. */
+export const LEAST_REPORTED_M = 0.002;
 /** Least smear above a layer [m]. */
 export const LEAST_SMEAR_M = 0.3;
 

@@ -5,11 +5,8 @@ import type { AirInput } from '../../../src/science/room-air/air-input.js';
 import { airModel } from '../../../src/science/room-air/air-model.js';
 import { layerCase } from '../../../src/science/room-air/layer-case.js';
 import { usualLayers } from '../../../src/science/room-air/layer-parameters.js';
-import {
-  FINE,
-  layeredTrack,
-  type LayerAccuracy,
-} from '../../../src/science/room-air/layered-track.js';
+import { FINE, type LayerAccuracy } from '../../../src/science/room-air/layer-extrapolation.js';
+import { layeredTrack } from '../../../src/science/room-air/layered-track.js';
 import { rakedHallWithPit } from '../../bench/air-scenario.js';
 import { layerContest } from '../../bench/general-layers.js';
 
