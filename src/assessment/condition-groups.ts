@@ -1,4 +1,5 @@
 import type { Assessment, Condition } from './assessment.js';
+import { sentence } from './sentence.js';
 
 /** What is asked at one place; acts are empty where it holds throughout. */
 export interface PlaceAsks {
@@ -29,7 +30,6 @@ interface Entry {
   readonly text: string;
 }
 
-const capital = (words: string): string => `${words.charAt(0).toUpperCase()}${words.slice(1)}`;
 const withoutStop = (words: string): string => words.replace(/\.$/, '');
 
 /** The words without the place that opens them. */
@@ -108,8 +108,8 @@ function groupOf(assessment: Assessment, entries: readonly Entry[], first: Entry
     numbers,
     row,
     blocksStart,
-    head: `${capital(head)}.`,
-    remark: remark === '' ? '' : `${capital(remark)}.`,
+    head: `${sentence(head)}.`,
+    remark: remark === '' ? '' : `${sentence(remark)}.`,
     places:
       throughout.size > 1
         ? places
@@ -117,7 +117,7 @@ function groupOf(assessment: Assessment, entries: readonly Entry[], first: Entry
             place,
             asks: asks.map(({ text }) => ({ text, acts: [] })),
           })),
-    checklist: each.filter((line) => line !== '').map(capital),
+    checklist: each.filter((line) => line !== '').map(sentence),
     acts: throughout.size > 1 ? [] : acts,
   };
 }

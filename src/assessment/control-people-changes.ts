@@ -1,3 +1,4 @@
+import { clockText } from './clock-text.js';
 import type { Control } from './catalogue-types.js';
 import {
   spaceOf,
@@ -34,11 +35,8 @@ const isMoved =
     return group.kind === 'public' && (space === undefined || group.zone.space === space);
   };
 
-const clockOf = (seconds: number): string => {
-  const minutes = Math.ceil(seconds / 60);
-  const two = (value: number) => String(value).padStart(2, '0');
-  return `${two(Math.floor(minutes / 60))}:${two(minutes % 60)}`;
-};
+/** A clock time of the plan file, rounded up to the minute. */
+const clockOf = (seconds: number): string => clockText(60 * Math.ceil(seconds / 60));
 const lastMinuteS = 86_340;
 
 /** Performances with at least a gap between them; as they are where the day would not hold them. */

@@ -2,6 +2,7 @@ import type { Control } from './catalogue-types.js';
 import { controlValue, statedValue } from './control-values.js';
 import { quantityText } from './figure-text.js';
 import type { ChosenControl, PlanFile } from './plan-file.js';
+import { sentence } from './sentence.js';
 
 const slotPattern = /\{([A-Za-z0-9]+)\}/g;
 /** Printed where nobody has stated a number: a gap on the sheet, never a guess. */
@@ -81,11 +82,12 @@ export function controlWords(
   plan: PlanFile,
 ): { readonly steps: readonly string[]; readonly checklistLine: string } {
   const filled = (text: string) => {
-    const words = text.replaceAll(
-      slotPattern,
-      (_, slot: string) => slotText(slot, control, chosen, plan) ?? gap,
+    return sentence(
+      text.replaceAll(
+        slotPattern,
+        (_, slot: string) => slotText(slot, control, chosen, plan) ?? gap,
+      ),
     );
-    return words.charAt(0).toUpperCase() + words.slice(1);
   };
   return { steps: control.steps.map(filled), checklistLine: filled(control.line) };
 }

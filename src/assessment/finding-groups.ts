@@ -1,4 +1,5 @@
 import type { Assessment, Finding } from './assessment.js';
+import { sentence } from './sentence.js';
 
 /** Findings of one kind that end in the same words, told once. */
 export interface FindingGroup {
@@ -32,8 +33,6 @@ function sharedAfterSubject(texts: readonly string[]): string | null {
   return rests.size === 1 && texts.every((text) => text.includes(': ')) ? rest : null;
 }
 
-const capital = (words: string): string => `${words.charAt(0).toUpperCase()}${words.slice(1)}`;
-
 /** The findings for reading: the gravest first, those alike together, repeated ones once. */
 export function findingGroups({ findings }: Pick<Assessment, 'findings'>): FindingGroup[] {
   const groups = new Map<string, Finding[]>();
@@ -54,7 +53,7 @@ export function findingGroups({ findings }: Pick<Assessment, 'findings'>): Findi
           text: text.slice(0, text.indexOf(': ')),
           path,
         }));
-        return [{ kind, code, items, shared: capital(said) }];
+        return [{ kind, code, items, shared: sentence(said) }];
       }
       const sentences = all.map(({ text }) => sentencesOf(text));
       const shared = all.length === 1 ? 0 : sharedEnd(sentences);

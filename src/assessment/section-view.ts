@@ -1,3 +1,4 @@
+import { clockText } from './clock-text.js';
 import type { AirResult, SpaceAir } from '../science/room-air/air-result.js';
 import type { Figure, SectionLayer, SectionMoment, SectionOfDay } from './assessment.js';
 import { worseWord, type Hit } from './decision-table.js';
@@ -270,11 +271,4 @@ function layersOf(
       gasAt(layered.ceilingLayer.gasFraction, index, space.outdoors),
     ),
   ];
-}
-
-/** hh:mm of a time after midnight. */
-function clockText(atS: number): string {
-  const minutes = Math.floor(atS / 60);
-  const two = (value: number) => String(value).padStart(2, '0');
-  return `${two(Math.floor(minutes / 60) % 24)}:${two(minutes % 60)}`;
 }

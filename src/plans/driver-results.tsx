@@ -4,7 +4,7 @@ import { driverGroups } from '../assessment/driver-groups.js';
 import { quantityText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 import { Folded } from './result-tables.js';
 
 const strengths = [

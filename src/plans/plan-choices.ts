@@ -4,7 +4,7 @@ import type { FormFields } from '../web/forms/form-fields.js';
 import { planTexts as words } from '../web/texts/en-plans.js';
 import type { ChoiceLists, Option } from '../web/views/field-spec.js';
 import { rowNumbersIn } from '../web/views/form-value.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 import { postureOptions } from './breathing-heights.js';
 
 /** Rows of the form that other rows can name: their ids with their titles as typed. */

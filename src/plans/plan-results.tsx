@@ -14,7 +14,7 @@ import { AmountsAndHolds, ControlResults, WordsByPart, Workings } from './result
 import { DriverResults } from './driver-results.js';
 import { SectionResults } from './section-results.js';
 import { SoundCards } from './sound-card.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 import { ZoneResults } from './zone-results.js';
 
 /** Where the entry behind a place of the plan file stands: on this page or on that of the venue. */

@@ -8,7 +8,7 @@ import { SectionDrawing } from '../web/section/section-drawing.js';
 import { spacesInUse } from '../web/section/spaces-in-use.js';
 import { sectionWords } from '../web/section/section-words.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 
 const told = (figure: Figure | null): string => (figure === null ? '\u2013' : figureText(figure));
 

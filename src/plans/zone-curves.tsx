@@ -8,14 +8,15 @@ import type {
   ZoneQuantity,
   ZoneResult,
 } from '../assessment/assessment.js';
+import { clockText } from '../assessment/clock-text.js';
 import { curveSizes } from '../web/charts/curve-scale.js';
 import { curveWords } from '../web/charts/curve-words.js';
 import { MomentMark } from '../web/charts/moment-mark.js';
-import { clockText, numberedCues, zoneCurve } from '../web/charts/zone-curve.js';
+import { numberedCues, zoneCurve } from '../web/charts/zone-curve.js';
 import { quantityText } from '../assessment/figure-text.js';
 import { Table } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 
 const answers: readonly Answer[] = ['mixed', 'layered', 'layeredP50', 'bound'];
 

@@ -11,7 +11,7 @@ import type {
 import { quantityText } from '../assessment/figure-text.js';
 import { OpenableFigure } from '../web/layout/parts.js';
 import { resultTexts as words } from '../web/texts/en-results.js';
-import { sentence } from '../web/views/sentence.js';
+import { sentence } from '../assessment/sentence.js';
 import { CueKey, ZoneCurves } from './zone-curves.js';
 
 const answers: readonly Answer[] = ['mixed', 'layered', 'layeredP50', 'bound'];

@@ -4,15 +4,12 @@ import type {
   SectionMoment,
   ZoneResult,
 } from '../../assessment/assessment.js';
+import { clockText } from '../../assessment/clock-text.js';
+import { sentence } from '../../assessment/sentence.js';
 import { chartSvg } from '../../web/charts/chart-svg.js';
 import { curveOption } from '../../web/charts/curve-option.js';
 import { curveSizes } from '../../web/charts/curve-scale.js';
-import {
-  clockText,
-  zoneCurve,
-  zoneCurveText,
-  type ZoneCurve,
-} from '../../web/charts/zone-curve.js';
+import { zoneCurve, zoneCurveText, type ZoneCurve } from '../../web/charts/zone-curve.js';
 import { momentView } from '../../web/section/moment-view.js';
 import { dividedViews } from '../../web/section/placement.js';
 import { sectionSvg } from '../../web/section/section-drawing.js';
@@ -84,7 +81,7 @@ export function curvePart(assessment: Assessment, texts: RiskTexts): Block[] {
       aspect: chartSize.width / chartSize.height,
       tallest: tallestFigure,
       caption: filledText(words.caption, {
-        quantity: curve.quantityTitle.charAt(0).toUpperCase() + curve.quantityTitle.slice(1),
+        quantity: sentence(curve.quantityTitle),
         zone: zone.title,
         case: texts.cases[caseName],
         events: [...events, ...bandWords(assessment, zone, texts)].join(' '),
@@ -147,7 +144,7 @@ function drawnMoments(
     return dividedViews(section.view, mostRows, sectionRoom).map((part, index, parts) => {
       const drawing = sectionSvg(part, { room: sectionRoom });
       const caption = [
-        sentence(`${section.title}${part.moment}`),
+        fullSentence(`${section.title}${part.moment}`),
         ...(turn === 0 && index === 0 ? [words.caption] : []),
         ...(leftOut.length > 0 && isLast && index === parts.length - 1
           ? [filledText(words.leftOut, { spaces: leftOut.join(', ') })]
@@ -166,5 +163,5 @@ function drawnMoments(
 }
 
 /** With a capital and a full stop, whoever wrote it. */
-const sentence = (words: string): string =>
-  words === '' ? '' : `${words.charAt(0).toUpperCase()}${words.slice(1)}`.replace(/[^.]$/, '$&.');
+const fullSentence = (words: string): string =>
+  words === '' ? '' : sentence(words).replace(/[^.]$/, '$&.');

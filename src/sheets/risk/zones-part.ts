@@ -6,7 +6,7 @@ import type {
   ZoneQuantity,
   ZoneResult,
 } from '../../assessment/assessment.js';
-import { clockText } from '../../web/charts/zone-curve.js';
+import { clockText } from '../../assessment/clock-text.js';
 import { quantityText } from '../../assessment/figure-text.js';
 import { lengthText } from '../../web/section/level-text.js';
 import type { Block, Table, TableRow } from '../document-tree.js';

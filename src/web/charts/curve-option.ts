@@ -11,7 +11,8 @@ import {
   type ValueAxis,
 } from './curve-scale.js';
 import { curveWords, type CurveWords } from './curve-words.js';
-import { clockText, type ZoneCurve } from './zone-curve.js';
+import { clockText } from '../../assessment/clock-text.js';
+import type { ZoneCurve } from './zone-curve.js';
 
 /** One option object for the page's picture and for the drawing of a sheet. */
 

@@ -1,3 +1,4 @@
+import { clockText } from '../../assessment/clock-text.js';
 import type {
   CaseName,
   DayEvent,
@@ -79,14 +80,6 @@ export function numberedCues(events: readonly DayEvent[]): readonly NumberedCue[
     cues.set(event.title, [...(cues.get(event.title) ?? []), event]);
   }
   return [...cues].map(([title, of], index) => ({ number: index + 1, title, events: of }));
-}
-
-/** Time of day as hh:mm or hh:mm:ss, past midnight counted on from 00:00. */
-export function clockText(secondsOfDay: number, to: 'minutes' | 'seconds' = 'minutes'): string {
-  const seconds = Math.floor(secondsOfDay);
-  const two = (value: number): string => String(value).padStart(2, '0');
-  const clock = `${two(Math.floor(seconds / 3600) % 24)}:${two(Math.floor(seconds / 60) % 60)}`;
-  return to === 'minutes' ? clock : `${clock}:${two(seconds % 60)}`;
 }
 
 /** What the curve shows, in sentences: the worst of each answer and when, against each level. */

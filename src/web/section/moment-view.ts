@@ -1,6 +1,6 @@
 import type { SectionMoment, SectionOfDay, SectionView } from '../../assessment/assessment.js';
 import { quantityText } from '../../assessment/figure-text.js';
-import { clockText } from '../charts/zone-curve.js';
+import { clockText } from '../../assessment/clock-text.js';
 
 /** The section with the air of one moment: its layers, and what is breathed then. */
 export interface MomentView extends SectionView {

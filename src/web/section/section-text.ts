@@ -1,5 +1,6 @@
 import type { SectionView } from '../../assessment/assessment.js';
 import { figureText, quantityText } from '../../assessment/figure-text.js';
+import { sentence } from '../../assessment/sentence.js';
 import { lengthText, levelText } from './level-text.js';
 import type { MomentView } from './moment-view.js';
 import { roofLevel } from './placement.js';
@@ -37,7 +38,7 @@ export function sectionText(
       `Opening from ${titleOf(opening.from)} to ${titleOf(opening.to)}, ${lengthText(opening.heightM)} high or long, sill at ${levelText(opening.sillLevelM)}.`,
     );
   }
-  return sentences.map((text) => text.charAt(0).toUpperCase() + text.slice(1)).join(' ');
+  return sentences.map(sentence).join(' ');
 }
 
 /** What is said of a zone: the oxygen of the moment, or the extremes of the day. */

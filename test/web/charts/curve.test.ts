@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { chartSvg } from '../../../src/web/charts/chart-svg.js';
 import { curveOption } from '../../../src/web/charts/curve-option.js';
 import { curveSizes, timeAxis, valueAxis } from '../../../src/web/charts/curve-scale.js';
-import { clockText, zoneCurve, zoneCurveText } from '../../../src/web/charts/zone-curve.js';
+import { clockText } from '../../../src/assessment/clock-text.js';
+import { zoneCurve, zoneCurveText } from '../../../src/web/charts/zone-curve.js';
 import { markPlace } from '../../../src/web/islands/moments.js';
 import { assessmentFixture } from '../../support/assessment-fixture.js';
 
