@@ -164,16 +164,20 @@ function people(
   });
 }
 
-/** Openings between neighbours are gaps in their wall; others are seen behind the cut. */
+/**
+ * Openings between neighbours are gaps in their wall; others are seen behind the cut, with where they
+ * lead written over them: `taken` tells by space where that stands.
+ */
 function openings(
   view: SectionView | MomentView,
   placement: Placement,
   corners: ReadonlyMap<string, Corners>,
   paper: string,
   words: SectionWords,
-): JSX.Element[] {
+): { readonly parts: JSX.Element[]; readonly taken: ReadonlyMap<string, readonly LabelBox[]> } {
   const placed = new Map(placement.spaces.map((entry) => [entry.space.id, entry]));
-  return view.openings.flatMap((opening) => {
+  const taken = new Map<string, LabelBox[]>();
+  const parts = view.openings.flatMap((opening) => {
     const one = placed.get(opening.from) ?? placed.get(opening.to);
     if (one === undefined) return [];
     const otherId = one.space.id === opening.from ? opening.to : opening.from;
@@ -203,6 +207,12 @@ function openings(
     const width = Math.min(0.9 * placement.scale, (own.right - own.left) * 0.3);
     const x = own.right - width - 8;
     const where = other === undefined ? words.outside : other.space.title;
+    const long = drawnWidth(where, small);
+    const isNamed = long < own.right - own.left - 10;
+    if (isNamed) {
+      const box = { x: x + width - long, y: top - 6, width: long, height: small + 2 };
+      taken.set(one.space.id, [...(taken.get(one.space.id) ?? []), box]);
+    }
     return [
       <rect
         x={two(x)}
@@ -213,7 +223,7 @@ function openings(
         stroke={softInk}
         stroke-width={0.8}
       />,
-      ...(drawnWidth(where, small) < own.right - own.left - 10
+      ...(isNamed
         ? [
             label({
               x: x + width,
@@ -227,6 +237,7 @@ function openings(
         : []),
     ];
   });
+  return { parts, taken };
 }
 
 function sharedWall(one: PlacedSpace, other: PlacedSpace): number | null {
@@ -329,13 +340,15 @@ function drawnSection(
   const corners = new Map(
     placement.spaces.map((placed) => [placed.space.id, cornersOf(placed, placement)]),
   );
+  const opened = openings(view, placement, corners, paper, words);
   const gas: JSX.Element[] = [];
   const walls: JSX.Element[] = [];
   const heights: JSX.Element[] = [];
   for (const placed of placement.spaces) {
     const own = corners.get(placed.space.id);
     if (own === undefined) continue;
-    const drawn = spaceContents(view, placed, own, placement, { words, paper, key });
+    const taken = opened.taken.get(placed.space.id) ?? [];
+    const drawn = spaceContents(view, placed, own, placement, { words, paper, key, taken });
     gas.push(...drawn.gas);
     heights.push(...drawn.heights);
     walls.push(stroke(polygonPath(own.polygon), ink, 1.8), spaceTitle(placed, own, key));
@@ -368,7 +381,7 @@ function drawnSection(
       {datum}
       {gas}
       {walls}
-      {openings(view, placement, corners, paper, words)}
+      {opened.parts}
       {heights}
       {view.spaces.length === 0
         ? label({ x: 12, y: 24, text: words.empty })
@@ -420,6 +433,8 @@ interface Setting {
   readonly words: SectionWords;
   readonly paper: string;
   readonly key: Key;
+  /** Places in the space that other words stand on. */
+  readonly taken: readonly LabelBox[];
 }
 
 /** Gas, breathing heights and their labels in one space. */
@@ -484,7 +499,7 @@ function spaceContents(
 
   const meters = meterMarks(view, placed, own, datumY, scale, setting);
   heights.push(...meters.marks);
-  taken.push(...meters.taken);
+  taken.push(...setting.taken, ...meters.taken);
 
   const zones = view.zones
     .filter((zone) => zone.space === placed.space.id)
@@ -493,33 +508,50 @@ function spaceContents(
     const y = datumY - zone.levelM * scale;
     const value = breathedText(view, zone, setting.words);
     const full = `${zone.title}\u00a0\u00a0${value}`;
-    let text = full;
-    if (drawnWidth(full, size) > room * 0.78) {
-      const sign = keySign(setting.key);
+    let sign: string | undefined;
+    const keyed = (): string => {
+      if (sign !== undefined) return sign;
+      sign = keySign(setting.key);
       const told = `${zone.title}, ${levelText(zone.levelM)}: ${setting.words.oxygen} ${value}`;
       // Without the bound where the drawing is narrow: the numbers beside it have both.
       const fits = drawnWidth(told, small) + 46 <= placement.width;
       setting.key.push({ sign, text: fits ? told : told.replace(/ \(.*/, '') });
-      text = `${sign}\u00a0\u00a0${value.replace(/ \(.*/, '')}`;
-      if (drawnWidth(text, size) > room) text = sign;
-    }
-    const width = drawnWidth(text, size);
-    const along = reach(own, y, scale);
-    const near = {
-      ...within,
-      left: Math.max(inner.left, Math.min(along.left, inner.right - width)),
-      right: Math.min(inner.right, Math.max(along.right, inner.left + width)),
+      return sign;
     };
-    const wanted = { y, width, height: lineHeight };
+    let text = full;
+    if (drawnWidth(full, size) > room * 0.78) {
+      text = `${keyed()}\u00a0\u00a0${value.replace(/ \(.*/, '')}`;
+      if (drawnWidth(text, size) > room) text = keyed();
+    }
+    const along = reach(own, y, scale);
     // A label never hides the line of a raked floor while there is air to stand in.
     const inAir = (at: LabelBox): boolean =>
       at.y + at.height / 2 <= Math.min(own.floorY(at.x), own.floorY(at.x + at.width));
-    const box = freeBox(wanted, near, taken, 'right', inAir) ??
-      freeBox(wanted, within, taken, 'right', inAir) ??
-      freeBox(wanted, within, taken, 'right') ?? {
-        ...wanted,
-        x: inner.right - width,
+    const wantedFor = (words: string) => ({
+      y,
+      width: drawnWidth(words, size),
+      height: lineHeight,
+    });
+    const placeFor = (words: string): LabelBox | null => {
+      const wanted = wantedFor(words);
+      const near = {
+        ...within,
+        left: Math.max(inner.left, Math.min(along.left, inner.right - wanted.width)),
+        right: Math.min(inner.right, Math.max(along.right, inner.left + wanted.width)),
       };
+      return (
+        freeBox(wanted, near, taken, 'right', inAir) ??
+        freeBox(wanted, within, taken, 'right', inAir) ??
+        freeBox(wanted, within, taken, 'right')
+      );
+    };
+    let box = placeFor(text);
+    // Where the number has no place of its own, the sign alone stands there and the key tells it.
+    if (box === null) {
+      text = keyed();
+      const wanted = wantedFor(text);
+      box = placeFor(text) ?? { ...wanted, x: inner.right - wanted.width };
+    }
     taken.push(box);
     heights.push(stroke(segment(along.left + 2, y, along.right - 2, y), accent, 1, '6 3'));
     heights.push(...people(own, y, scale, along, turn, setting.paper));

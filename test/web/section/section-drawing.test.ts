@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { dividedViews, sectionPlacement } from '../../../src/web/section/placement.js';
+import { drawnWidth } from '../../../src/web/section/label-placement.js';
 import { sectionSvg } from '../../../src/web/section/section-drawing.js';
 import { momentKey, chosenMoment, momentView } from '../../../src/web/section/moment-view.js';
 import { phoneRoom } from '../../../src/web/section/placement.js';
@@ -99,6 +100,39 @@ describe('sectionSvg', () => {
     expect(svg).toContain('gas along the floor');
     expect(svg).toContain('gas under the ceiling');
     expect(svg).toContain('gas mixed through the space');
+  });
+
+  it('writes no number over another in a low room beside a tall one', () => {
+    const [zone] = classroomView.zones;
+    if (zone === undefined) throw new Error('the fixture has lost its zones');
+    const { svg } = sectionSvg({
+      ...classroomView,
+      spaces: [
+        { id: 'tower', title: 'Tower', floorLevelM: 0, floorRiseM: 0, heightM: 40, lengthM: 60 },
+        { id: 'room', title: 'Gallery', floorLevelM: 0, floorRiseM: 0, heightM: 5, lengthM: 18 },
+      ],
+      openings: [],
+      zones: [0.5, 1, 1.55].map((levelM, i) => ({ ...zone, id: String(i), levelM })),
+      layers: [],
+    });
+    const written = [
+      ...svg.matchAll(
+        /<text x="([\d.]+)" y="([\d.]+)"[^>]*font-weight="bold"[^>]*text-anchor="end"[^>]*>([^<]*)</g,
+      ),
+    ];
+    expect(written).toHaveLength(3);
+    const places = written.map(([, x = '', y = '', text = '']) => ({
+      left: Number(x) - drawnWidth(text, 11),
+      right: Number(x),
+      y: Number(y),
+    }));
+    for (const [i, one] of places.entries()) {
+      for (const other of places.slice(i + 1)) {
+        const isApart =
+          one.right <= other.left || other.right <= one.left || Math.abs(one.y - other.y) >= 11;
+        expect(isApart).toBe(true);
+      }
+    }
   });
 
   it('escapes what people typed', () => {
